@@ -1,0 +1,47 @@
+import { mkdirSync, mkdtempSync, rmSync, symlinkSync, writeFileSync } from 'node:fs'
+import { tmpdir } from 'node:os'
+import { join } from 'node:path'
+import { afterAll, describe, expect, it } from 'vitest'
+import { findFiles } from '../../cli/files.ts'
+
+const root = mkdtempSync(join(tmpdir(), 'darkline-files-'))
+afterAll(() => rmSync(root, { recursive: true, force: true }))
+for (const folder of ['a', 'b', 'b/deep', 'odd']) mkdirSync(join(root, folder))
+for (const name of ['a.fits', 'a/2.fit', 'a/10.FITS.GZ', 'a/notes.txt', 'b/deep/x.fts', 'b/old.fits.Z', 'b.fits', 'odd/=cmd.fits']) writeFileSync(join(root, name), 'x')
+writeFileSync(join(root, 'a/frame0001'), 'SIMPLE  =                    T')
+symlinkSync(root, join(root, 'b/circle'))
+symlinkSync(join(root, 'nowhere'), join(root, 'b/dangling.fits'))
+
+const names = (paths: string[]): string[] =>
+  [...findFiles(paths)].map((answer) => ('found' in answer ? answer.found.file : `${answer.problem.code}: ${answer.problem.file}`).replaceAll(root, 'ROOT'))
+
+describe('findFiles', () => {
+  it('goes through a folder in byte order of the path and takes what looks like FITS by name or first bytes', () => {
+    expect(names([root])).toEqual([
+      'ROOT/a.fits',
+      'ROOT/a/10.FITS.GZ',
+      'ROOT/a/2.fit',
+      'ROOT/a/frame0001',
+      'ROOT/b.fits',
+      'link-in-a-circle: ROOT/b/circle',
+      'ROOT/b/deep/x.fts',
+      'ROOT/b/old.fits.Z',
+      'ROOT/odd/=cmd.fits',
+    ])
+  })
+
+  it('takes a named file whatever it is called, and answers for a path that does not exist', () => {
+    expect(names([`${root}/a/notes.txt`, `${root}/none`])).toEqual(['ROOT/a/notes.txt', 'no-such-path: ROOT/none'])
+  })
+
+  it('drops a leading ./ and keeps the order of the paths given', () => {
+    const here = process.cwd()
+    try {
+      process.chdir(root)
+      expect(names(['./b.fits', './a'])).toEqual(['b.fits', 'a/10.FITS.GZ', 'a/2.fit', 'a/frame0001'])
+      expect(names(['.'])[0]).toBe('a.fits')
+    } finally {
+      process.chdir(here)
+    }
+  })
+})
