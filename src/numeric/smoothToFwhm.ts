@@ -1,0 +1,82 @@
+/** FWHM of a Gaussian ÷ its standard deviation, 2√(2 ln 2). */
+export const FWHM_PER_SIGMA = 2 * Math.sqrt(2 * Math.LN2)
+
+/** Half width of the kernel in its standard deviations; beyond lies 5e-4 of its area. */
+const REACH = 3.5
+/** The kernel is computed anew where the local step has changed by this share. */
+const STEP_TOLERANCE = 0.002
+/** Below this many samples a point-sampled Gaussian has too small a variance; three points of the right variance serve. */
+const NARROW = 0.8
+
+/**
+ * `flux` smoothed by the Gaussian that turns a profile of FWHM `from` into one of FWHM `to`, on any increasing grid.
+ * Samples that are not usable or not finite have no part; what has no usable sample in reach is NaN. Constants pass
+ * unchanged. When `to` is not wider than `from`, a copy with NaN for the samples left out.
+ *
+ * @param wavelength  shape (n) [Å], increasing
+ * @param flux        shape (n)
+ * @param usable      shape (n), 1 where the sample counts
+ * @param widths      FWHM [Å] of the profile now and as wanted
+ */
+export function smoothToFwhm(
+  wavelength: Float64Array,
+  flux: Float64Array,
+  usable: Uint8Array,
+  { from, to }: { readonly from: number; readonly to: number },
+): Float64Array {
+  const n = flux.length
+  const out = new Float64Array(n)
+  const good = new Float64Array(n)
+  const value = new Float64Array(n)
+  let missing = 0
+  for (let i = 0; i < n; i++) {
+    const counts = usable[i] !== 0 && Number.isFinite(flux[i])
+    good[i] = counts ? 1 : 0
+    value[i] = counts ? flux[i] : 0
+    if (!counts) missing++
+  }
+  const sigma = to > from ? Math.sqrt(to * to - from * from) / FWHM_PER_SIGMA : 0
+  let kernelStep = 0
+  let kernel = new Float64Array(1)
+  let half = 0
+  for (let i = 0; i < n; i++) {
+    const step = i + 1 < n ? wavelength[i + 1] - wavelength[i] : wavelength[i] - wavelength[i - 1]
+    if (!(Math.abs(step - kernelStep) <= STEP_TOLERANCE * kernelStep)) {
+      kernel = gaussianKernel(sigma / step)
+      half = (kernel.length - 1) / 2
+      kernelStep = step
+    }
+    const inside = i >= half && i + half < n
+    const first = inside ? -half : Math.max(-half, -i)
+    const last = inside ? half : Math.min(half, n - 1 - i)
+    let sum = 0
+    if (inside && missing === 0) {
+      const start = i - half
+      for (let j = 0; j < kernel.length; j++) sum += kernel[j] * value[start + j]
+      out[i] = sum
+      continue
+    }
+    let weight = 0
+    for (let j = first; j <= last; j++) {
+      sum += kernel[j + half] * value[i + j]
+      weight += kernel[j + half] * good[i + j]
+    }
+    out[i] = weight > 1e-3 ? sum / weight : NaN
+  }
+  return out
+}
+
+/** Kernel of unit area; `sigma` in samples. */
+function gaussianKernel(sigma: number): Float64Array {
+  if (!(sigma > 0.05)) return Float64Array.of(1)
+  if (sigma < NARROW) {
+    const side = (sigma * sigma) / 2
+    return Float64Array.of(side, 1 - 2 * side, side)
+  }
+  const half = Math.ceil(REACH * sigma)
+  const kernel = new Float64Array(2 * half + 1)
+  let sum = 0
+  for (let j = -half; j <= half; j++) sum += kernel[j + half] = Math.exp(-0.5 * (j / sigma) ** 2)
+  for (let j = 0; j < kernel.length; j++) kernel[j] /= sum
+  return kernel
+}
