@@ -44,4 +44,103 @@ export interface SpectralLine {
   readonly levels: string
   readonly source: SourceKey
   readonly fromMemory?: boolean
+  /** Integrated over this window [Å, air, rest] when the line is measured. */
+  readonly window?: readonly [number, number]
+  /** Shape fitted to it; a Gaussian unless given. */
+  readonly profile?: 'gaussian' | 'lorentzian' | 'voigt'
+  /** Where it arises, when not in the star. */
+  readonly origin?: 'interstellar' | 'telluric' | 'sky' | 'nebular'
+  /** Typical strength among the lines of its species, 1 for the strongest. */
+  readonly strength?: number
+}
+
+/** A limit that decides on a finding: its figure, unit, why this figure, and where it comes from. */
+export interface Threshold {
+  readonly value: number
+  readonly unit: string
+  readonly reason: string
+  readonly source: SourceKey
+}
+
+/** Limits of the checks of spectra, frames and the night (`thresholds.ts`). */
+export type ThresholdName =
+  | 'snrMinimum'
+  | 'snrUnusable'
+  | 'nonfiniteDoubt'
+  | 'nonfiniteFault'
+  | 'coverageMinimum'
+  | 'saturatedRun'
+  | 'saturatedShare'
+  | 'clippedFault'
+  | 'deadRun'
+  | 'deadShare'
+  | 'spikeSigma'
+  | 'spikeDepth'
+  | 'spikeCount'
+  | 'negativeShare'
+  | 'skySigma'
+  | 'skyResidual'
+  | 'telluricDepth'
+  | 'telluricResidual'
+  | 'stepSigma'
+  | 'stepHeight'
+  | 'slopeBreak'
+  | 'ringing'
+  | 'zeroPointPixels'
+  | 'zeroPointWidths'
+  | 'zeroPointSigma'
+  | 'resolutionRatio'
+  | 'velocityMaximum'
+  | 'emissionSigma'
+  | 'fitProbability'
+  | 'frameSaturatedShare'
+  | 'lampOffLevel'
+  | 'lampSaturatedShare'
+  | 'arcLinesMinimum'
+  | 'biasNoiseRatio'
+  | 'biasStructure'
+  | 'traceMinimum'
+  | 'seeingMaximum'
+  | 'positionTolerance'
+  | 'nameRadius'
+  | 'typeProbability'
+  | 'typeProbabilityNote'
+  | 'airmassTolerance'
+  | 'airmassDoubt'
+  | 'airmassHigh'
+  | 'hourAngleTolerance'
+  | 'sunAltitude'
+  | 'moonDistance'
+  | 'clockOverlap'
+  | 'clockSlip'
+  | 'nightSpan'
+  | 'commonOffset'
+  | 'jumpSigma'
+  | 'zeroPointJump'
+  | 'resolutionJump'
+  | 'throughputJump'
+  | 'biasJump'
+  | 'seeingJump'
+  | 'snrShortfall'
+
+export type Thresholds = Readonly<Record<ThresholdName, Threshold>>
+
+/** How many calibrations a science set-up wants, and how near in time (`coverRules.ts`). */
+export type CoverRuleName = 'bias' | 'dark' | 'darkExposure' | 'flat' | 'arc' | 'arcGapHours' | 'standard' | 'flatLevel'
+
+export type CoverRules = Readonly<Record<CoverRuleName, Threshold>>
+
+/** Lines of one kind of star at rest, to be matched with a spectrum for its velocity [Å, air]. */
+export interface LinePattern {
+  /** 'hot', 'balmer', 'metal', 'molecular', with the letter of the type. */
+  readonly name: string
+  /** First and last type number the pattern is made for. */
+  readonly types: readonly [number, number]
+  /** Each line: wavelength [Å], equivalent width [Å], FWHM of its own before the instrument [Å]. */
+  readonly lines: readonly (readonly [number, number, number])[]
+  /** Mean depth of what the lines leave, in bins centred on first, first + step ... [Å]. */
+  readonly bins?: { readonly first: number; readonly step: number; readonly depth: readonly number[] }
+  /** Ranges [Å] in which the pattern is known; telluric bands and sky lines are left out. */
+  readonly covered: readonly (readonly [number, number])[]
+  readonly source: SourceKey
 }

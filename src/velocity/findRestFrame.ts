@@ -1,0 +1,139 @@
+import type { Continuum } from '../continuum/types.ts'
+import { correlate } from '../numeric/correlate.ts'
+import { subtractRunningMean } from '../numeric/runningMean.ts'
+import type { Spectrum } from '../spectrum/types.ts'
+import type { LinePattern } from '../tables/types.ts'
+import { toLogGrid } from './logGrid.ts'
+import type { LogGrid } from './logGrid.ts'
+import { patternDepth } from './pattern.ts'
+import { findPeak } from './peak.ts'
+import type { CorrelationPeak } from './peak.ts'
+import type { RestFrame } from './types.ts'
+
+const SPEED_OF_LIGHT = 299792.458
+
+/** Steps of the two grids in ln wavelength: 75 km/s to find the peak, then finer where the sampling allows. */
+const COARSE_STEP = 2.5e-4
+const FINE_STEP = { smallest: 4e-5, largest: 2e-4 } as const
+
+/** Full window of the running mean that takes out slopes, in ln wavelength: 120 Å at 4000 Å. */
+const WINDOW = 0.03
+
+/** [km/s] farther than the search, so that the far antisymmetric part of the correlation is seen. */
+const BEYOND = 2000
+
+/** A peak is trusted from these on; Tonry & Davis 1979 take r < 3 for unreliable (from memory). */
+const TRUST = { ratio: 3, height: 0.25, second: 0.9 } as const
+
+export interface RestFrameOptions {
+  readonly patterns: readonly LinePattern[]
+  /** Name of the pattern to use; the others are tried only when it is not among the patterns. */
+  readonly preferred?: string
+  /** [km/s] largest velocity looked for, default 1000. */
+  readonly maxVelocity?: number
+  /** [Å] FWHM of the instrument, default 2.5 samples. */
+  readonly fwhm?: number
+}
+
+/**
+ * The star's velocity against the line pattern that fits it best, by cross-correlation over ln wavelength, with the
+ * error of Tonry & Davis 1979 (AJ 84, 1511); velocity 0, untrusted and with a reason where no peak stands out.
+ * Emission, telluric bands and ranges that no pattern knows are left out.
+ *
+ * @throws RangeError when there is no pattern
+ */
+export function findRestFrame(spectrum: Spectrum, continuum: Continuum, options: RestFrameOptions): RestFrame {
+  const { patterns, preferred, maxVelocity = 1000 } = options
+  if (patterns.length === 0) throw new RangeError('findRestFrame requires a line pattern, got none')
+  const { wavelength } = spectrum
+  const n = wavelength.length
+  if (n < 16) return untrusted(`only ${n} samples`)
+  const middle = wavelength[n >> 1]
+  const sampling = (wavelength[n - 1] - wavelength[0]) / (n - 1) / middle
+  const fwhm = options.fwhm ?? 2.5 * sampling * middle
+  const chosen = patterns.filter((pattern) => pattern.name === preferred)
+  const candidates = chosen.length > 0 ? chosen : patterns
+
+  const coarse = toLogGrid(spectrum, continuum, rangeOf(wavelength, candidates), Math.max(COARSE_STEP, sampling))
+  let best: Match | undefined
+  for (const pattern of candidates) {
+    const match = matchPattern(coarse, pattern, { fwhm, maxVelocity })
+    if (match && (best === undefined || match.peak.height > best.peak.height)) best = match
+  }
+  if (best === undefined) return untrusted('the line patterns cover too little of the spectrum')
+
+  const step = Math.min(FINE_STEP.largest, Math.max(FINE_STEP.smallest, sampling / 2))
+  const fine = toLogGrid(spectrum, continuum, rangeOf(wavelength, [best.pattern]), step)
+  const centred = matchPattern(fine, best.pattern, { fwhm, maxVelocity: 150, around: velocityOf(best, coarse) })
+  const refined = centred && !centred.peak.isAtEdge ? velocityOf(centred, fine) : velocityOf(best, coarse)
+  return judge(best, refined, coarse.step)
+}
+
+interface Match {
+  readonly pattern: LinePattern
+  readonly peak: CorrelationPeak
+  /** Shift of the pattern before the correlation [cells]. */
+  readonly before: number
+}
+
+function velocityOf(match: Match, grid: LogGrid): number {
+  // cz from a shift in ln wavelength
+  return SPEED_OF_LIGHT * Math.expm1((match.peak.shift + match.before) * grid.step)
+}
+
+function rangeOf(wavelength: Float64Array, patterns: readonly LinePattern[]): [number, number] {
+  const ends = patterns.flatMap((pattern) => pattern.covered.flat())
+  return [Math.max(wavelength[0], Math.min(...ends)), Math.min(wavelength[wavelength.length - 1], Math.max(...ends))]
+}
+
+function matchPattern(
+  grid: LogGrid,
+  pattern: LinePattern,
+  { fwhm, maxVelocity, around = 0 }: { readonly fwhm: number; readonly maxVelocity: number; readonly around?: number },
+): Match | undefined {
+  const { step, start } = grid
+  const weight = coveredWeight(grid, pattern)
+  let used = 0
+  for (let i = 0; i < weight.length; i++) if (weight[i] > 0) used++
+  if (used < 12) return undefined
+  const half = Math.round(WINDOW / 2 / step)
+  const search = Math.ceil(maxVelocity / SPEED_OF_LIGHT / step)
+  const reach = search + (around === 0 ? Math.ceil(BEYOND / SPEED_OF_LIGHT / step) : 0)
+  const before = Math.round(around / SPEED_OF_LIGHT / step)
+  const data = subtractRunningMean(grid.depth, weight, half)
+  const depth = patternDepth(pattern, {
+    start: start - (reach + half + before) * step,
+    step,
+    count: weight.length + 2 * (reach + half),
+    fwhm,
+  })
+  const shape = subtractRunningMean(depth, undefined, half)
+  const correlation = correlate(data, weight, shape.subarray(half, shape.length - half), reach)
+  return { pattern, peak: findPeak(correlation, search), before }
+}
+
+function coveredWeight(grid: LogGrid, pattern: LinePattern): Float64Array {
+  const weight = new Float64Array(grid.weight.length)
+  for (const [first, last] of pattern.covered) {
+    const from = Math.max(0, Math.ceil((Math.log(first) - grid.start) / grid.step))
+    const to = Math.min(weight.length, Math.floor((Math.log(last) - grid.start) / grid.step))
+    for (let i = from; i < to; i++) weight[i] = grid.weight[i]
+  }
+  return weight
+}
+
+function untrusted(reason: string): RestFrame {
+  return { velocity: 0, trusted: false, reason, how: 'none' }
+}
+
+function judge({ pattern, peak }: Match, velocity: number, step: number): RestFrame {
+  const found = { how: 'cross-correlation', pattern: pattern.name, peakRatio: peak.ratio, peak: peak.height } as const
+  const refuse = (reason: string): RestFrame => ({ velocity: 0, trusted: false, reason, ...found })
+  if (peak.isAtEdge) return refuse('the correlation has no peak within the range of velocities')
+  if (peak.height < TRUST.height) return refuse(`the peak is ${peak.height.toFixed(2)} high, below ${TRUST.height}`)
+  if (peak.ratio < TRUST.ratio) return refuse(`the peak ratio is ${peak.ratio.toFixed(1)}, below ${TRUST.ratio}`)
+  if (peak.second > TRUST.second * peak.height)
+    return refuse(`a second peak has ${((100 * peak.second) / peak.height).toFixed(0)} % of the height of the first`)
+  const error = ((3 / 8) * peak.width * step * SPEED_OF_LIGHT) / (1 + peak.ratio)
+  return { velocity, error, trusted: true, ...found }
+}
