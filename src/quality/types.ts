@@ -77,6 +77,12 @@ export interface FrameStatistics {
   /** Position and FWHM [pixels] across the dispersion, and peak [counts] of the brightest trace. */
   readonly trace?: { readonly position: number; readonly fwhm: number; readonly peak: number }
   readonly dispersionAxis?: 1 | 2
+  /** Height of the strongest line of the mean profile along the dispersion [counts]. */
+  readonly arcPeak?: number
+  /** Peak of the trace over the light beside it along the slit. */
+  readonly traceContrast?: number
+  /** Counts taken as the level of saturation: of the header, else the end of the range of 16-bit data. */
+  readonly saturation?: number
 }
 
 /** One row of `frames`. */

@@ -1,0 +1,13 @@
+/** A number as a person reads it: three significant digits, no exponent between 0.001 and 99,999. */
+export function figure(value: number, digits = 3): string {
+  if (!Number.isFinite(value)) return 'no value'
+  const size = Math.abs(value)
+  if (size >= 1000 && size < 1e6) return String(Math.round(value))
+  if (size !== 0 && (size < 0.001 || size >= 1e6)) return value.toExponential(1)
+  return String(Number(value.toPrecision(digits)))
+}
+
+/** A share as a percentage with at most two significant digits. */
+export function percent(share: number): string {
+  return `${figure(100 * share, 2)} %`
+}

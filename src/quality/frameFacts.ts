@@ -1,0 +1,33 @@
+import type { HeaderFacts } from '../spectrum/types.ts'
+import type { Thresholds } from '../tables/types.ts'
+import { checkFrame } from './checkFrame.ts'
+import { qualityOf } from './qualityOf.ts'
+import { setupName } from './setupName.ts'
+import { sortFrame } from './sortFrame.ts'
+import type { FrameFacts, FrameKind, FrameStatistics } from './types.ts'
+
+const WITH_TRACE: readonly FrameKind[] = ['science', 'standard', 'sky', 'focus', 'acquisition', 'unknown']
+const WITH_LINES: readonly FrameKind[] = ['arc', 'unknown']
+
+/**
+ * The row of a 2-D frame: its kind and how that was known, set-up, statistics, findings and quality. Statistics that
+ * mean nothing for the kind are left out: the trace of a lamp frame, the arc lines of a star.
+ */
+export function frameFacts(facts: HeaderFacts, statistics: FrameStatistics, thresholds: Thresholds): FrameFacts {
+  const sorted = sortFrame(facts, statistics)
+  const findings = checkFrame(sorted, facts, statistics, thresholds)
+  const { arcLines, arcPeak, trace, traceContrast, ...rest } = statistics
+  return {
+    kind: sorted.kind,
+    kindHow: sorted.kindHow,
+    setup: setupName(facts),
+    facts,
+    statistics: {
+      ...rest,
+      ...(WITH_LINES.includes(sorted.kind) ? { arcLines, arcPeak } : {}),
+      ...(WITH_TRACE.includes(sorted.kind) ? { trace, traceContrast } : {}),
+    },
+    quality: qualityOf(findings),
+    findings,
+  }
+}
