@@ -84,7 +84,10 @@ function integrateBand(
   const { lower, upper, noise } = pixels
   const lo = window.band[0] * stretch
   const hi = window.band[1] * stretch
-  const slope = (red.mean - blue.mean) / (red.centre - blue.centre)
+  const distance = red.centre - blue.centre
+  const apart = distance > 1e-6 * lo
+  const slope = apart ? (red.mean - blue.mean) / distance : 0
+  const start = apart ? blue.mean : 0.5 * (blue.mean + red.mean)
   let light = 0
   let variance = 0
   let width = 0
@@ -96,9 +99,9 @@ function integrateBand(
     const to = upper[i] < hi ? upper[i] : hi
     const part = to - from
     const place = 0.5 * (from + to) - blue.centre
-    const level = blue.mean + slope * place
+    const level = start + slope * place
     const ratio = (part * flux[i]) / level
-    const share = place / (red.centre - blue.centre)
+    const share = apart ? place / distance : 0.5
     light += ratio
     variance += ((part * noise[i]) / level) ** 2
     byBlue += (ratio / level) * (1 - share)

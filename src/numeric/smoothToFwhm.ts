@@ -37,7 +37,7 @@ export function smoothToFwhm(
   }
   const sigma = to > from ? Math.sqrt(to * to - from * from) / FWHM_PER_SIGMA : 0
   let kernelStep = 0
-  let kernel = new Float64Array(1)
+  let kernel: Float64Array = new Float64Array(1)
   let half = 0
   for (let i = 0; i < n; i++) {
     const step = i + 1 < n ? wavelength[i + 1] - wavelength[i] : wavelength[i] - wavelength[i - 1]

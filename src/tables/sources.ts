@@ -12,4 +12,24 @@ export const SOURCES = {
     citation: 'Jacoby, Hunter & Christian 1984, ApJS 56, 257 (CDS III/92)',
     changed: 'means of three or more stars of a type, at rest',
   },
+  memory: { citation: 'written down from memory', fromMemory: true },
+  dirac: {
+    citation:
+      'centre of gravity of the fine structure from the Dirac equation, constants of CODATA 2018; air by Ciddor 1996',
+  },
+  rydberg: {
+    citation: 'Rydberg formula with the reduced mass of hydrogen, constants of CODATA 2018; air by Ciddor 1996',
+    doi: '10.1103/RevModPhys.93.025010',
+  },
+  nistHelium: { citation: 'NIST Atomic Spectra Database, He I', changed: 'vacuum to air by Ciddor 1996' },
+  nistIron: { citation: 'NIST Atomic Spectra Database, Fe I and Fe II', changed: 'vacuum to air by Ciddor 1996' },
+  nistMercury: { citation: 'NIST Atomic Spectra Database, Hg I' },
+  nistLines: {
+    citation: 'NIST Atomic Spectra Database',
+    changed: 'vacuum to air by Ciddor 1996; level names from memory',
+  },
+  surveyLines: { citation: 'emission-line and night-sky line lists of a public sky survey, seen in a copy' },
+  osterbrock1992: { citation: 'Osterbrock & Martel 1992, PASP 104, 76', doi: '10.1086/132961' },
+  dib: { citation: 'diffuse interstellar bands, wavelengths written down from memory', fromMemory: true },
+  pickles1998: { citation: 'Pickles 1998, PASP 110, 863', doi: '10.1086/316197' },
 } as const satisfies Record<string, Source>
