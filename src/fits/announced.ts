@@ -2,6 +2,7 @@ import { BLOCK_SIZE } from './card.ts'
 import { readHeader } from './header.ts'
 import { hduOf } from './hdu.ts'
 import { memorySource } from './source.ts'
+import { textOf } from './text.ts'
 import { FormatError } from '../errors.ts'
 
 /**
@@ -15,9 +16,7 @@ export function announcedSize(): (known: Uint8Array) => number {
   return (known) => {
     for (;;) {
       if (known.length < start + BLOCK_SIZE) return start + BLOCK_SIZE
-      const first = Buffer.from(known.buffer, known.byteOffset + start, 9)
-        .latin1Slice()
-        .toUpperCase()
+      const first = textOf(known, start, start + 9).toUpperCase()
       if (!first.startsWith(index === 0 ? 'SIMPLE' : 'XTENSION=')) return Infinity
       try {
         const { header, size } = readHeader(memorySource(known), start, index)

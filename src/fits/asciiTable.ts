@@ -1,6 +1,6 @@
 import { FormatError } from '../errors.ts'
 import { parseNumber } from './card.ts'
-import { trimmedText } from './cells.ts'
+import { textOf, trimmedText } from './text.ts'
 import type { Column, ColumnValues, Hdu } from './types.ts'
 
 /**
@@ -13,7 +13,7 @@ import type { Column, ColumnValues, Hdu } from './types.ts'
  */
 export function asciiValues(bytes: Uint8Array, hdu: Hdu, column: Column, rows: { firstRow: number }): ColumnValues {
   const { width, letter, scale, zero } = column
-  const text = Buffer.from(bytes.buffer, bytes.byteOffset, bytes.length).latin1Slice()
+  const text = textOf(bytes)
   const count = width === 0 ? 0 : Math.floor(bytes.length / width)
   if (letter === 'A') {
     const values = Array.from({ length: count }, (_, i) => trimmedText(text.slice(i * width, (i + 1) * width)))

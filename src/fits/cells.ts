@@ -1,6 +1,7 @@
 import { sizeOfElements } from './columns.ts'
 import { storedValues, physicalValues } from './stored.ts'
 import type { NumberLetter } from './stored.ts'
+import { textOf, trimmedText } from './text.ts'
 import type { Column, ColumnValues } from './types.ts'
 
 const UNSIGNED_64 = 2 ** 63
@@ -78,7 +79,7 @@ function textCells(bytes: Uint8Array, column: Column, repeat: number): ColumnVal
   const each = stringLength(column, repeat)
   const strings = Math.floor(repeat / each)
   const rows = Math.floor(bytes.length / repeat)
-  const text = Buffer.from(bytes.buffer, bytes.byteOffset, bytes.length).latin1Slice()
+  const text = textOf(bytes)
   const values: string[] = []
   for (let row = 0; row < rows; row++) {
     for (let i = 0; i < strings; i++) {
@@ -93,10 +94,4 @@ function stringLength(column: Column, repeat: number): number {
   const written = /A(\d+)$/.exec(column.form.trim())
   const length = column.shape[0] ?? (written && !column.descriptor ? Number(written[1]) : repeat)
   return length > 0 && length <= repeat ? length : repeat
-}
-
-/** Text up to its first NUL, without trailing blanks; bytes outside printable ASCII as '?'. */
-export function trimmedText(text: string): string {
-  const end = text.indexOf('\0')
-  return (end < 0 ? text : text.slice(0, end)).trimEnd().replace(/[^\x20-\x7e]/g, '?')
 }

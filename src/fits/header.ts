@@ -1,6 +1,7 @@
 import { FormatError } from '../errors.ts'
 import { BLOCK_SIZE, CARD_SIZE, parseCard, parseNumber } from './card.ts'
 import type { CardBreach } from './card.ts'
+import { textOf } from './text.ts'
 import type { ByteSource, Card, FitsNote, Header } from './types.ts'
 
 /** Cards above which a header is taken for damage: the longest headers met hold some thousands. */
@@ -86,7 +87,7 @@ function cleanText(bytes: Uint8Array, at: number, note: (code: string, text: str
       else note('non-ascii-header', `header holds a byte outside printable ASCII (0x${hex(c)}) at byte ${at + i}`)
     }
   }
-  const text = Buffer.from(bytes.buffer, bytes.byteOffset, bytes.length).latin1Slice()
+  const text = textOf(bytes)
   return clean ? text : text.replaceAll('\0', ' ').replace(/[^\x20-\x7e]/g, '?')
 }
 

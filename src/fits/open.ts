@@ -3,6 +3,7 @@ import { BLOCK_SIZE } from './card.ts'
 import { hduOf } from './hdu.ts'
 import { readHeader } from './header.ts'
 import { requireFits } from './signature.ts'
+import { textOf } from './text.ts'
 import type { ByteSource, FitsFile, FitsNote, Hdu } from './types.ts'
 
 /** HDUs above which the walk ends with a note; files met hold some thousands at most. */
@@ -54,7 +55,7 @@ export function openFits(source: ByteSource): FitsFile {
 
 function beginsExtension(source: ByteSource, at: number): boolean {
   if (source.size - at < 80) return false
-  return Buffer.from(source.read(at, 9)).latin1Slice().toUpperCase() === 'XTENSION='
+  return textOf(source.read(at, 9)).toUpperCase() === 'XTENSION='
 }
 
 function cutNote(hdu: Hdu, size: number): FitsNote {

@@ -1,4 +1,5 @@
 import { FormatError } from '../errors.ts'
+import { textOf } from './text.ts'
 import type { ByteSource } from './types.ts'
 
 const LINE_FEED = 10
@@ -12,7 +13,7 @@ const CARRIAGE_RETURN = 13
  */
 export function requireFits(source: ByteSource): void {
   const head = source.read(0, Math.min(source.size, 512))
-  const text = Buffer.from(head.buffer, head.byteOffset, head.length).latin1Slice()
+  const text = textOf(head)
   const begins = /^SIMPLE {0,3}=/i.test(text)
   const broken = head[80] === LINE_FEED || head[80] === CARRIAGE_RETURN
   if (begins && !broken) return

@@ -35,11 +35,25 @@ const TABLE_RENAMED: Readonly<Record<string, string>> = {
 
 /** The header of the image that a tile-compressed table holds. */
 export function imageHeader(header: Header): Header {
-  return rewritten(header, IMAGE_LEFT_OUT, (keyword) => {
+  const shown = rewritten(header, IMAGE_LEFT_OUT, (keyword) => {
     const axis = /^ZNAXIS(\d+)$/.exec(keyword)
     return axis ? `NAXIS${axis[1]}` : IMAGE_RENAMED[keyword]
-  })
+  }).cards.filter((card) => card.keyword !== 'EXTNAME' || card.value !== DEFAULT_NAME)
+  if (shown.some((card) => card.keyword === 'SIMPLE')) return headerOf(shown)
+  // the file keeps nothing of the first card and of PCOUNT and GCOUNT: those of every image extension stand in
+  const byte = header.cards[0]?.byte ?? 0
+  const missing = IMAGE_FIRST.filter(({ keyword }) => !shown.some((card) => card.keyword === keyword))
+  return headerOf([...missing.map((card) => ({ ...card, comment: '', byte })), ...shown])
 }
+
+const IMAGE_FIRST = [
+  { keyword: 'XTENSION', value: 'IMAGE' },
+  { keyword: 'PCOUNT', value: 0 },
+  { keyword: 'GCOUNT', value: 1 },
+] as const
+
+/** EXTNAME that a table of tiles bears when the image had none. */
+const DEFAULT_NAME = 'COMPRESSED_IMAGE'
 
 /** The header of the table that a compressed table holds. */
 export function tableHeader(header: Header): Header {
