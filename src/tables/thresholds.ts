@@ -5,9 +5,9 @@ const common = 'common'
 /** Limits of every check, each with its unit, the reason for the figure and its source. */
 export const THRESHOLDS: Thresholds = {
   snrMinimum: {
-    value: 20,
+    value: 10,
     unit: '1/√Å',
-    reason: 'below a signal-to-noise of 20 only the class can be told, not the subclass',
+    reason: 'at a resolution of 4 Å it makes 20 per resolution element, below which only the class can be told',
     source: common,
   },
   snrUnusable: { value: 3, unit: '1/√Å', reason: 'below 3 no line of a star can be told from noise', source: common },

@@ -1,0 +1,83 @@
+import type { Continuum } from '../continuum/types.ts'
+import type { Measurement } from '../features/types.ts'
+import { median } from '../numeric/median.ts'
+import type { Spectrum } from '../spectrum/types.ts'
+import type { Threshold, ThresholdName } from '../tables/types.ts'
+import type { TypePosterior } from '../typing/types.ts'
+import type { Resolution, RestFrame, ZeroPoint } from '../velocity/types.ts'
+
+/** What the checks of a spectrum look at: the spectrum and what was measured from it. */
+export interface SpectrumInput {
+  readonly spectrum: Spectrum
+  readonly continuum: Continuum
+  readonly restFrame: RestFrame
+  readonly resolution?: Resolution
+  readonly zeroPoint?: ZeroPoint
+  readonly measurements: readonly Measurement[]
+  readonly type: TypePosterior
+}
+
+/** The limits a check needs, by name. */
+export type Limits = (name: ThresholdName) => number
+
+/** Limits by name out of the table of thresholds. */
+export function limitsOf(thresholds: Readonly<Record<ThresholdName, Threshold>>): Limits {
+  return (name) => thresholds[name].value
+}
+
+/** Usable samples with a flux, a level above zero and a noise, packed; wavelengths [Å, air, as observed]. */
+export interface Samples {
+  readonly n: number
+  /** Index in the spectrum, shape (n). */
+  readonly index: Int32Array
+  readonly wavelength: Float64Array
+  readonly flux: Float64Array
+  /** Flux ÷ level − 1. */
+  readonly residual: Float64Array
+  /** Noise ÷ level. */
+  readonly noise: Float64Array
+  /** Å per sample, median. */
+  readonly step: number
+}
+
+/** Type number from which molecular bands cut the spectrum into steps (late K). */
+const MOLECULAR = 57
+
+/** True where the type's bands of molecules look like steps and disturb the levels beside the oxygen bands. */
+export function isMolecular(type: TypePosterior): boolean {
+  return type.typeNumber !== undefined && type.typeNumber >= MOLECULAR
+}
+
+/** Packs the samples the checks can use; `n` is 0 where no level could be set. */
+export function samplesOf(spectrum: Spectrum, continuum: Continuum): Samples {
+  const total = spectrum.flux.length
+  const index = new Int32Array(total)
+  let n = 0
+  for (let i = 0; i < total; i++) {
+    if (spectrum.usable[i] && Number.isFinite(spectrum.flux[i]) && continuum.level[i] > 0) index[n++] = i
+  }
+  const kept = index.slice(0, n)
+  const steps = new Float64Array(Math.max(0, total - 1))
+  for (let i = 0; i < steps.length; i++) steps[i] = spectrum.wavelength[i + 1] - spectrum.wavelength[i]
+  return {
+    n,
+    index: kept,
+    wavelength: Float64Array.from(kept, (i) => spectrum.wavelength[i]),
+    flux: Float64Array.from(kept, (i) => spectrum.flux[i]),
+    residual: Float64Array.from(kept, (i) => spectrum.flux[i] / continuum.level[i] - 1),
+    noise: Float64Array.from(kept, (i) => continuum.noise[i] / continuum.level[i]),
+    step: median(steps),
+  }
+}
+
+/** Index of the first of increasing `values` that is not below `value`. */
+export function firstNotBelow(values: Float64Array, value: number): number {
+  let low = 0
+  let high = values.length
+  while (low < high) {
+    const middle = (low + high) >> 1
+    if (values[middle] < value) low = middle + 1
+    else high = middle
+  }
+  return low
+}
