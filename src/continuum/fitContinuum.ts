@@ -4,6 +4,7 @@ import type { Spectrum } from '../spectrum/types.ts'
 import { type Bins, binSpectrum } from './bins.ts'
 import { noiseOf } from './noise.ts'
 import type { Continuum } from './types.ts'
+import { weakLines } from './weakLines.ts'
 
 export interface ContinuumOptions {
   /** Å at 5000 Å: the level is set by stretches of this width, whatever the resolution of the spectrum. */
@@ -39,7 +40,8 @@ export function fitContinuum(spectrum: Spectrum, options: Partial<ContinuumOptio
     const level = new Float64Array(spectrum.flux.length).fill(NaN)
     return { level, error: level.slice(), isPseudo: true, supported: 0, noise, noiseFrom }
   }
-  const { level, error } = spread(spectrum.wavelength, bins, fit.curve, fit.error)
+  const first = spread(spectrum.wavelength, bins, fit.curve, fit.error)
+  const { level, error } = raise(spectrum, noise, first, chosen)
   return { level, error, isPseudo: fit.crowding > 0.02, supported: fit.supported, noise, noiseFrom }
 }
 
@@ -174,6 +176,36 @@ function scatterAbove(y: Float64Array, prior: Float64Array, curve: Float64Array)
   for (let k = 0; k < y.length; k++) if (prior[k] > 0.5 && y[k] > curve[k]) above.push(y[k] - curve[k])
   if (above.length < 4) return 0.005
   return Math.max(0.001, Math.min(0.1, 1.4826 * quantileSorted(Float64Array.from(above).sort(), 0.5)))
+}
+
+/** The first curve raised by what weak lines take from its highest stretches too. */
+function raise(
+  { wavelength, flux, usable }: Spectrum,
+  noise: Float64Array,
+  first: { readonly level: Float64Array; readonly error: Float64Array },
+  options: ContinuumOptions,
+) {
+  const n = flux.length
+  const ratio = new Float64Array(n)
+  const relative = new Float64Array(n)
+  for (let i = 0; i < n; i++) {
+    const counts = usable[i] && hydrogenWeight(wavelength[i], options) === 1
+    ratio[i] = counts ? flux[i] / first.level[i] : NaN
+    relative[i] = noise[i] / first.level[i]
+  }
+  const { place, rise, error } = weakLines(wavelength, ratio, relative)
+  const level = new Float64Array(n)
+  const total = new Float64Array(n)
+  let b = 0
+  for (let i = 0; i < n; i++) {
+    const at = Math.log(wavelength[i])
+    while (b + 2 < place.length && at > place[b + 1]) b++
+    const next = Math.min(place.length - 1, b + 1)
+    const t = next === b ? 0 : Math.min(1, Math.max(0, (at - place[b]) / (place[next] - place[b])))
+    level[i] = first.level[i] * (1 + rise[b] + t * (rise[next] - rise[b]))
+    total[i] = Math.hypot(first.error[i], level[i] * (error[b] + t * (error[next] - error[b])))
+  }
+  return { level, error: total }
 }
 
 /** The curve and its error at every sample, by cubic interpolation (Catmull & Rom 1974) between the bins' middles. */

@@ -1,0 +1,212 @@
+import { quantileSorted } from '../numeric/median.ts'
+
+/**
+ * Unresolved weak lines lower every stretch of a spectrum, the highest ones too. How much is told by how much they make
+ * the flux fluctuate: for lines placed at random the integral of the autocovariance of the depth is
+ * Σ W² per Å = D·⟨W²⟩/⟨W⟩, D being the share of light taken (Campbell 1909, shot noise). It does not depend on the
+ * resolution, and white noise has part in it at lag zero only.
+ *
+ * The typical strength ⟨W²⟩/⟨W⟩ [Å] grows with crowding: about 0.09 Å in the Sun at 5000 Å, where D = 0.08, and about
+ * 0.03 Å among the faintest lines (rough values of the solar line list, from memory).
+ */
+const FAINTEST = 0.03
+const GROWTH = 0.06 / Math.sqrt(0.08)
+
+/** Width of a block [ln Å]: 300 Å at 5000 Å. */
+const BLOCK = 0.06
+/** Lags up to here [Å]: beyond, the profile of an instrument of 12 Å FWHM has no part left. */
+const LONGEST = 20
+/** Fluctuations are followed on samples of at least this width [Å]. */
+const FINEST = 0.8
+/** Lines deeper than this many robust standard deviations of their block are measured one by one, and count as clipped. */
+const STRONG = 4
+/** The level is raised by no more than this; where it should be, it is a pseudo-continuum. */
+export const GREATEST_RISE = 0.04
+
+export interface WeakLines {
+  /** ln λ of the middles of the blocks. */
+  readonly place: Float64Array
+  /** What the level is to be multiplied by, less one. */
+  readonly rise: Float64Array
+  /** Error of the rise, 1 σ. */
+  readonly error: Float64Array
+  /** Share of light that weak lines take. */
+  readonly taken: Float64Array
+}
+
+/**
+ * How far the level lies above a first curve, block by block.
+ *
+ * @param ratio  shape (n): flux ÷ first curve; NaN where a sample has no part (masked, hydrogen, spikes)
+ * @param noise  shape (n): noise ÷ first curve
+ */
+export function weakLines(wavelength: Float64Array, ratio: Float64Array, noise: Float64Array): WeakLines {
+  const data = coarser(wavelength, ratio, noise)
+  const n = data.ratio.length
+  const first = Math.log(wavelength[0])
+  const span = Math.log(wavelength[wavelength.length - 1]) - first
+  const blocks = Math.max(1, Math.round(span / BLOCK))
+  const edges = [0]
+  for (let b = 1; b <= blocks; b++) {
+    const limit = Math.exp(first + (span * b) / blocks)
+    let at = edges[b - 1]
+    while (at < n && (data.wavelength[at] < limit || b === blocks)) at++
+    edges.push(at)
+  }
+  const step = (data.wavelength[n - 1] - data.wavelength[0]) / Math.max(1, n - 1)
+  const lags = Math.max(2, Math.min(40, Math.ceil(LONGEST / step)))
+  const covariance: Float64Array[] = []
+  const mean = new Float64Array(blocks)
+  const place = new Float64Array(blocks)
+  const noiseVariance = new Float64Array(blocks)
+  const total = new Float64Array(lags + 1)
+  for (let b = 0; b < blocks; b++) {
+    const block = blockCovariance(data, edges[b], edges[b + 1], lags)
+    mean[b] = block.mean
+    place[b] = first + (span * (b + 0.5)) / blocks
+    covariance.push(block.covariance)
+    noiseVariance[b] = block.noiseVariance
+    for (let k = 0; k <= lags; k++) if (Number.isFinite(block.covariance[k])) total[k] += block.covariance[k]
+  }
+  let reach = 1
+  while (reach < lags && total[reach + 1] > 0.05 * total[1]) reach++
+  const integral = new Float64Array(blocks)
+  const variance = new Float64Array(blocks)
+  for (let b = 0; b < blocks; b++) {
+    let sum = covariance[b][0]
+    for (let k = 1; k <= reach; k++) sum += 2 * covariance[b][k]
+    const steep = Math.exp(STEEPNESS * (place[b] - STEEPNESS_AT))
+    const size = Math.max(1, edges[b + 1] - edges[b])
+    integral[b] = sum * step * steep
+    variance[b] = (noiseVariance[b] * step * steep) ** 2 * ((2 + 4 * reach) / size)
+  }
+  const smooth = smoothIntegrals(integral, variance, reach)
+  const rise = new Float64Array(blocks)
+  const error = new Float64Array(blocks)
+  const taken = new Float64Array(blocks)
+  for (let b = 0; b < blocks; b++) {
+    const steep = Math.exp(STEEPNESS * (place[b] - STEEPNESS_AT))
+    taken[b] = shareTaken(Math.max(0, smooth.value[b] / steep))
+    const high = shareTaken(Math.max(0, smooth.value[b] + smooth.error[b]) / steep)
+    const wanted = (1 + mean[b]) / (1 - taken[b]) - 1
+    rise[b] = Number.isFinite(wanted) ? Math.min(GREATEST_RISE, Math.max(-GREATEST_RISE / 4, wanted)) : NaN
+    error[b] = Math.hypot(high - taken[b], UNCERTAIN * taken[b])
+  }
+  return { place, rise, error, taken }
+}
+
+/** Crowding falls about as λ⁻⁶ in the visual; taken out before neighbouring blocks are averaged. */
+const STEEPNESS = 6
+const STEEPNESS_AT = Math.log(5000)
+/** Share of D by which the typical strength of lines may differ from star to star. */
+const UNCERTAIN = 0.2
+
+/** Medians of three blocks (one strong line does not count), then weighted means over five. */
+function smoothIntegrals(integral: Float64Array, variance: Float64Array, reach: number) {
+  const n = integral.length
+  const middle = new Float64Array(n)
+  for (let b = 0; b < n; b++) {
+    const near = [integral[b - 1], integral[b], integral[b + 1]]
+      .filter((value) => Number.isFinite(value))
+      .sort((x, y) => x - y)
+    middle[b] = near.length === 0 ? NaN : near.length === 2 ? Math.min(near[0], near[1]) : near[near.length >> 1]
+  }
+  const value = new Float64Array(n)
+  const error = new Float64Array(n)
+  // What noise alone could do is shrunk away: the result is biased low rather than raised by noise.
+  for (let b = 0; b < n; b++) {
+    let sum = 0
+    let weight = 0
+    for (let k = Math.max(0, b - 2); k <= Math.min(n - 1, b + 2); k++) {
+      if (!Number.isFinite(middle[k])) continue
+      const w = (3 - Math.abs(k - b)) / (variance[k] + 1e-9 + (0.1 * reach * middle[k] * middle[k]) / 10)
+      sum += w * middle[k]
+      weight += w
+    }
+    const mean = weight ? Math.max(0, sum / weight) : 0
+    error[b] = weight ? Math.sqrt(3 / weight) : 0
+    value[b] = mean ? mean ** 3 / (mean * mean + 4 * error[b] ** 2) : 0
+  }
+  return { value, error }
+}
+
+interface Samples {
+  readonly wavelength: Float64Array
+  readonly ratio: Float64Array
+  readonly noise: Float64Array
+}
+
+/** Means of neighbouring samples where the sampling is finer than needed. */
+function coarser(wavelength: Float64Array, ratio: Float64Array, noise: Float64Array): Samples {
+  const n = wavelength.length
+  const step = (wavelength[n - 1] - wavelength[0]) / Math.max(1, n - 1)
+  const group = Math.floor(FINEST / step)
+  if (group < 2) return { wavelength, ratio, noise }
+  const size = Math.floor(n / group)
+  const out = { wavelength: new Float64Array(size), ratio: new Float64Array(size), noise: new Float64Array(size) }
+  for (let k = 0; k < size; k++) {
+    let count = 0
+    let variance = 0
+    for (let i = k * group; i < (k + 1) * group; i++) {
+      out.wavelength[k] += wavelength[i] / group
+      if (!(ratio[i] === ratio[i])) continue
+      out.ratio[k] += ratio[i]
+      variance += noise[i] * noise[i]
+      count++
+    }
+    out.ratio[k] = count ? out.ratio[k] / count : NaN
+    out.noise[k] = Math.sqrt(variance) / count
+  }
+  return out
+}
+
+/** Mean of ratio − 1 and its autocovariance at lags 0 … `lags`, noise taken off at lag zero; strong lines left out. */
+function blockCovariance({ ratio, noise }: Samples, start: number, end: number, lags: number) {
+  const covariance = new Float64Array(lags + 1).fill(NaN)
+  const kept = new Float64Array(Math.max(0, end - start))
+  let count = 0
+  for (let i = start; i < end; i++) if (ratio[i] === ratio[i]) kept[count++] = ratio[i]
+  if (count < 20) return { mean: NaN, covariance, noiseVariance: NaN }
+  const sorted = kept.subarray(0, count).sort()
+  const middle = quantileSorted(sorted, 0.5)
+  const low = middle - STRONG * (middle - quantileSorted(sorted, 0.16))
+  const high = middle + STRONG * (quantileSorted(sorted, 0.84) - middle)
+  const off = new Float64Array(end - start).fill(NaN)
+  let sum = 0
+  let used = 0
+  for (let i = start; i < end; i++)
+    if (ratio[i] > low && ratio[i] < high) {
+      sum += ratio[i]
+      used++
+    }
+  const mean = sum / used
+  let variance = 0
+  for (let i = start; i < end; i++)
+    if (ratio[i] > low && ratio[i] < high) {
+      off[i - start] = ratio[i] - mean
+      variance += noise[i] * noise[i]
+    }
+  for (let k = 0; k <= lags; k++) {
+    let product = 0
+    let pairs = 0
+    for (let i = 0; i + k < off.length; i++) {
+      const value = off[i] * off[i + k]
+      if (value === value) {
+        product += value
+        pairs++
+      }
+    }
+    covariance[k] = product / Math.max(1, pairs)
+  }
+  covariance[0] -= variance / used
+  return { mean: mean - 1, covariance, noiseVariance: variance / used }
+}
+
+/** D from D·(FAINTEST + GROWTH·√D) = `integral`, by Newton's method in √D. */
+function shareTaken(integral: number): number {
+  let root = Math.cbrt(integral / GROWTH)
+  for (let k = 0; k < 6; k++)
+    root -=
+      (root * root * (FAINTEST + GROWTH * root) - integral) / (2 * FAINTEST * root + 3 * GROWTH * root * root + 1e-12)
+  return Math.min(0.5, root * root)
+}
