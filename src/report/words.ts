@@ -67,3 +67,9 @@ export function featureWord(feature: string): string {
     .replace(/^Gband$/, 'G band')
     .replace(/^Mgb$/, 'Mg b')
 }
+
+/** Type number of a published type that begins 'G2', 'K0.5' ...; undefined when it does not. */
+export function typeNumberOf(word: string): number | undefined {
+  const match = /^\s*([OBAFGKM])\s*(\d(?:\.\d+)?)/.exec(word)
+  return match ? LETTERS.indexOf(match[1]) * 10 + Number(match[2]) : undefined
+}

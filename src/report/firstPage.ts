@@ -1,0 +1,137 @@
+import type { Block, Item } from './drawing.ts'
+import { box } from './drawing.ts'
+import type { Flow } from './flow.ts'
+import { mark, STANDING_COLOURS } from './marks.ts'
+import { normalisedFigure } from './normalisedFigure.ts'
+import { PALETTE } from './palette.ts'
+import { posteriorFigure } from './posteriorFigure.ts'
+import type { Area } from './spectrumFigure.ts'
+import { figureHeading, spectrumFigure } from './spectrumFigure.ts'
+import type { TargetView } from './targetView.ts'
+import type { Typeface } from './typeface.ts'
+import type { Answer } from './verdict.ts'
+import { findingsOf, verdictOf } from './verdict.ts'
+import { shortNumber, typeNumberOf } from './words.ts'
+
+/** Draws page 1 of a target: verdict, spectrum, normalised spectrum, probability, what to watch. */
+export function drawFirstPage(face: Typeface, flow: Flow, view: TargetView): void {
+  const verdict = verdictOf(view)
+  flow.area(34, (area) => [title(face, area, view)])
+  flow.area(15, (area) => [facts(face, area, view)])
+  const lines = face
+    .wrap(face.clean(capital(verdict.sentence)), flow.width - 10, { size: 12, weight: 'bold' })
+    .slice(0, 3)
+  flow.area(lines.length * 15 + 8, (area) => [sentence(face, area, lines)])
+  flow.area(66, (area) => answers(face, area, verdict.answers))
+  const { spectrum } = view.exposures[view.best]
+  const room = flow.room()
+  const bottom = 148
+  const upper = room - bottom - 24
+  flow.area(upper * 0.38, (area) => [spectrumFigure(face, area, spectrum)])
+  flow.space(12)
+  flow.area(upper * 0.62, (area) => [normalisedFigure(face, area, spectrum, view.type)])
+  flow.space(11)
+  flow.area(bottom, (area) => {
+    const left = { ...area, width: area.width * 0.56 }
+    const right = { ...area, x: area.x + area.width * 0.6, width: area.width * 0.4 }
+    return [posteriorFigure(face, left, view.type, expectedOf(view)), watch(face, right, view)]
+  })
+}
+
+const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1)
+
+/** The expected type as the list writes it and as a number, where it is an MK type. */
+export function expectedOf(view: TargetView): { readonly word: string; readonly number: number } | undefined {
+  const word = view.summary?.listed?.expectedType ?? view.exposures[view.best]?.night?.expectedType
+  const number = word === undefined ? undefined : typeNumberOf(word)
+  return word === undefined || number === undefined ? undefined : { word, number }
+}
+
+function title(face: Typeface, area: Area, view: TargetView): Block {
+  const size = 22
+  const text = face.text(area.x, area.y + 24, view.name, { size, weight: 'bold', fit: area.width })
+  return { role: 'H1', items: [text], bookmark: { title: text.text, level: 1, y: 0 } }
+}
+
+function facts(face: Typeface, area: Area, view: TargetView): Block {
+  const { facts: header, setup, resolution } = view.exposures[view.best].spectrum
+  const parts = [
+    header.ra === undefined || header.dec === undefined
+      ? ''
+      : `RA ${header.ra.toFixed(4)}°, Dec ${header.dec.toFixed(4).replace(/^-/, '−')}°`,
+    header.dateObs ?? '',
+    header.exposure === undefined ? '' : `${shortNumber(header.exposure)} s`,
+    header.airmass === undefined ? '' : `air mass ${header.airmass.toFixed(2)}`,
+    setup,
+    resolution === undefined ? '' : `FWHM ${resolution.fwhm.toFixed(1)} Å`,
+    view.exposures.length > 1 ? `best of ${view.exposures.length} exposures shown` : '',
+  ].filter((part) => part !== '')
+  const text = parts.length ? parts.join('  ·  ') : 'the header says nothing of when and how it was observed'
+  return {
+    role: 'P',
+    items: [face.text(area.x, area.y + 8, text, { size: 7.5, colour: PALETTE.quiet, fit: area.width })],
+  }
+}
+
+function sentence(face: Typeface, area: Area, lines: readonly string[]): Block {
+  const bar = box(area.x, area.y + 2, 3, lines.length * 15, PALETTE.ink)
+  const texts = lines.map((line, i) =>
+    face.text(area.x + 10, area.y + 13 + i * 15, line, { size: 12, weight: 'bold', fit: area.width - 10 }),
+  )
+  return { role: 'P', items: [bar, ...texts] }
+}
+
+function answers(face: Typeface, area: Area, given: readonly Answer[]): Block[] {
+  const gap = 14
+  const width = (area.width - gap * (given.length - 1)) / given.length
+  return given.map((answer, i): Block => {
+    const x = area.x + i * (width + gap)
+    const items: Item[] = [
+      box(x, area.y, width, 1.6, STANDING_COLOURS[answer.standing]),
+      face.text(x, area.y + 11, answer.question, { size: 7, colour: PALETTE.quiet, fit: width }),
+      mark(x + 4.5, area.y + 21.5, 4, answer.standing),
+      face.text(x + 14, area.y + 26, answer.answer, { size: 12.5, weight: 'bold', fit: width - 14 }),
+    ]
+    const lines = answer.details.flatMap((detail) =>
+      face.wrap(face.clean(detail), width, { size: 7.5, weight: 'regular' }),
+    )
+    lines.slice(0, 3).forEach((line, k) => {
+      const isCut = k === 2 && lines.length > 3
+      items.push(face.text(x, area.y + 37 + k * 9.6, isCut ? `${line} …` : line, { size: 7.5, fit: width }))
+    })
+    return { role: 'P', items }
+  })
+}
+
+/** What to watch: doubts and faults in plain words, then notes, as many as there is room for. */
+function watch(face: Typeface, area: Area, view: TargetView): Block {
+  const items: Item[] = [figureHeading(face, area, 'What to watch')]
+  const findings = findingsOf(view)
+  const size = 7.5
+  const bottom = area.y + area.height - 10
+  let y = area.y + 22
+  if (view.summary?.observeAgain) {
+    const text = `Observe again: ${view.summary.reason ?? 'no reason given'}`
+    for (const line of face.wrap(face.clean(text), area.width, { size, weight: 'bold' })) {
+      items.push(face.text(area.x, y, line, { size, weight: 'bold' }))
+      y += 9.6
+    }
+    y += 3
+  }
+  if (findings.length === 0)
+    items.push(face.text(area.x, y, 'nothing was found against it', { size, colour: PALETTE.quiet }))
+  for (let i = 0; i < findings.length; i++) {
+    const lines = face.wrap(face.clean(findings[i].text), area.width - 11, { size, weight: 'regular' })
+    const isLast = i === findings.length - 1
+    if (y + (lines.length - 1) * 9.6 > bottom - (isLast ? 0 : 10)) {
+      const more = `… and ${findings.length - i} more, see the findings`
+      items.push(face.text(area.x + 11, y, more, { size, colour: PALETTE.quiet }))
+      break
+    }
+    const standing = findings[i].level === 'fault' ? 'bad' : findings[i].level === 'doubt' ? 'doubt' : 'unknown'
+    items.push(mark(area.x + 3, y - 2.7, 2.6, standing))
+    lines.forEach((line, k) => items.push(face.text(area.x + 11, y + k * 9.6, line, { size })))
+    y += lines.length * 9.6 + 3
+  }
+  return { role: 'P', items }
+}

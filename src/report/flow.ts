@@ -1,0 +1,254 @@
+import type { Block, CellBlock, Drawing, Item, LinkTarget, Page, Paper } from './drawing.ts'
+import { PAPERS, stroke } from './drawing.ts'
+import { PALETTE } from './palette.ts'
+import type { Area } from './spectrumFigure.ts'
+import type { Typeface } from './typeface.ts'
+
+/** Margins of every page [points]. */
+export const MARGIN = { left: 46, right: 40, top: 50, bottom: 44 } as const
+
+export interface TableColumn {
+  readonly head: string
+  /** Points, or a share of what is left when `share` is true. */
+  readonly width: number
+  readonly share?: true
+  readonly align?: 'start' | 'end'
+  /** Broken into lines instead of cut. */
+  readonly wrap?: true
+  /** Cut in the middle (paths). */
+  readonly middle?: true
+}
+
+export interface TableCell {
+  readonly text: string
+  readonly bold?: boolean
+  readonly colour?: string
+  readonly link?: LinkTarget
+  /** Drawn instead of the text, which then is only read out. */
+  readonly draw?: (area: Area) => readonly Item[]
+}
+
+export interface TableStyle {
+  readonly size?: number
+  /** Height of a row of one line [points]. */
+  readonly rowHeight?: number
+}
+
+/** A document that grows from top to bottom, page after page. */
+export interface Flow {
+  /** The column of text: left edge and width [points]. */
+  readonly x: number
+  readonly width: number
+  /** Height left on this page [points]. */
+  room(): number
+  space(height: number): void
+  newPage(): void
+  heading(text: string, options?: { readonly level?: 1 | 2; readonly place?: string; readonly keep?: number }): void
+  paragraph(text: string, options?: { readonly size?: number; readonly bold?: boolean; readonly colour?: string }): void
+  /** Draws blocks in an area of this height, on the next page when this one has no room. */
+  area(height: number, draw: (area: Area) => readonly Block[]): void
+  table(columns: readonly TableColumn[], rows: readonly (readonly TableCell[])[], style?: TableStyle): void
+  finish(title: string, subject: string): Drawing
+}
+
+/** A flow on the given paper. `head` and `foot` stand on every page, with its number. */
+export function makeFlow(
+  face: Typeface,
+  options: { readonly paper: Paper; readonly head: string; readonly foot: string },
+): Flow {
+  const [pageWidth, pageHeight] = PAPERS[options.paper]
+  const x = MARGIN.left
+  const width = pageWidth - MARGIN.left - MARGIN.right
+  const bottom = pageHeight - MARGIN.bottom
+  const pages: Block[][] = [[]]
+  let y: number = MARGIN.top
+
+  const add = (block: Block): void => void pages[pages.length - 1].push(block)
+  const room = (): number => bottom - y
+  const newPage = (): void => {
+    pages.push([])
+    y = MARGIN.top
+  }
+  const ensure = (height: number): void => {
+    if (room() < height && y > MARGIN.top) newPage()
+  }
+
+  function heading(
+    text: string,
+    given: { readonly level?: 1 | 2; readonly place?: string; readonly keep?: number } = {},
+  ): void {
+    const { level = 2, place, keep = 40 } = given
+    const size = level === 1 ? 16 : 10.5
+    if (y > MARGIN.top) y += level === 1 ? 16 : 10
+    ensure(size + keep)
+    const top = y
+    y += size
+    const lines = face.wrap(face.clean(text), width, { size, weight: 'bold' })
+    const items: Item[] = lines.map((line, i) => face.text(x, y + i * size * 1.2, line, { size, weight: 'bold' }))
+    y += (lines.length - 1) * size * 1.2 + 6
+    add({
+      role: level === 1 ? 'H1' : 'H2',
+      items,
+      bookmark: { title: face.clean(text), level, y: top },
+      ...(place === undefined ? {} : { place: { name: place, y: top } }),
+    })
+  }
+
+  function paragraph(
+    text: string,
+    given: { readonly size?: number; readonly bold?: boolean; readonly colour?: string } = {},
+  ): void {
+    const { size = 8.5, bold = false, colour = PALETTE.ink } = given
+    const weight = bold ? 'bold' : 'regular'
+    const leading = size * 1.35
+    let lines = face.wrap(face.clean(text), width, { size, weight })
+    while (lines.length) {
+      ensure(leading)
+      const fitting = Math.max(1, Math.floor(room() / leading))
+      const now = lines.slice(0, fitting)
+      lines = lines.slice(fitting)
+      const top = y
+      add({
+        role: 'P',
+        items: now.map((line, i) => face.text(x, top + size + i * leading, line, { size, weight, colour })),
+      })
+      y += now.length * leading
+    }
+    y += 3
+  }
+
+  function area(height: number, draw: (area: Area) => readonly Block[]): void {
+    ensure(height)
+    for (const block of draw({ x, y, width, height })) add(block)
+    y += height
+  }
+
+  function table(
+    columns: readonly TableColumn[],
+    rows: readonly (readonly TableCell[])[],
+    style: TableStyle = {},
+  ): void {
+    const { size = 7.5, rowHeight = size * 1.55 } = style
+    const widths = columnWidths(columns, width)
+    let block: CellBlock[][] = []
+    let rules: Item[] = []
+    const close = (): void => {
+      if (block.length) add({ role: 'Table', items: [], rows: block })
+      if (rules.length) add({ role: 'Artifact', items: rules })
+      block = []
+      rules = []
+    }
+    const open = (): void => {
+      block.push(headRow(face, columns, widths, { x, y: y + size, size }))
+      y += rowHeight
+      rules.push(stroke([x, y - 1.5], [x + width, y - 1.5], PALETTE.ink, { width: 0.6 }))
+    }
+    ensure(rowHeight * 3)
+    open()
+    for (const row of rows) {
+      const set = bodyRow(face, columns, widths, { row, x, y: 0, size, rowHeight })
+      if (room() < set.height) {
+        close()
+        newPage()
+        open()
+      }
+      block.push(bodyRow(face, columns, widths, { row, x, y, size, rowHeight }).cells)
+      y += set.height
+      rules.push(stroke([x, y - 1], [x + width, y - 1], PALETTE.rule, { width: 0.3 }))
+    }
+    close()
+    y += 6
+  }
+
+  function finish(title: string, subject: string): Drawing {
+    const count = pages.length
+    return {
+      title: face.clean(title),
+      subject: face.clean(subject),
+      pages: pages.map((blocks, i): Page => {
+        const number = `${i + 1} of ${count}`
+        const style = { size: 6.5, colour: PALETTE.quiet }
+        const head: Item[] = [
+          face.text(x, 32, 'darkline', { ...style, weight: 'bold', colour: PALETTE.ink }),
+          face.text(x + width, 32, options.head, { ...style, anchor: 'end', fit: width - 60 }),
+          stroke([x, 37], [x + width, 37], PALETTE.ink, { width: 0.4 }),
+          face.text(x, pageHeight - 26, options.foot, { ...style, fit: width - 60, middle: true }),
+          face.text(x + width, pageHeight - 26, number, { ...style, anchor: 'end' }),
+        ]
+        return { width: pageWidth, height: pageHeight, blocks: [...blocks, { role: 'Artifact', items: head }] }
+      }),
+    }
+  }
+
+  return { x, width, room, space: (height) => void (y += height), newPage, heading, paragraph, area, table, finish }
+}
+
+const GAP = 6
+
+function columnWidths(columns: readonly TableColumn[], width: number): number[] {
+  const fixed = columns.reduce((sum, c) => sum + (c.share ? 0 : c.width), 0) + GAP * (columns.length - 1)
+  const shares = columns.reduce((sum, c) => sum + (c.share ? c.width : 0), 0)
+  return columns.map((c) => (c.share ? ((width - fixed) * c.width) / shares : c.width))
+}
+
+interface RowPlace {
+  readonly x: number
+  readonly y: number
+  readonly size: number
+}
+
+function headRow(
+  face: Typeface,
+  columns: readonly TableColumn[],
+  widths: readonly number[],
+  { x, y, size }: RowPlace,
+): CellBlock[] {
+  let left = x
+  return columns.map((column, i) => {
+    const at = column.align === 'end' ? left + widths[i] : left
+    left += widths[i] + GAP
+    const style = { size: size - 0.5, colour: PALETTE.quiet, anchor: column.align ?? 'start', fit: widths[i] }
+    return { heading: true, items: column.head === '' ? [] : [face.text(at, y, column.head, style)] }
+  })
+}
+
+function bodyRow(
+  face: Typeface,
+  columns: readonly TableColumn[],
+  widths: readonly number[],
+  { row, x, y, size, rowHeight }: RowPlace & { readonly row: readonly TableCell[]; readonly rowHeight: number },
+): { readonly cells: CellBlock[]; readonly height: number } {
+  const leading = size * 1.3
+  const texts = columns.map((column, i) => {
+    const { text, bold } = row[i]
+    const weight = bold ? 'bold' : 'regular'
+    const clean = face.clean(text)
+    return column.wrap ? face.wrap(clean, widths[i], { size, weight }) : [clean]
+  })
+  const lines = Math.max(...texts.map((t) => t.length))
+  const height = rowHeight + (lines - 1) * leading
+  let left = x
+  const cells = columns.map((column, i): CellBlock => {
+    const cell = row[i]
+    const at = column.align === 'end' ? left + widths[i] : left
+    const place: Area = { x: left, y, width: widths[i], height }
+    left += widths[i] + GAP
+    if (cell.draw) return { heading: false, items: cell.draw(place) }
+    const base = y + (lines === 1 ? (rowHeight + size * 0.72) / 2 - 1 : size + 1)
+    const items = texts[i]
+      .filter((line) => line !== '')
+      .map((line, k) =>
+        face.text(at, base + k * leading, line, {
+          size,
+          weight: cell.bold ? 'bold' : 'regular',
+          colour: cell.colour ?? (cell.link ? PALETTE.blue : PALETTE.ink),
+          anchor: column.align ?? 'start',
+          fit: widths[i],
+          ...(column.middle ? { middle: true } : {}),
+          ...(cell.link ? { link: cell.link } : {}),
+        }),
+      )
+    return { heading: false, items }
+  })
+  return { cells, height }
+}

@@ -1,0 +1,256 @@
+import type { Drawing, Item, Paper } from './drawing.ts'
+import { stroke } from './drawing.ts'
+import { drawFirstPage } from './firstPage.ts'
+import type { Flow, TableCell } from './flow.ts'
+import { makeFlow } from './flow.ts'
+import { PALETTE } from './palette.ts'
+import { plate } from './plate.ts'
+import type { Provenance } from './provenance.ts'
+import { provenanceLine } from './provenance.ts'
+import type { Area } from './spectrumFigure.ts'
+import type { TargetView } from './targetView.ts'
+import type { Typeface } from './typeface.ts'
+import { findingsOf } from './verdict.ts'
+import { featureWord, minus, percent, signed, typeFound, withError } from './words.ts'
+
+/** How target pages are laid out. */
+export interface PageOptions {
+  readonly face: Typeface
+  readonly paper: Paper
+  readonly provenance: Provenance
+}
+
+/** The pages of one target: the verdict with its figures, then the exposures, features, findings and provenance. */
+export function layoutTargetPages(view: TargetView, { face, paper, provenance }: PageOptions): Drawing {
+  const flow = makeFlow(face, { paper, head: view.name, foot: provenanceLine(provenance) })
+  drawFirstPage(face, flow, view)
+  flow.newPage()
+  if (view.exposures.length > 1) exposureTable(flow, view)
+  featureTable(flow, view)
+  ratioTable(flow, view)
+  findingTable(flow, view)
+  provenanceTable(flow, view, provenance)
+  return flow.finish(
+    `${view.name}: ${typeFound(view.type)}`,
+    'What the star is, how sure that is, and whether the data can be trusted',
+  )
+}
+
+const cell = (text: string, more: Omit<TableCell, 'text'> = {}): TableCell => ({ text, ...more })
+
+function exposureTable(flow: Flow, view: TargetView): void {
+  flow.heading('Exposures')
+  const first = view.exposures.flatMap((e) => e.spectrum.curves?.restWavelength[0] ?? [])
+  const last = view.exposures.flatMap((e) => e.spectrum.curves?.restWavelength.at(-1) ?? [])
+  const range = [Math.min(...first), Math.max(...last)] as const
+  flow.table(
+    [
+      { head: 'file', width: 1.3, share: true, middle: true },
+      { head: 'start', width: 78 },
+      { head: 'time, s', width: 36, align: 'end' },
+      { head: 'S/N 5500', width: 36, align: 'end' },
+      { head: 'velocity, km/s', width: 58, align: 'end' },
+      { head: 'type', width: 48 },
+      { head: 'quality', width: 40 },
+      { head: 'normalised, at rest', width: 1, share: true },
+    ],
+    view.exposures.map(({ file, spectrum, night }, i) => [
+      cell(place(file, spectrum.hdu, spectrum.row), { bold: i === view.best }),
+      cell(spectrum.facts.dateObs?.slice(0, 19) ?? ''),
+      cell(spectrum.facts.exposure?.toFixed(0) ?? ''),
+      cell(spectrum.snr.visual?.toFixed(0) ?? ''),
+      cell(
+        spectrum.restFrame.trusted ? withError(spectrum.restFrame.velocity, spectrum.restFrame.error) : 'not trusted',
+      ),
+      cell(typeFound(spectrum.type)),
+      cell(night?.quality ?? spectrum.quality),
+      cell('', { draw: (area) => smallPlate(area, range, spectrum.curves) }),
+    ]),
+  )
+}
+
+const place = (file: string, hdu: number, row: number | undefined): string =>
+  `${file}${hdu > 0 ? ` HDU ${hdu}` : ''}${row === undefined ? '' : ` row ${row}`}`
+
+/** A strip of grey of a spectrum inside a cell of a table. */
+export function smallPlate(
+  area: Area,
+  xRange: readonly [number, number],
+  curves: { readonly restWavelength: Float64Array; readonly normalised: Float32Array } | undefined,
+): Item[] {
+  if (!curves || !(xRange[1] > xRange[0])) return []
+  const frame = {
+    x: area.x,
+    y: area.y + 1.5,
+    width: area.width,
+    height: area.height - 4,
+    xRange,
+    yRange: [0, 1] as const,
+  }
+  return [plate(frame, curves.restWavelength, curves.normalised, 1)]
+}
+
+function featureTable(flow: Flow, view: TargetView): void {
+  const { measurements } = view.exposures[view.best].spectrum
+  const type = typeFound(view.type)
+  const isTyped = view.type.evidence.length > 0
+  flow.heading('Features')
+  if (measurements.length === 0) return flow.paragraph('No feature was measured.')
+  flow.paragraph(
+    isTyped
+      ? `Strengths are positive in absorption. Expected: at the best type, ${type}, with the scatter between stars of that type. Pull: measured less expected in units of the total error. Part: share of the feature in the decision.`
+      : 'Strengths are positive in absorption. No type was found, so none is expected.',
+    { size: 7.5, colour: PALETTE.quiet },
+  )
+  const evidence = new Map(view.type.evidence.map((e) => [e.feature, e]))
+  flow.table(
+    [
+      { head: 'feature', width: 54 },
+      { head: 'species', width: 36 },
+      { head: 'at, Å', width: 36, align: 'end' },
+      { head: 'measured', width: 68, align: 'end' },
+      { head: 'unit', width: 20 },
+      { head: 'expected', width: 62, align: 'end' },
+      { head: 'pull', width: 28, align: 'end' },
+      { head: '−3   0   +3', width: 48 },
+      { head: 'part', width: 30, align: 'end' },
+      { head: '', width: 1, share: true },
+    ],
+    measurements.map((m) => {
+      const e = evidence.get(m.feature)
+      const decided = e !== undefined && e.share >= 0.05
+      return [
+        cell(featureWord(m.feature), { bold: decided }),
+        cell(m.species),
+        cell(m.wavelengthRest.toFixed(1)),
+        cell(m.ew === undefined ? '–' : withError(m.ew, m.ewErr), { bold: decided }),
+        cell(m.unit === '1' ? '' : m.unit),
+        cell(e ? withError(e.expected, e.expectedScatter) : ''),
+        cell(e ? signed(e.pull, 1) : ''),
+        cell('', { draw: (area) => (e ? pullBar(area, e.pull) : []) }),
+        cell(e ? percent(e.share) : ''),
+        cell(remark(m), { colour: PALETTE.quiet }),
+      ]
+    }),
+    { rowHeight: 10.6 },
+  )
+}
+
+function remark(m: { status: string; reason?: string; limit3sigma?: number; unit: string }): string {
+  if (m.status === 'absent' && m.limit3sigma !== undefined)
+    return `not detected, below ${m.limit3sigma.toPrecision(2)} ${m.unit}`
+  if (m.reason) return `${m.status}: ${m.reason}`
+  return m.status === 'measured' ? '' : m.status
+}
+
+/** The pull as a dot on a line from −3 to +3; beyond, an arrow's head at the end. */
+function pullBar(area: Area, pull: number): Item[] {
+  const middle = area.y + area.height / 2 - 0.5
+  const scale = area.width / 7
+  const centre = area.x + area.width / 2
+  const held = Math.max(-3.3, Math.min(3.3, pull))
+  const at = centre + held * scale
+  const colour = Math.abs(pull) > 3 ? PALETTE.vermillion : PALETTE.ink
+  return [
+    stroke([centre - 3 * scale, middle], [centre + 3 * scale, middle], PALETTE.rule, { width: 0.4 }),
+    stroke([centre, middle - 2.5], [centre, middle + 2.5], PALETTE.rule, { width: 0.4 }),
+    { draw: 'path', points: Float64Array.of(centre, middle, at, middle), stroke: colour, width: 1.6 },
+    ...(Math.abs(pull) > 3
+      ? [
+          {
+            draw: 'path' as const,
+            points: Float64Array.of(
+              at,
+              middle - 2.4,
+              at + Math.sign(pull) * 3.5,
+              middle,
+              at,
+              middle + 2.4,
+              at,
+              middle - 2.4,
+            ),
+            fill: colour,
+          },
+        ]
+      : []),
+  ]
+}
+
+function ratioTable(flow: Flow, view: TargetView): void {
+  if (view.type.ratios.length === 0) return
+  flow.heading('Ratios a classifier would quote')
+  flow.table(
+    [
+      { head: 'ratio', width: 130 },
+      { head: 'value', width: 70, align: 'end' },
+      { head: 'reading', width: 1, share: true, wrap: true },
+      { head: 'source', width: 0.8, share: true, wrap: true },
+    ],
+    view.type.ratios.map((r) => [
+      cell(r.name),
+      cell(r.value === undefined ? '–' : withError(r.value, r.error)),
+      cell(r.value === undefined ? `absent: ${r.reason ?? 'no reason given'}` : r.reading),
+      cell(r.source, { colour: PALETTE.quiet }),
+    ]),
+  )
+}
+
+function findingTable(flow: Flow, view: TargetView): void {
+  const findings = findingsOf(view)
+  flow.heading('Findings')
+  if (findings.length === 0) return flow.paragraph('Nothing was found against these data.')
+  flow.table(
+    [
+      { head: 'level', width: 30 },
+      { head: 'code', width: 100 },
+      { head: 'finding', width: 1, share: true, wrap: true },
+    ],
+    findings.map((f) => [cell(f.level, { bold: f.level !== 'note' }), cell(f.code), cell(f.text)]),
+  )
+}
+
+function provenanceTable(flow: Flow, view: TargetView, provenance: Provenance): void {
+  const best = view.exposures[view.best].spectrum
+  const rows: (readonly [string, string])[] = [
+    ...view.exposures.flatMap((e): (readonly [string, string])[] => [
+      ['file', place(e.file, e.spectrum.hdu, e.spectrum.row)],
+      ['SHA-256', e.sha256 ?? 'not computed'],
+    ]),
+    ['read as', `${best.convention}; wavelengths in ${best.medium} (${best.mediumHow}), ${best.samples} samples`],
+    ['velocity', velocityText(view)],
+    [
+      'resolution',
+      best.resolution
+        ? `FWHM ${withError(best.resolution.fwhm, best.resolution.error)} Å from ${best.resolution.how}`
+        : 'not measured',
+    ],
+    ['fit', fitText(view)],
+    ['program', `darkline ${provenance.version}`],
+    ['calibration', provenance.calibration],
+    ['settings', provenance.settingsDigest],
+    ['made on', provenance.date.toISOString()],
+  ]
+  flow.heading('Provenance', { keep: 70 })
+  flow.table(
+    [
+      { head: '', width: 60 },
+      { head: '', width: 1, share: true, wrap: true },
+    ],
+    rows.map(([name, value]) => [cell(name, { colour: PALETTE.quiet }), cell(value)]),
+    { size: 7, rowHeight: 10 },
+  )
+}
+
+function velocityText(view: TargetView): string {
+  const { restFrame, barycentricVelocity } = view.exposures[view.best].spectrum
+  if (!restFrame.trusted) return `not trusted: ${restFrame.reason ?? 'no reason given'}; the spectrum was not shifted`
+  const barycentric =
+    barycentricVelocity === undefined ? '' : `; barycentric ${minus(barycentricVelocity.toFixed(1))} km/s`
+  return `${withError(restFrame.velocity, restFrame.error)} km/s as measured, by ${restFrame.how}${barycentric}`
+}
+
+function fitText({ type }: TargetView): string {
+  if (type.fitPull === undefined) return 'no type was fitted'
+  const rare = type.fitProbability === undefined ? '' : `; ${percent(type.fitProbability)} of ordinary stars fit worse`
+  return `root mean square pull ${type.fitPull.toFixed(2)} over ${type.featuresUsed} features at the best type${rare}`
+}
