@@ -1,39 +1,62 @@
-import { quantileSorted } from '../numeric/median.ts'
+import { SIGMA_PER_MAD } from '../numeric/median.ts'
+import { medianInPlace, selectInPlace } from '../numeric/select.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 
 /** Samples a block; the scatter is taken as constant within one. */
 const BLOCK = 50
-/** Standard deviation of a standard normal sample ÷ its median absolute value: 1 / Φ⁻¹(3/4). */
-const SIGMA_PER_MEDIAN = 1.482602218505602
 /** √(1 + 9 + 9 + 1): a third difference of white noise has this many times its standard deviation. */
 const THIRD_DIFFERENCE = Math.sqrt(20)
+/**
+ * Resampling mixes neighbours: the power of the noise becomes 1 − a(1 − cos ω), a ≤ 1/2. Averages of many samples see
+ * all of it, a single sample 1 − a, third differences of neighbours 1 − 1.75 a, and those of every other sample 1 − a.
+ */
+const NEIGHBOUR_LOSS = 1.75
+const LARGEST_SHARE = 0.5
+/** Upper decile of the ratio of the two over three blocks of 50 white samples (by simulation, see the tests). */
+const WHITE_DECILE = 1.3
+/** Below this ratio it is the star's own structure that every other sample sees, not noise. */
+const STRUCTURE = 0.18
 
 /** Noise of every sample, 1 σ, and where it is from. */
 export interface Noise {
-  /** shape (n) [flux unit]; what an average of N neighbours must be given as noise/√N. Finite and positive. */
+  /** shape (n) [flux unit]: an average of N neighbours has noise/√N, correlation allowed for. Finite and positive. */
   readonly sigma: Float64Array
   readonly from: 'file' | 'measured'
+  /** Factor by which correlation makes averages noisier than independent samples of the same scatter would be, ≥ 1. */
+  readonly correlation: number
 }
 
 /**
  * Noise at every sample: the file's own uncertainty where it has one, otherwise measured from third differences of the
- * flux in blocks of 50 samples (robustly, so that lines do not count).
+ * flux in blocks of 50 samples (robustly, so that lines do not count). Noise that a resampling has smoothed is
+ * recognised by its scatter between neighbours, smaller than between every other sample, and scaled up.
  */
 export function noiseOf(spectrum: Spectrum): Noise {
-  const measured = measuredNoise(spectrum.flux, spectrum.usable)
-  const { sigma: stated } = spectrum
-  if (!stated) return { sigma: measured, from: 'measured' }
-  const sigma = measured.slice()
-  let known = 0
-  for (let i = 0; i < sigma.length; i++)
-    if (stated[i] > 0 && stated[i] < Infinity) {
-      sigma[i] = stated[i]
-      known++
-    }
-  return known * 2 > sigma.length ? { sigma, from: 'file' } : { sigma: measured, from: 'measured' }
+  const { flux, usable, sigma: stated } = spectrum
+  const near = blockScatter(flux, usable, 1)
+  const apart = blockScatter(flux, usable, 2)
+  const measured = fillGaps(middleOfNeighbours(near.scatter), flux, usable)
+  const n = flux.length
+  if (stated && mostlyKnown(stated)) {
+    const plain = interpolateBlocks(near.centre, measured, n)
+    const correlation = correlationAgainst(stated, near.centre, near.scatter, apart.scatter)
+    const sigma = new Float64Array(n)
+    for (let i = 0; i < n; i++) sigma[i] = correlation * (stated[i] > 0 && stated[i] < Infinity ? stated[i] : plain[i])
+    return { sigma, from: 'file', correlation }
+  }
+  const correlation = correlationBetween(near.scatter, apart.scatter)
+  for (let b = 0; b < measured.length; b++) measured[b] *= correlation
+  return { sigma: interpolateBlocks(near.centre, measured, n), from: 'measured', correlation }
 }
 
-function measuredNoise(flux: Float64Array, usable: Uint8Array): Float64Array {
+function mostlyKnown(stated: Float64Array): boolean {
+  let known = 0
+  for (let i = 0; i < stated.length; i++) if (stated[i] > 0 && stated[i] < Infinity) known++
+  return 2 * known > stated.length
+}
+
+/** Robust standard deviation in each block from third differences of samples `lag` apart; NaN where too few. */
+function blockScatter(flux: Float64Array, usable: Uint8Array, lag: number) {
   const n = flux.length
   const blocks = Math.max(1, Math.round(n / BLOCK))
   const centre = new Float64Array(blocks)
@@ -43,49 +66,91 @@ function measuredNoise(flux: Float64Array, usable: Uint8Array): Float64Array {
     const start = Math.floor((b * n) / blocks)
     const end = Math.floor(((b + 1) * n) / blocks)
     let count = 0
-    for (let i = Math.max(1, start); i < Math.min(end, n - 2); i++)
-      if (usable[i - 1] & usable[i] & usable[i + 1] & usable[i + 2])
-        buffer[count++] = Math.abs(flux[i - 1] - 3 * flux[i] + 3 * flux[i + 1] - flux[i + 2])
+    for (let i = Math.max(lag, start); i < Math.min(end, n - 2 * lag); i++)
+      if (usable[i - lag] & usable[i] & usable[i + lag] & usable[i + 2 * lag])
+        buffer[count++] = Math.abs(flux[i - lag] - 3 * flux[i] + 3 * flux[i + lag] - flux[i + 2 * lag])
     centre[b] = (start + end - 1) / 2
-    scatter[b] =
-      count < 5 ? NaN : (quantileSorted(buffer.subarray(0, count).sort(), 0.5) * SIGMA_PER_MEDIAN) / THIRD_DIFFERENCE
+    scatter[b] = count < 5 ? NaN : (medianInPlace(buffer, count) * SIGMA_PER_MAD) / THIRD_DIFFERENCE
   }
-  return interpolateBlocks(centre, fillGaps(lowerNeighbour(scatter), flux, usable), n)
+  return { centre, scatter }
 }
 
-/** The middle of each block and its two neighbours: one crowded block does not count as noisy. */
-function lowerNeighbour(scatter: Float64Array): Float64Array {
+/** From the ratio of the two scatters where the star has the least structure. */
+function correlationBetween(near: Float64Array, apart: Float64Array): number {
+  const ratios = new Float64Array(near.length)
+  let count = 0
+  for (let b = 1; b + 1 < near.length; b++) {
+    const close = near[b - 1] ** 2 + near[b] ** 2 + near[b + 1] ** 2
+    const ratio = close / (apart[b - 1] ** 2 + apart[b] ** 2 + apart[b + 1] ** 2)
+    if (ratio > 0) ratios[count++] = ratio
+  }
+  if (count < 8) return 1
+  const ratio = selectInPlace(ratios, count, Math.floor(0.9 * (count - 1))) / WHITE_DECILE
+  return ratio < STRUCTURE ? 1 : 1 / Math.sqrt(1 - NEIGHBOUR_LOSS * shareMixed(ratio))
+}
+
+/** a, from the ratio (1 − 1.75 a) / (1 − a). */
+function shareMixed(ratio: number): number {
+  return Math.min(LARGEST_SHARE, Math.max(0, (1 - ratio) / (NEIGHBOUR_LOSS - ratio)))
+}
+
+/** From the scatter between neighbours against the stated uncertainty, where every other sample confirms the latter. */
+function correlationAgainst(
+  stated: Float64Array,
+  centre: Float64Array,
+  near: Float64Array,
+  apart: Float64Array,
+): number {
+  const ratios = new Float64Array(near.length)
+  const others = new Float64Array(near.length)
+  let count = 0
+  for (let b = 0; b < near.length; b++) {
+    const sigma = stated[Math.round(centre[b])]
+    if (!(near[b] > 0 && apart[b] > 0 && sigma > 0 && sigma < Infinity)) continue
+    ratios[count] = (near[b] / sigma) ** 2
+    others[count++] = (apart[b] / sigma) ** 2
+  }
+  if (count < 8) return 1
+  const ratio = medianInPlace(ratios, count)
+  if (ratio > 0.8 || medianInPlace(others, count) < 0.6) return 1
+  return 1 / Math.sqrt(1 - shareMixed(ratio))
+}
+
+/** Median of each block and its two neighbours to either side: one crowded block does not count as noisy. */
+function middleOfNeighbours(scatter: Float64Array): Float64Array {
   const out = new Float64Array(scatter.length)
+  const near = new Float64Array(5)
   for (let b = 0; b < scatter.length; b++) {
-    const near = scatter.subarray(Math.max(0, b - 2), b + 3).filter((value) => value > 0)
-    out[b] = near.length ? quantileSorted(near.sort(), 0.5) : NaN
+    let count = 0
+    for (let k = Math.max(0, b - 2); k < Math.min(scatter.length, b + 3); k++)
+      if (scatter[k] > 0) near[count++] = scatter[k]
+    out[b] = medianInPlace(near, count)
   }
   return out
 }
 
 /** Blocks without a value take the nearest one; a spectrum without any takes a billionth of its largest sample. */
 function fillGaps(scatter: Float64Array, flux: Float64Array, usable: Uint8Array): Float64Array {
-  const known = scatter.filter((value) => value > 0)
   let largest = 0
   for (let i = 0; i < flux.length; i++) if (usable[i]) largest = Math.max(largest, Math.abs(flux[i]))
   const least = largest > 0 ? largest * 1e-9 : 1
-  if (!known.length) return scatter.fill(least)
-  let last = known[0]
-  for (let b = 0; b < scatter.length; b++) {
-    if (scatter[b] > 0) last = scatter[b]
-    scatter[b] = Math.max(last, least)
+  const out = scatter.slice()
+  let last = scatter.find((value) => value > 0) ?? least
+  for (let b = 0; b < out.length; b++) {
+    if (out[b] > 0) last = out[b]
+    out[b] = Math.max(last, least)
   }
-  return scatter
+  return out
 }
 
 function interpolateBlocks(centre: Float64Array, value: Float64Array, n: number): Float64Array {
   const out = new Float64Array(n)
+  const last = centre.length - 1
   let b = 0
   for (let i = 0; i < n; i++) {
-    while (b + 2 < centre.length && i > centre[b + 1]) b++
-    if (centre.length === 1 || i <= centre[0]) out[i] = value[0]
-    else if (i >= centre[centre.length - 1]) out[i] = value[value.length - 1]
-    else out[i] = value[b] + ((value[b + 1] - value[b]) * (i - centre[b])) / (centre[b + 1] - centre[b])
+    while (b + 1 < last && i > centre[b + 1]) b++
+    const t = last === 0 ? 0 : Math.min(1, Math.max(0, (i - centre[b]) / (centre[b + 1] - centre[b])))
+    out[i] = last === 0 ? value[0] : value[b] + t * (value[b + 1] - value[b])
   }
   return out
 }
