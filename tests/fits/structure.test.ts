@@ -29,6 +29,8 @@ const DIFFERENCES: Readonly<Record<string, string>> = {
   'real/suite_c/compressed_with_nan.fits 1 cards': 'astropy leaves ZBLANK, ZDITHER0 and the stored checksums in',
   'real/suite_c/compressed_with_nan.fits 1 data': 'astropy 5.2.1 overlooks ZBLANK in the header; funpack gives NaN too',
   'real/suite_i/test_rice_dither2_seed42.fits.fz 1 cards': 'astropy leaves ZDITHER0 in the header of the image',
+  'real/suite_i/test_rice_dither2_seed42.fits.fz 1 name': 'astropy makes up a name where EXTNAME is absent',
+  'real/suite_c/vla_logical_pre_fix.fits 1 flag': 'logicals stored as the bytes 1 and 0, which are neither T nor F',
   'real/suite_c/group_invalid.fits 0 dimensions': 'astropy shows an axis that the header (NAXIS = 0) has not',
   'real/suite_c/group_invalid.fits 0 cards': 'astropy adds a card for that axis',
   'real/suite_d/header_with_time_wcslib71.fits 0 data': 'astropy takes the padding (NAXIS = 0, SIMPLE = F) for data',
@@ -138,9 +140,9 @@ function compare(
     check(String(hdu.rows) === /^rows=(\d+)/.exec(row.values)?.[1], 'rows')
     row.columns.split(' ; ').forEach((text, i) => {
       const column = hdu.columns[i]
-      // the list is cut at a fixed length in the longest rows
+      // the longest lists are cut at 600 characters
       const own = `${column?.name}[${column?.form.trim()}|${column?.unit}]`
-      check(own === text || (row.columns.length > 1000 && own.startsWith(text)), `column ${text}`)
+      check(own === text || (row.columns.length === 600 && own.startsWith(text)), `column ${text}`)
     })
     for (const [name, first, last] of cellsOf(row)) check(sameEnds(source, hdu, name, [first, last]), name)
   }
@@ -190,7 +192,7 @@ function sameEnds(source: ByteSource, hdu: Hdu, name: string, wanted: readonly [
 }
 
 function sameCell(own: string | number | undefined, wanted: string): boolean {
-  if (own === undefined) return wanted === 'empty'
+  if (own === undefined) return wanted === 'empty' || wanted.trim() === ''
   if (typeof own === 'string') return own.trim() === wanted.trim()
   // astropy shows the logicals of variable-length arrays as their stored letters, and undefined ones as 0
   const letters: Readonly<Record<string, number>> = { '84': 1, '70': 0 }
