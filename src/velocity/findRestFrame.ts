@@ -3,7 +3,7 @@ import { correlate } from '../numeric/correlate.ts'
 import { subtractRunningMean } from '../numeric/runningMean.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 import type { LinePattern } from '../tables/types.ts'
-import { toLogGrid } from './logGrid.ts'
+import { halved, toLogGrid } from './logGrid.ts'
 import type { LogGrid } from './logGrid.ts'
 import { patternDepth } from './pattern.ts'
 import { findPeak } from './peak.ts'
@@ -12,18 +12,24 @@ import type { RestFrame } from './types.ts'
 
 const SPEED_OF_LIGHT = 299792.458
 
-/** Steps of the two grids in ln wavelength: 75 km/s to find the peak, then finer where the sampling allows. */
-const COARSE_STEP = 2.5e-4
-const FINE_STEP = { smallest: 4e-5, largest: 2e-4 } as const
+/** Step in ln wavelength of the grid the peak is judged on: 75 km/s. The pattern is chosen on cells twice as wide. */
+const STEP = 2.5e-4
+
+/** A peak narrower than this many cells is found anew on a finer grid, down to the step given. */
+const NARROW_PEAK = 8
+const FINEST_STEP = 4e-5
 
 /** Full window of the running mean that takes out slopes, in ln wavelength: 120 Å at 4000 Å. */
 const WINDOW = 0.03
 
-/** [km/s] farther than the search, so that the far antisymmetric part of the correlation is seen. */
+/** [km/s] farther than the search, so that the antisymmetric part of the correlation is seen far from the peak. */
 const BEYOND = 2000
 
 /** A peak is trusted from these on; Tonry & Davis 1979 take r < 3 for unreliable (from memory). */
 const TRUST = { ratio: 3, height: 0.25, second: 0.9 } as const
+
+/** Fewest cells that a pattern must share with the spectrum. */
+const FEWEST_CELLS = 12
 
 export interface RestFrameOptions {
   readonly patterns: readonly LinePattern[]
@@ -54,19 +60,11 @@ export function findRestFrame(spectrum: Spectrum, continuum: Continuum, options:
   const chosen = patterns.filter((pattern) => pattern.name === preferred)
   const candidates = chosen.length > 0 ? chosen : patterns
 
-  const coarse = toLogGrid(spectrum, continuum, rangeOf(wavelength, candidates), Math.max(COARSE_STEP, sampling))
-  let best: Match | undefined
-  for (const pattern of candidates) {
-    const match = matchPattern(coarse, pattern, { fwhm, maxVelocity })
-    if (match && (best === undefined || match.peak.height > best.peak.height)) best = match
-  }
-  if (best === undefined) return untrusted('the line patterns cover too little of the spectrum')
-
-  const step = Math.min(FINE_STEP.largest, Math.max(FINE_STEP.smallest, sampling / 2))
-  const fine = toLogGrid(spectrum, continuum, rangeOf(wavelength, [best.pattern]), step)
-  const centred = matchPattern(fine, best.pattern, { fwhm, maxVelocity: 150, around: velocityOf(best, coarse) })
-  const refined = centred && !centred.peak.isAtEdge ? velocityOf(centred, fine) : velocityOf(best, coarse)
-  return judge(best, refined, coarse.step)
+  const grid = toLogGrid(spectrum, continuum, rangeOf(wavelength, candidates), Math.max(STEP, sampling))
+  const pattern = candidates.length === 1 ? candidates[0] : bestPattern(grid, candidates, { fwhm, maxVelocity })
+  const match = pattern && matchPattern(grid, pattern, { fwhm, maxVelocity, beyond: BEYOND })
+  if (match === undefined) return untrusted('the line patterns cover too little of the spectrum')
+  return judge(match, centred(spectrum, continuum, match, { grid, fwhm, sampling }), grid.step)
 }
 
 interface Match {
@@ -76,8 +74,43 @@ interface Match {
   readonly before: number
 }
 
+interface MatchOptions {
+  readonly fwhm: number
+  readonly maxVelocity: number
+  /** [km/s] beyond maxVelocity that the correlation goes on, default 0. */
+  readonly beyond?: number
+  /** [km/s] that the search is centred on, default 0. */
+  readonly around?: number
+}
+
+/** The pattern with the highest peak, which is the likeliest for noise of one strength; on cells twice as wide. */
+function bestPattern(grid: LogGrid, patterns: readonly LinePattern[], options: MatchOptions): LinePattern | undefined {
+  const wide = halved(grid)
+  let best: Match | undefined
+  for (const pattern of patterns) {
+    const match = matchPattern(wide, pattern, options)
+    if (match && (best === undefined || match.peak.height > best.peak.height)) best = match
+  }
+  return best?.pattern
+}
+
+/** Velocity of a match, found anew on a finer grid when its peak is narrow. */
+function centred(
+  spectrum: Spectrum,
+  continuum: Continuum,
+  match: Match,
+  { grid, fwhm, sampling }: { readonly grid: LogGrid; readonly fwhm: number; readonly sampling: number },
+): number {
+  const around = velocityOf(match, grid)
+  const step = Math.max(FINEST_STEP, sampling / 2)
+  if (match.peak.isAtEdge || match.peak.width > NARROW_PEAK || step > 0.7 * grid.step) return around
+  const fine = toLogGrid(spectrum, continuum, rangeOf(spectrum.wavelength, [match.pattern]), step)
+  const refined = matchPattern(fine, match.pattern, { fwhm, maxVelocity: 120, around })
+  return refined && !refined.peak.isAtEdge ? velocityOf(refined, fine) : around
+}
+
+/** cz from a shift in ln wavelength. */
 function velocityOf(match: Match, grid: LogGrid): number {
-  // cz from a shift in ln wavelength
   return SPEED_OF_LIGHT * Math.expm1((match.peak.shift + match.before) * grid.step)
 }
 
@@ -89,26 +122,22 @@ function rangeOf(wavelength: Float64Array, patterns: readonly LinePattern[]): [n
 function matchPattern(
   grid: LogGrid,
   pattern: LinePattern,
-  { fwhm, maxVelocity, around = 0 }: { readonly fwhm: number; readonly maxVelocity: number; readonly around?: number },
+  { fwhm, maxVelocity, beyond = 0, around = 0 }: MatchOptions,
 ): Match | undefined {
   const { step, start } = grid
   const weight = coveredWeight(grid, pattern)
   let used = 0
   for (let i = 0; i < weight.length; i++) if (weight[i] > 0) used++
-  if (used < 12) return undefined
+  if (used < FEWEST_CELLS) return undefined
   const half = Math.round(WINDOW / 2 / step)
   const search = Math.ceil(maxVelocity / SPEED_OF_LIGHT / step)
-  const reach = search + (around === 0 ? Math.ceil(BEYOND / SPEED_OF_LIGHT / step) : 0)
+  const reach = Math.ceil((maxVelocity + beyond) / SPEED_OF_LIGHT / step)
   const before = Math.round(around / SPEED_OF_LIGHT / step)
   const data = subtractRunningMean(grid.depth, weight, half)
-  const depth = patternDepth(pattern, {
-    start: start - (reach + half + before) * step,
-    step,
-    count: weight.length + 2 * (reach + half),
-    fwhm,
-  })
+  const count = weight.length + 2 * (reach + half)
+  const depth = patternDepth(pattern, { start: start - (reach + half + before) * step, step, count }, fwhm)
   const shape = subtractRunningMean(depth, undefined, half)
-  const correlation = correlate(data, weight, shape.subarray(half, shape.length - half), reach)
+  const correlation = correlate(data, weight, shape.subarray(half, count - half), reach)
   return { pattern, peak: findPeak(correlation, search), before }
 }
 

@@ -84,7 +84,7 @@ export function madeStar(options: MadeStarOptions): { spectrum: Spectrum; contin
 }
 
 const balmer = (widths: readonly number[], own: number): MadeLine[] =>
-  [6562.8, 4861.33, 4340.46, 4101.73, 3970.07, 3889.05, 3835.38].map((at, i) => [at, widths[i], own])
+  [6562.8, 4861.33, 4340.46, 4101.73, 3970.07, 3889.05, 3835.38, 3797.9].map((at, i) => [at, widths[i], own])
 
 /** Invented strengths, in the manner of the type. */
 export const MADE_STARS: Readonly<Record<'O' | 'B' | 'A' | 'F' | 'G' | 'K', readonly MadeLine[]>> = {
