@@ -1,0 +1,179 @@
+import type { FeatureShape } from '../tables/demoStrengths.ts'
+import { FINE_SAMPLES } from './grid.ts'
+import { withFeature } from './profiles.ts'
+import { blackBody, lineTransmission, starContinuum, starLight } from './starLight.ts'
+
+export const SPECIAL_KINDS = [
+  'emission',
+  'metal-weak',
+  'metallic-line',
+  'carbon',
+  'white dwarf',
+  'hot subdwarf',
+  'brown dwarf',
+  'composite',
+  'nebular',
+  'galaxy',
+] as const
+export type SpecialKind = (typeof SPECIAL_KINDS)[number]
+
+type Places = readonly (readonly [wavelength: number, strength: number])[]
+
+const EMISSION: FeatureShape = { form: 'emission', width: 4 }
+/** Swan bands of C₂, which fade to the blue, and CN; strengths in Å, of the size that classical carbon stars show. */
+const SWAN: Places = [
+  [4737.1, 55],
+  [5165.2, 75],
+  [5635.5, 55],
+  [6191, 20],
+]
+const CYANOGEN: Places = [
+  [4216, 30],
+  [7945, 45],
+  [8120, 35],
+]
+/** Forbidden and recombination lines of a nebula of middling excitation, Hβ = 100; 5007/4959 and 6583/6548 are 3. */
+const NEBULAR: Places = [
+  [3727.4, 120],
+  [3868.76, 40],
+  [4101.73, 26],
+  [4340.46, 47],
+  [4363.21, 5],
+  [4861.32, 100],
+  [4958.91, 130],
+  [5006.84, 390],
+  [5875.62, 13],
+  [6300.3, 5],
+  [6548.05, 25],
+  [6562.79, 290],
+  [6583.45, 75],
+  [6716.44, 14],
+  [6730.82, 13],
+  [7135.79, 12],
+]
+/** Hydrogen of a white dwarf: strengths in Å; the higher lines drown in the pressure of the gas. */
+const WHITE_DWARF: Places = [
+  [6562.79, 24],
+  [4861.33, 32],
+  [4340.47, 32],
+  [4101.74, 26],
+  [3970.07, 17],
+  [3889.05, 8],
+]
+/** Hydrogen and helium of a hot subdwarf: broad, few. */
+const SUBDWARF_HYDROGEN: Places = [
+  [6562.79, 3.6],
+  [4861.33, 6.2],
+  [4340.47, 6.6],
+  [4101.74, 6.4],
+  [3970.07, 5.6],
+  [3889.05, 4.4],
+  [3835.38, 3],
+  [3797.9, 1.6],
+]
+const SUBDWARF_HELIUM: Places = [
+  [4199.83, 0.7],
+  [4541.59, 1.1],
+  [4685.7, 1.5],
+  [5411.52, 1.2],
+  [4471.48, 0.5],
+  [5875.62, 0.5],
+]
+/** Bands and resonance lines of an early L dwarf. */
+const BROWN_BANDS: Places = [
+  [6569, 40],
+  [7053, 30],
+  [8435, 30],
+  [8611, 60],
+  [8692, 60],
+]
+const BROWN_LINES: Places = [
+  [7664.9, 60],
+  [7698.97, 60],
+  [7800.3, 6],
+  [7947.6, 6],
+  [8183.26, 4],
+  [8194.82, 4],
+  [8521.1, 7],
+]
+
+function withAll(light: Float64Array, shape: FeatureShape, places: Places, scale = 1): Float64Array {
+  return places.reduce((so, [wavelength, strength]) => withFeature(so, shape, wavelength, strength * scale), light)
+}
+
+function product(a: Float64Array, b: Float64Array): Float64Array {
+  return a.map((value, i) => value * b[i])
+}
+
+const clear = (): Float64Array => new Float64Array(FINE_SAMPLES).fill(1)
+
+/**
+ * Light of a made object that is no ordinary star, in photons per Å on the fine grid, at rest (a galaxy too: give
+ * `madeSpectrum` its velocity). For tests of recognition: each shows what the kind is known by, drawn from handbook
+ * descriptions, with invented strengths. It proves that the criteria fire, not that real objects are told.
+ */
+export function specialLight(kind: SpecialKind): Float64Array {
+  if (kind === 'emission') return starLight(12, 5, 'emission')
+  if (kind === 'metal-weak') {
+    const weak = 0.2
+    const scale = {
+      'Fe I and Cr I': weak,
+      'Fe II and Ti II': weak,
+      'Ca II H and K': 0.35,
+      'Ca II infrared': 0.5,
+      'Sr II': weak,
+      'Ca I 4227': weak,
+      'Ca I red': weak,
+      'G band': 0.4,
+      'CN 4150': 0,
+      'Mg b': 0.3,
+      MgH: 0.2,
+      'Na D': weak,
+    }
+    return product(starContinuum(36, 5), lineTransmission(36, 5, scale))
+  }
+  if (kind === 'metallic-line') {
+    const scale = { 'Ca II H and K': 0.4, 'Fe I and Cr I': 4.5, 'Fe II and Ti II': 2.2, 'Sr II': 3.5, 'Ca I 4227': 0.3 }
+    return product(starContinuum(25, 5), lineTransmission(25, 5, scale))
+  }
+  if (kind === 'carbon') {
+    const lines = lineTransmission(52, 3, { 'CN 4150': 1, 'G band': 1.2, MgH: 0, 'Na D': 3 })
+    const bands = withAll(lines, { form: 'head', reach: -90 }, SWAN)
+    return product(blackBody(3300), withAll(bands, { form: 'head', reach: -90 }, CYANOGEN))
+  }
+  if (kind === 'white dwarf')
+    return product(blackBody(15000), withAll(clear(), { form: 'winged', width: 42 }, WHITE_DWARF))
+  if (kind === 'hot subdwarf') {
+    const hydrogen = withAll(clear(), { form: 'winged', width: 15 }, SUBDWARF_HYDROGEN)
+    return product(blackBody(35000), withAll(hydrogen, { form: 'line' }, SUBDWARF_HELIUM))
+  }
+  if (kind === 'brown dwarf') {
+    const bands = withAll(clear(), { form: 'head', reach: 110 }, BROWN_BANDS)
+    return product(blackBody(1900), withAll(bands, { form: 'winged', width: 45 }, BROWN_LINES))
+  }
+  if (kind === 'composite') {
+    // equal light near 5000 Å: the blue shows the hot star, the red the cool giant
+    const hot = starLight(17, 5)
+    const cool = starLight(55, 3)
+    return hot.map((value, i) => 0.5 * value + 0.5 * cool[i])
+  }
+  if (kind === 'nebular') {
+    const weak = blackBody(20000).map((value) => 0.02 * value)
+    return withAll(clear(), EMISSION, NEBULAR, 0.6).map((value, i) => weak[i] + 0.05 * (value - 1))
+  }
+  const stars = product(starContinuum(48, 3), lineTransmission(48, 3, { 'CN 4150': 0.7 }))
+  const young = starLight(28, 5)
+  const mixed = stars.map((value, i) => 0.8 * value + 0.2 * young[i])
+  const gas: Places = [
+    [3727.4, 14],
+    [4861.32, 4],
+    [4958.91, 2],
+    [5006.84, 6],
+    [6548.05, 5],
+    [6562.79, 22],
+    [6583.45, 15],
+    [6716.44, 6],
+    [6730.82, 5],
+  ]
+  return product(mixed, withAll(clear(), { form: 'emission', width: 6 }, gas))
+}
