@@ -1,14 +1,11 @@
 import { DEMO_VERSION } from '../tables/demoNight.ts'
 import type { DemoStep } from '../tables/demoNight.ts'
 import { exposureFiles } from './exposure.ts'
+import type { DemoFile } from './exposureFiles.ts'
 import { schedule } from './schedule.ts'
 import { targetList } from './targetList.ts'
 
-/** A file of the demo night; `path` is below the night's folder, with '/' between folders. */
-export interface DemoFile {
-  readonly path: string
-  readonly bytes: Uint8Array
-}
+export type { DemoFile } from './exposureFiles.ts'
 
 export interface DemoOptions {
   /** True leaves the planted troubles out. */

@@ -6,6 +6,12 @@ import { fitsBytes } from './fitsBytes.ts'
 import type { MadeCard } from './headers.ts'
 import type { QuickLook } from './quickLook.ts'
 
+/** A file of the demo night; `path` is below the night's folder, with '/' between folders. */
+export interface DemoFile {
+  readonly path: string
+  readonly bytes: Uint8Array
+}
+
 /** Bytes of a raw frame: unsigned 16-bit counts in the primary image, dispersion along the rows. */
 export function rawFile(counts: Float64Array, cards: readonly MadeCard[]): Uint8Array {
   const { width, height, saturation } = DEMO_INSTRUMENT
