@@ -144,3 +144,83 @@ export interface LinePattern {
   readonly covered: readonly (readonly [number, number])[]
   readonly source: SourceKey
 }
+
+/** How a header card's value is to be read where it is not plain text or in the unit of the fact. */
+export type CardForm =
+  'degrees' | 'hours' | 'packed' | 'west' | 'minutes' | 'milliseconds' | 'km' | 'jd' | 'truncated jd' | 'inverse' | 'nm'
+
+/** One keyword that observatories use for a fact. HIERARCH keywords stand without the leading word. */
+export interface KeywordSynonym {
+  readonly keyword: string
+  /** Form of the value where it differs from the fact's own. */
+  readonly form?: CardForm
+  /** The card counts only where this logical one is true. */
+  readonly when?: string
+}
+
+/** Facts of a header that have synonyms. */
+export type FactName =
+  | 'object'
+  | 'ra'
+  | 'dec'
+  | 'equinox'
+  | 'coordinateSystem'
+  | 'dateObs'
+  | 'timeObs'
+  | 'dateEnd'
+  | 'timeEnd'
+  | 'mjdStart'
+  | 'mjdMid'
+  | 'mjdEnd'
+  | 'exposure'
+  | 'airmass'
+  | 'airmassStart'
+  | 'airmassEnd'
+  | 'zenithDistance'
+  | 'hourAngle'
+  | 'longitude'
+  | 'latitude'
+  | 'height'
+  | 'site'
+  | 'telescope'
+  | 'instrument'
+  | 'detector'
+  | 'observer'
+  | 'frameWords'
+  | 'lamp'
+  | 'grating'
+  | 'gratingTilt'
+  | 'filter'
+  | 'slit'
+  | 'binning'
+  | 'binningX'
+  | 'binningY'
+  | 'window'
+  | 'gain'
+  | 'readNoise'
+  | 'saturation'
+  | 'resolutionFwhm'
+  | 'resolvingPower'
+  | 'spectralType'
+  | 'focus'
+  | 'velocityFrame'
+  | 'heliocentricFlag'
+  | 'barycentricFlag'
+  | 'velocityApplied'
+
+/** The place of a telescope [degrees, east and north positive; m], by a pattern of its name. */
+export interface KnownSite {
+  readonly name: string
+  /** Matches TELESCOP, OBSERVAT or ORIGIN, case ignored. */
+  readonly pattern: string
+  readonly longitude: number
+  readonly latitude: number
+  readonly height: number
+}
+
+/** The synonyms of every fact, the first that has a possible value wins; and where known telescopes stand. */
+export interface KeywordTable {
+  readonly facts: Readonly<Record<FactName, readonly KeywordSynonym[]>>
+  readonly sites: readonly KnownSite[]
+  readonly source: SourceKey
+}

@@ -1,0 +1,259 @@
+import { readImage } from '../fits/image.ts'
+import type { Hdu } from '../fits/types.ts'
+import { apertureAxis, apertureSolutions, isMultispec } from './apertures.ts'
+import type { Axis, AxisAnswer, Refusal } from './axis.ts'
+import { cardNumber, cardText } from './cards.ts'
+import type { Headers } from './cards.ts'
+import { listedAxis } from './columnAxis.ts'
+import { companionAxis } from './companion.ts'
+import { headersOf, placeWords, refused } from './container.ts'
+import type { Container, HduAnswer } from './container.ts'
+import type { FoundSpectrum } from './found.ts'
+import { headerAxis, isOtherAxis } from './headerAxis.ts'
+import { imagePlanes } from './imagePlanes.ts'
+import type { ImagePlanes } from './imagePlanes.ts'
+import { imageRole } from './imageRole.ts'
+import type { WavelengthLabel } from './medium.ts'
+import { planeRole } from './planeRole.ts'
+import { rowLayout } from './rowLayout.ts'
+import type { RowLayout } from './rowLayout.ts'
+import { tabulatedAxis } from './tabulatedAxis.ts'
+import { uncertaintyKind } from './tablePlanes.ts'
+
+/** Most rows of an image that are taken for spectra when only its wavelength axis speaks for it. */
+const FEW_ROWS = 8
+
+/** How an image lies in the file: `samples` along the spectrum, then rows, then bands, all the rest 1. */
+interface ImageShape {
+  readonly samples: number
+  readonly rows: number
+  readonly bands: number
+  /** Number of the axis that is the spectral one, from 1. */
+  readonly axis: number
+}
+
+/** The spectra of an image HDU; `isFrame` when it is a 2-D picture of a detector without rows that are spectra. */
+export function imageSpectra(container: Container, hdu: Hdu): HduAnswer & { readonly isFrame: boolean } {
+  const headers = axisHeaders(container, hdu)
+  const shape = imageShape(hdu)
+  if (!shape) {
+    const text = `image requires one spectral axis, got ${hdu.dimensions.join(' x ')}`
+    const isCube = hdu.dimensions.filter((n) => n > 1).length > 2
+    const refusal = {
+      code: isCube ? 'cube' : 'no-wavelength-axis',
+      message: isCube ? `${text}: a data cube` : text,
+      weight: 4,
+      hdu: hdu.index,
+    }
+    return { ...refused(refusal), isFrame: false }
+  }
+  const layout = shape.rows > 1 ? rowLayout(headers, shape.rows) : undefined
+  const why = shape.rows === 1 ? 'one row' : rowsEvidence(container, hdu, headers, shape, layout)
+  if (why === undefined) {
+    const message = `image requires rows that are spectra, got a frame of ${shape.samples} x ${shape.rows} without one dispersion solution a row`
+    return { ...refused({ code: 'two-dimensional', message, weight: 4, hdu: hdu.index }), isFrame: true }
+  }
+  const answer = layout
+    ? planeRows(container, hdu, headers, shape, layout)
+    : apertureRows(container, hdu, headers, shape, why)
+  return { ...answer, isFrame: false }
+}
+
+/** The headers that may give the axis: an extension takes over the primary's only when it says nothing itself. */
+function axisHeaders(container: Container, hdu: Hdu): Headers {
+  const headers = headersOf(container.file, hdu)
+  const says = ['CRVAL1', 'CD1_1', 'CDELT1', 'COEFF0', 'CTYPE1', 'WAT0_001'].some((keyword) => hdu.header.get(keyword))
+  const primary = container.file.hdus[0]
+  const fits = primary.dimensions.length === 0 || primary.dimensions[0] === hdu.dimensions[0]
+  return says || !fits ? [hdu.header] : headers
+}
+
+function imageShape(hdu: Hdu): ImageShape | undefined {
+  const { dimensions } = hdu
+  const long = dimensions.flatMap((n, i) => (n > 1 ? [i] : []))
+  if (dimensions.length === 0 || dimensions.some((n) => n < 1)) return undefined
+  if (long.length <= 1) return { samples: Math.max(...dimensions), rows: 1, bands: 1, axis: (long[0] ?? 0) + 1 }
+  if (long[0] !== 0 || dimensions.length > 4) return undefined
+  const [samples, second, third = 1, fourth = 1] = dimensions
+  if (fourth > 1) return undefined
+  if (third === 1) return { samples, rows: second, bands: 1, axis: 1 }
+  // Three axes: aperture spectra with bands (spectrum, raw, background, sigma), else a cube.
+  const isBands = cardText([hdu.header], 'BANDID1') !== undefined || isMultispec(hdu.header)
+  return isBands && third <= FEW_ROWS ? { samples, rows: second, bands: third, axis: 1 } : undefined
+}
+
+/** Why the rows of an image are spectra, in words; undefined for a frame. */
+function rowsEvidence(
+  { file, companion }: Container,
+  hdu: Hdu,
+  headers: Headers,
+  { samples, rows }: ImageShape,
+  layout: RowLayout | undefined,
+): string | undefined {
+  const { header } = hdu
+  if (layout) return layout.words
+  if (isMultispec(header) && apertureSolutions(header).size > 0) return 'a dispersion solution each'
+  if (isOtherAxis(headers, 1) || isOtherAxis(headers, 2)) return undefined
+  if (header.get('APNUM1') && header.get(`APNUM${Math.min(rows, 9)}`)) return 'extracted apertures'
+  if (cardText([header], 'WAT0_001') === 'system=equispec' && header.get('APNUM1')) return 'extracted apertures'
+  const others = [...file.hdus, ...(companion?.file.hdus ?? [])].filter((other) => other !== hdu)
+  const hasWavelengths = others.some(
+    (other) =>
+      other.dimensions[0] === samples &&
+      (other.dimensions.length === 1 || other.dimensions[1] === rows) &&
+      isWaveName(other.name),
+  )
+  if (hasWavelengths) return 'wavelengths in another extension'
+  const hasAxis = 'axis' in headerAxis(headers, 1, samples)
+  if (!hasAxis) return undefined
+  if (header.get('COEFF0') && header.get('COEFF1')) return 'a common log10 wavelength scale'
+  const fibres = others.find((other) => other.rows === rows && /fib|plug|target|object|aperture|spec/i.test(other.name))
+  if (fibres) return `one a row of table ${fibres.name}`
+  return rows <= FEW_ROWS ? 'few rows on one wavelength axis' : undefined
+}
+
+function isWaveName(name: string): boolean {
+  const role = imageRole(name)
+  return name !== '' && (role === 'wavelength' || role === 'log wavelength')
+}
+
+function readRow(container: Container, hdu: Hdu, shape: ImageShape, at: number, length = shape.samples): Float64Array {
+  return readImage(container.source, hdu, { start: at * shape.samples, count: length })
+}
+
+/** One spectrum whose flux, uncertainty and wavelengths are rows of one image. */
+function planeRows(container: Container, hdu: Hdu, headers: Headers, shape: ImageShape, layout: RowLayout): HduAnswer {
+  const at = (role: string): number => layout.roles.findIndex((found) => found === role)
+  const wave = Math.max(at('wavelength'), at('log wavelength'))
+  let answer: AxisAnswer
+  let label: WavelengthLabel | undefined
+  if (wave >= 0) {
+    const name = `image row ${wave}`
+    answer = listedAxis(readRow(container, hdu, shape, wave), {
+      name,
+      unit: '',
+      role: layout.roles[wave] ?? 'wavelength',
+      keyword: 'BUNIT',
+    })
+    label = { name, ucd: '', utype: '' }
+  } else answer = headerAxis(headers, 1, shape.samples)
+  if ('refusal' in answer) return refused({ ...answer.refusal, hdu: hdu.index })
+  const errors = ['sigma', 'inverse variance', 'variance', 'relative'].map(at).find((row) => row >= 0)
+  const kind = errors === undefined ? undefined : uncertaintyKind(layout.roles[errors])
+  const sky = at('sky')
+  const notes = layout.isNamed
+    ? []
+    : [{ code: 'layout-guessed', text: `${layout.words}: by the documentation of the survey, not by the file` }]
+  const found: FoundSpectrum = {
+    hdu: hdu.index,
+    axis: answer.axis,
+    ...(label ? { label } : {}),
+    flux: readRow(container, hdu, shape, at('flux')),
+    fluxUnit: fluxUnit(headersOf(container.file, hdu)),
+    ...(errors !== undefined && kind ? { uncertainty: { values: readRow(container, hdu, shape, errors), kind } } : {}),
+    ...(sky >= 0 ? { sky: readRow(container, hdu, shape, sky) } : {}),
+    headers: headersOf(container.file, hdu),
+    convention: `${placeWords(hdu)}, ${layout.words}, ${answer.axis.words}`,
+    notes,
+  }
+  return { spectra: [found], refusals: [], notes: [] }
+}
+
+/** Unit of the flux, from BUNIT and its like. */
+export function fluxUnit(headers: Headers): string {
+  for (const keyword of ['BUNIT', 'FLUXUNIT', 'FLXUNIT', 'DATAUNIT']) {
+    const text = cardText([headers[0]], keyword) ?? cardText(headers, keyword)
+    if (text !== undefined) return text
+  }
+  return ''
+}
+
+function apertureRows(container: Container, hdu: Hdu, headers: Headers, shape: ImageShape, why: string): HduAnswer {
+  const spectra: FoundSpectrum[] = []
+  const refusals: Refusal[] = []
+  const planes = imagePlanes(container, hdu)
+  const solutions = isMultispec(hdu.header) ? apertureSolutions(hdu.header) : undefined
+  let shared: FoundAxis | undefined
+  for (let row = 0; row < shape.rows && spectra.length < container.most; row++) {
+    const answer: FoundAxis = solutions
+      ? apertureAxis(hdu.header, row, solutions.get(row), shape.samples)
+      : (shared ??= findAxis(container, hdu, headers, shape, row))
+    if ('refusal' in answer) {
+      refusals.push({ ...answer.refusal, hdu: answer.refusal.hdu ?? hdu.index, ...(shape.rows > 1 ? { row } : {}) })
+      if (!solutions) break
+      continue
+    }
+    if (answer.perRow) shared = undefined
+    const label = answer.label ? { label: answer.label } : {}
+    spectra.push(apertureRow(container, hdu, { shape, planes, row, axis: answer.axis, why, ...label }))
+  }
+  return { spectra, refusals, notes: planes.notes }
+}
+
+type FoundAxis =
+  { readonly axis: Axis; readonly label?: WavelengthLabel; readonly perRow?: boolean } | { readonly refusal: Refusal }
+
+function findAxis(container: Container, hdu: Hdu, headers: Headers, shape: ImageShape, row: number): FoundAxis {
+  const companion = companionAxis(container, hdu, shape.samples, row)
+  if (companion)
+    return 'refusal' in companion ? companion : { axis: companion.axis, label: companion.label, perRow: shape.rows > 1 }
+  const tabulated = tabulatedAxis(container, hdu, headers, shape.axis, shape.samples)
+  return tabulated ?? headerAxis(headers, shape.axis, shape.samples)
+}
+
+function apertureRow(
+  container: Container,
+  hdu: Hdu,
+  given: { shape: ImageShape; planes: ImagePlanes; row: number; axis: Axis; label?: WavelengthLabel; why: string },
+): FoundSpectrum {
+  const { shape, planes, row, axis, label, why } = given
+  const headers = headersOf(container.file, hdu)
+  const length = axis.wavelength.length
+  const band = (number: number): number => number * shape.rows + row
+  const bands = Array.from({ length: shape.bands }, (_, i) => cardText([hdu.header], `BANDID${i + 1}`) ?? '')
+  const sigmaBand = bands.findIndex((text) => /^\s*(sigma|error|uncertainty)/i.test(text))
+  const skyBand = bands.findIndex((text) => /^\s*(background|sky)/i.test(text))
+  const uncertainty =
+    sigmaBand > 0
+      ? { values: readRow(container, hdu, shape, band(sigmaBand), length), kind: 'sigma' as const }
+      : planes.uncertainty(row, shape.samples, length)
+  const flags = planes.flags(row, shape.samples, length)
+  const sky =
+    skyBand > 0 ? readRow(container, hdu, shape, band(skyBand), length) : planes.sky(row, shape.samples, length)
+  const role = imageRole(hdu.name)
+  const part = cardText([hdu.header], `APID${row + 1}`)
+  const isSky = role === 'sky' || isBackgroundBand(hdu)
+  const rows = shape.rows > 1 ? `, rows are spectra (${why})` : ''
+  return {
+    hdu: hdu.index,
+    ...(shape.rows > 1 ? { row } : {}),
+    axis,
+    ...(label ? { label } : {}),
+    flux: readRow(container, hdu, shape, row, length),
+    fluxUnit: fluxUnit(headers),
+    ...(role === 'normalised' ? { isNormalised: true } : {}),
+    ...(uncertainty ? { uncertainty } : {}),
+    ...(flags ? { flags } : {}),
+    ...(sky ? { sky } : {}),
+    headers,
+    convention: `${placeWords(hdu)}${rows}${shape.bands > 1 ? ', bands' : ''}, ${axis.words}`,
+    ...(part === undefined ? {} : { part }),
+    ...(isSky ? { role: 'sky' as const } : {}),
+    notes: why.startsWith('few rows')
+      ? [
+          {
+            code: 'rows-guessed',
+            text: `the ${shape.rows} rows are taken for spectra since they share a wavelength axis; the file does not say what they hold`,
+          },
+        ]
+      : [],
+  }
+}
+
+/** True for one band cut out of an extraction with several, when that band was the background. */
+function isBackgroundBand(hdu: Hdu): boolean {
+  if (hdu.dimensions.length > 2) return false
+  const band = 1 - (cardNumber([hdu.header], 'LTV3') ?? 0)
+  const text = cardText([hdu.header], `BANDID${band}`) ?? ''
+  return planeRole(text.split(/[-:]/)[0]) === 'sky'
+}

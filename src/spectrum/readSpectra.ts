@@ -1,0 +1,158 @@
+import { FormatError } from '../errors.ts'
+import type { Place } from '../errors.ts'
+import type { ByteSource, FitsFile, Hdu } from '../fits/types.ts'
+import { assemble } from './assemble.ts'
+import type { Refusal } from './axis.ts'
+import type { Container, HduAnswer } from './container.ts'
+import { headersOf } from './container.ts'
+import type { FoundSpectrum } from './found.ts'
+import { readHeaderFacts } from './headerFacts.ts'
+import { imageRole } from './imageRole.ts'
+import { imageSpectra } from './imageSpectra.ts'
+import { spectrumRole } from './role.ts'
+import { tableSpectra } from './tableSpectra.ts'
+import { velocityFrame } from './velocityFrame.ts'
+import type { KeywordTable } from '../tables/types.ts'
+import type { Note } from '../findings/types.ts'
+import type { HeaderFacts, Spectrum } from './types.ts'
+
+/** What one file gave. */
+export interface ReadResult {
+  readonly spectra: readonly Spectrum[]
+  /** Of the file as a whole. */
+  readonly facts: HeaderFacts
+  /** Of the file as a whole: how its headers were understood. */
+  readonly notes: readonly Note[]
+  /** Set when the file is a raw 2-D frame. */
+  readonly frame2d?: { readonly hdu: number }
+  /** Why there is no spectrum. */
+  readonly error?: { readonly code: string; readonly message: string; readonly where: Place }
+}
+
+/** Settings of `readSpectra`. */
+export interface ReadOptions {
+  readonly keywords: KeywordTable
+  /** The file that holds the wavelengths, where one was named. */
+  readonly companion?: { readonly file: FitsFile; readonly source: ByteSource }
+  readonly fileName?: string
+  /** Largest number of spectra that are read of one file; 5,000 when not given. */
+  readonly maxSpectra?: number
+}
+
+/** More spectra than any multi-object spectrograph gives in one exposure. */
+const MOST_SPECTRA = 5000
+
+/**
+ * The spectra of a file: of every image and table that holds a flux with wavelengths, each once, in the program's
+ * units. A raw 2-D frame gives none and sets `frame2d`; a file with neither gives `error` with the likeliest reason.
+ * A fault in one HDU does not keep the others from being read.
+ *
+ * @throws FormatError when the file has no HDU
+ */
+export function readSpectra(file: FitsFile, source: ByteSource, options: ReadOptions): ReadResult {
+  if (file.hdus.length === 0)
+    throw new FormatError('empty-file', 'file requires at least one HDU, got none', placeOf(options))
+  const { keywords, companion } = options
+  const container: Container = {
+    file,
+    source,
+    ...(companion ? { companion } : {}),
+    most: options.maxSpectra ?? MOST_SPECTRA,
+  }
+  const spectra: Spectrum[] = []
+  const refusals: Refusal[] = []
+  const notes: Note[] = []
+  let frame: Hdu | undefined
+  for (const hdu of file.hdus) {
+    if (spectra.length >= container.most) {
+      notes.push({ code: 'spectra-limit', text: `reading stopped at ${container.most} spectra` })
+      break
+    }
+    const answer = hduSpectra(container, hdu)
+    if (answer.isFrame) frame ??= hdu
+    refusals.push(...answer.refusals)
+    notes.push(...answer.notes)
+    for (const found of answer.spectra) spectra.push(finished(found, hdu, file, keywords))
+  }
+  const header = factHeaders(file, spectra[0]?.hdu ?? frame?.index ?? 0)
+  const whole = readHeaderFacts(header, keywords)
+  const result = { spectra, facts: whole.facts, notes: [...file.notes, ...notes, ...whole.notes] }
+  if (spectra.length > 0) return result
+  const worst = refusals.reduce<Refusal | undefined>(
+    (best, next) => (!best || next.weight > best.weight ? next : best),
+    undefined,
+  )
+  const error = worst
+    ? { code: worst.code, message: worst.message, where: refusalPlace(worst, options) }
+    : { code: 'no-data', message: 'file requires an image or a table with data, got none', where: placeOf(options) }
+  return { ...result, ...(frame ? { frame2d: { hdu: frame.index } } : {}), error }
+}
+
+function placeOf({ fileName }: ReadOptions): Place {
+  return fileName === undefined ? {} : { file: fileName }
+}
+
+function refusalPlace(refusal: Refusal, options: ReadOptions): Place {
+  const { hdu, row, keyword } = refusal
+  return {
+    ...placeOf(options),
+    ...(hdu === undefined ? {} : { hdu }),
+    ...(row === undefined ? {} : { row }),
+    ...(keyword === undefined ? {} : { keyword }),
+    ...(refusal.byte === undefined ? {} : { byte: refusal.byte }),
+  }
+}
+
+function factHeaders(file: FitsFile, hdu: number): ReturnType<typeof headersOf> {
+  return headersOf(file, file.hdus[hdu])
+}
+
+function hduSpectra(container: Container, hdu: Hdu): HduAnswer & { readonly isFrame?: boolean } {
+  try {
+    if (hdu.kind === 'image' || hdu.kind === 'compressed image') {
+      if (hdu.dimensions.length === 0 && !hdu.fault) return { spectra: [], refusals: [], notes: [] }
+      const role = imageRole(hdu.name)
+      // Planes that belong to another HDU are read with it; a name that says nothing may still be a spectrum.
+      if (role !== undefined && role !== 'flux' && role !== 'normalised')
+        return { spectra: [], refusals: [], notes: [] }
+      return imageSpectra(container, hdu)
+    }
+    return hdu.columns.length === 0 && !hdu.fault
+      ? { spectra: [], refusals: [], notes: [] }
+      : tableSpectra(container, hdu)
+  } catch (error) {
+    if (!(error instanceof FormatError)) throw error
+    const { keyword, byte, row } = error.where
+    const refusal: Refusal = {
+      code: error.code,
+      message: error.message,
+      weight: 10,
+      hdu: hdu.index,
+      ...(keyword === undefined ? {} : { keyword }),
+      ...(byte === undefined ? {} : { byte }),
+      ...(row === undefined ? {} : { row }),
+    }
+    return {
+      spectra: [],
+      refusals: [refusal],
+      notes: [{ code: error.code, text: `HDU ${hdu.index}: ${error.message}` }],
+    }
+  }
+}
+
+function finished(found: FoundSpectrum, hdu: Hdu, file: FitsFile, keywords: KeywordTable): Spectrum {
+  const read = readHeaderFacts(found.headers, keywords)
+  const frame = velocityFrame(found.headers, keywords)
+  const facts: HeaderFacts = {
+    ...read.facts,
+    ...(found.object === undefined ? {} : { object: found.object }),
+    ...(frame.applied === undefined ? {} : { velocityApplied: frame.applied }),
+  }
+  const hduNotes = [...file.notes, ...hdu.notes, ...(hdu.index === 0 ? [] : file.hdus[0].notes)]
+  return assemble(found, {
+    facts,
+    factNotes: [...hduNotes, ...frame.notes, ...read.notes],
+    frame: frame.frame,
+    role: found.role ?? spectrumRole(facts),
+  })
+}
