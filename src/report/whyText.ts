@@ -22,7 +22,10 @@ export function whyText(file: string, spectrum: SpectrumOutcome): string {
     lines.push('', `  ${HEAD.map(([name, width]) => name.padStart(width)).join('  ')}`)
     for (const evidence of shown) lines.push(`  ${evidenceLine(evidence)}`)
     const rest = type.evidence.length - shown.length
-    if (rest > 0) lines.push(`  and ${rest} more features with ${percent(type.evidence.slice(shown.length).reduce((sum, e) => sum + e.share, 0))} of the decision`)
+    if (rest > 0)
+      lines.push(
+        `  and ${rest} more features with ${percent(type.evidence.slice(shown.length).reduce((sum, e) => sum + e.share, 0))} of the decision`,
+      )
   }
   const ratios = type.ratios.filter((ratio) => ratio.value !== undefined)
   if (ratios.length) lines.push('', '  classical ratios', ...ratios.map((ratio) => `  ${ratioLine(ratio)}`))
@@ -48,13 +51,26 @@ function typeLine({ type }: SpectrumOutcome): string {
     ['giant', type.probGiant],
     ['supergiant', type.probSupergiant],
   ].flatMap(([name, p]) => (typeof p === 'number' ? [`${String(name)} ${percent(p)}`] : []))
-  const range = type.low68 === undefined || type.high68 === undefined ? '' : `, type number ${type.typeNumber.toFixed(1)}, 68 % within ${type.low68.toFixed(1)} to ${type.high68.toFixed(1)}`
+  const range =
+    type.low68 === undefined || type.high68 === undefined
+      ? ''
+      : `, type number ${type.typeNumber.toFixed(1)}, 68 % within ${type.low68.toFixed(1)} to ${type.high68.toFixed(1)}`
   const state = type.state === 'typed' ? '' : ` (${type.state}${type.reason ? `: ${type.reason}` : ''})`
   return `${type.spectralType ?? '?'} ${type.luminosityClass ?? ''}${range}; ${chances.join(', ')}${state}`
 }
 
 function evidenceLine(e: Evidence): string {
-  const cells = [e.feature, number(e.measured), number(e.error), number(e.expected), number(e.expectedScatter), number(e.expectedEarlier), number(e.expectedLater), e.pull.toFixed(1), percent(e.share)]
+  const cells = [
+    e.feature,
+    number(e.measured),
+    number(e.error),
+    number(e.expected),
+    number(e.expectedScatter),
+    number(e.expectedEarlier),
+    number(e.expectedLater),
+    e.pull.toFixed(1),
+    percent(e.share),
+  ]
   return cells.map((cell, i) => padToWidth(cutToWidth(cell, HEAD[i][1]), HEAD[i][1], 'right')).join('  ')
 }
 
