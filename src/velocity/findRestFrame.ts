@@ -28,6 +28,9 @@ const BEYOND = 2000
 /** A peak is trusted from these on; Tonry & Davis 1979 take r < 3 for unreliable (from memory). */
 const TRUST = { ratio: 3, height: 0.25, second: 0.9 } as const
 
+/** [km/s] how well the patterns themselves are at rest, from known velocities of stars they were not made from. */
+const PATTERN_ZERO = 5
+
 /** Fewest cells that a pattern must share with the spectrum. */
 const FEWEST_CELLS = 12
 
@@ -163,6 +166,7 @@ function judge({ pattern, peak }: Match, velocity: number, step: number): RestFr
   if (peak.ratio < TRUST.ratio) return refuse(`the peak ratio is ${peak.ratio.toFixed(1)}, below ${TRUST.ratio}`)
   if (peak.second > TRUST.second * peak.height)
     return refuse(`a second peak has ${((100 * peak.second) / peak.height).toFixed(0)} % of the height of the first`)
-  const error = ((3 / 8) * peak.width * step * SPEED_OF_LIGHT) / (1 + peak.ratio)
+  const ofPeak = ((3 / 8) * peak.width * step * SPEED_OF_LIGHT) / (1 + peak.ratio)
+  const error = Math.hypot(ofPeak, PATTERN_ZERO)
   return { velocity, error, trusted: true, ...found }
 }

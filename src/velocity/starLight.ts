@@ -12,8 +12,11 @@ export interface StarLight {
   readonly used: Uint8Array
 }
 
-/** Emission: above the mean of 2 × 40 samples by this much [fraction of the continuum] and by this many sigmas. */
-const EMISSION = { fraction: 0.3, sigmas: 5, half: 40 } as const
+/**
+ * Emission stands above the mean of its neighbourhood (40 samples on either side) by this fraction of the continuum,
+ * by this many times the scatter there, and by this many sigmas of the noise; beyond the last fraction always.
+ */
+const EMISSION = { fraction: 0.08, scatters: 2, sigmas: 5, always: 0.3, half: 40 } as const
 
 /** A cosmic ray: above both neighbours two samples away by this much and by this many sigmas. */
 const SPIKE = { fraction: 0.12, sigmas: 6 } as const
@@ -43,15 +46,19 @@ export function starLight(spectrum: Spectrum, continuum: Continuum): StarLight {
     if (d > DEEPEST + 3 * Math.sqrt(variance[i])) continue
     used[i] = 1
     weight[i] = 1
-    clipped[i] = Math.max(-EMISSION.fraction, Math.min(1, d))
+    clipped[i] = Math.max(-EMISSION.always, Math.min(1, d))
   }
-  const beside = subtractRunningMean(clipped, weight, EMISSION.half)
+  const squares = clipped.map((d) => d * d)
+  const above = subtractRunningMean(clipped, weight, EMISSION.half)
+  const aboveSquares = subtractRunningMean(squares, weight, EMISSION.half)
   for (let i = 0; i < n; i++) {
     if (used[i] === 0) continue
-    const sigma = Math.sqrt(variance[i])
-    // clipped − beside is the local mean
-    const isEmission = depth[i] - clipped[i] + beside[i] < -Math.max(EMISSION.fraction, EMISSION.sigmas * sigma)
-    if (isEmission || isSpike(depth, i, Math.max(SPIKE.fraction, SPIKE.sigmas * sigma))) weight[i] = 0
+    const noiseSigma = Math.sqrt(variance[i])
+    const mean = clipped[i] - above[i]
+    const scatter = Math.sqrt(Math.max(0, squares[i] - aboveSquares[i] - mean * mean))
+    const limit = Math.min(EMISSION.always, Math.max(EMISSION.fraction, EMISSION.scatters * scatter))
+    const isEmission = depth[i] < mean - Math.max(limit, EMISSION.sigmas * noiseSigma)
+    if (isEmission || isSpike(depth, i, Math.max(SPIKE.fraction, SPIKE.sigmas * noiseSigma))) weight[i] = 0
   }
   for (let i = 0; i < n; i++) {
     if (weight[i] > 0) continue
