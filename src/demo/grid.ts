@@ -20,24 +20,29 @@ export function valueAt(values: Float64Array, wavelength: number): number {
   return values[i] + (values[i + 1] - values[i]) * (position - i)
 }
 
+/** Half width of the stretch that is summed for each sample, in standard deviations of the profile. */
+const PROFILE_REACH = 4
+
 /**
- * An array on the fine grid as an instrument with a Gaussian profile would show it; the ends are continued flat.
+ * An array on the fine grid as an instrument with a Gaussian profile shows it at the given wavelengths; the ends of
+ * the grid are continued flat.
  *
- * @param fwhm  full width of the profile at half its height [Å]
+ * @param wavelengths  shape (n) [Å]
+ * @param fwhm         full width of the profile at half its height [Å], more than a step of the grid
+ * @returns            shape (n), the unit of `values`
  */
-export function blurred(values: Float64Array, fwhm: number): Float64Array {
+export function blurredAt(values: Float64Array, wavelengths: Float64Array, fwhm: number): Float64Array {
   const sigma = fwhm / (2 * Math.sqrt(2 * Math.LN2)) / FINE_STEP
-  const reach = Math.ceil(4 * sigma)
-  const weights = Float64Array.from({ length: 2 * reach + 1 }, (_, k) => Math.exp(-0.5 * ((k - reach) / sigma) ** 2))
-  const total = weights.reduce((sum, weight) => sum + weight, 0)
-  const out = new Float64Array(values.length)
-  for (let i = 0; i < values.length; i++) {
+  const last = values.length - 1
+  return wavelengths.map((wavelength) => {
+    const centre = (wavelength - FINE_FIRST) / FINE_STEP
     let sum = 0
-    for (let k = -reach; k <= reach; k++) {
-      const j = Math.min(values.length - 1, Math.max(0, i + k))
-      sum += weights[k + reach] * values[j]
+    let total = 0
+    for (let i = Math.ceil(centre - PROFILE_REACH * sigma); i <= centre + PROFILE_REACH * sigma; i++) {
+      const weight = Math.exp(-0.5 * ((i - centre) / sigma) ** 2)
+      sum += weight * values[Math.min(last, Math.max(0, i))]
+      total += weight
     }
-    out[i] = sum / total
-  }
-  return out
+    return sum / total
+  })
 }

@@ -1,6 +1,6 @@
 import { DEMO_INSTRUMENT } from '../tables/demoNight.ts'
 import type { DemoSetup } from '../tables/demoNight.ts'
-import { blurred, FINE_FIRST, FINE_SAMPLES, FINE_STEP, valueAt } from './grid.ts'
+import { blurredAt, FINE_FIRST, FINE_SAMPLES, FINE_STEP, valueAt } from './grid.ts'
 import { airBands, extinction, nightSky } from './sky.ts'
 
 const LIGHT_SPEED_KMS = 299792.458
@@ -17,8 +17,9 @@ export function efficiency(setup: DemoSetup, wavelength: number): number {
 
 /** Light on the fine grid as the set-up samples it: blurred, times efficiency; shape (width) [unit Å a pixel]. */
 function throughSetup(light: Float64Array, setup: DemoSetup): Float64Array {
-  const seen = blurred(light, setup.fwhm)
-  return pixelWavelengths(setup).map((x) => valueAt(seen, x) * efficiency(setup, x) * setup.step)
+  const wavelengths = pixelWavelengths(setup)
+  const seen = blurredAt(light, wavelengths, setup.fwhm)
+  return seen.map((value, i) => value * efficiency(setup, wavelengths[i]) * setup.step)
 }
 
 /** Expected electrons of a star in each pixel column, without noise, shape (width). */
@@ -53,15 +54,10 @@ export function arcElectrons(setup: DemoSetup, exposure: number): Float64Array {
     light[i] += (rate / FINE_STEP) * (1 - (position - i))
     light[i + 1] += (rate / FINE_STEP) * (position - i)
   }
-  return blurredRow(light, setup).map((value) => value * exposure)
+  return blurredAt(light, pixelWavelengths(setup), setup.fwhm).map((value) => value * setup.step * exposure)
 }
 
 /** Expected electrons of an even source (lamp or twilight) in each pixel of a row, shape (width). */
 export function evenElectrons(light: Float64Array, setup: DemoSetup, electrons: number): Float64Array {
   return throughSetup(light, setup).map((value) => (value / setup.step) * electrons)
-}
-
-function blurredRow(light: Float64Array, setup: DemoSetup): Float64Array {
-  const seen = blurred(light, setup.fwhm)
-  return pixelWavelengths(setup).map((x) => valueAt(seen, x) * setup.step)
 }

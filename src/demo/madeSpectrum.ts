@@ -1,6 +1,6 @@
 import { seededNormal } from '../numeric/random.ts'
 import type { Spectrum } from '../spectrum/types.ts'
-import { blurred, valueAt } from './grid.ts'
+import { blurredAt } from './grid.ts'
 
 /** How a made spectrum is sampled. */
 export interface MadeOptions {
@@ -24,10 +24,10 @@ const LIGHT_SPEED_KMS = 299792.458
  */
 export function madeSpectrum(light: Float64Array, options: MadeOptions = {}): Spectrum {
   const { first = 3700, last = 9000, step = 1.5, fwhm = 5, snr, seed = 1, velocity = 0 } = options
-  const seen = blurred(light, fwhm)
   const samples = Math.floor((last - first) / step) + 1
   const wavelength = Float64Array.from({ length: samples }, (_, i) => first + step * i)
-  const clean = wavelength.map((x) => valueAt(seen, x / (1 + velocity / LIGHT_SPEED_KMS)))
+  const atRest = wavelength.map((x) => x / (1 + velocity / LIGHT_SPEED_KMS))
+  const clean = blurredAt(light, atRest, fwhm)
   const mean = clean.reduce((sum, value) => sum + value, 0) / samples
   const normal = seededNormal(seed)
   // photon noise: variance in proportion to the light

@@ -1,6 +1,6 @@
 import type { FeatureShape } from '../tables/demoStrengths.ts'
 import { FINE_SAMPLES } from './grid.ts'
-import { withFeature } from './profiles.ts'
+import { withFeatures } from './profiles.ts'
 import { blackBody, lineTransmission, starContinuum, starLight } from './starLight.ts'
 
 export const SPECIAL_KINDS = [
@@ -98,7 +98,10 @@ const BROWN_LINES: Places = [
 ]
 
 function withAll(light: Float64Array, shape: FeatureShape, places: Places, scale = 1): Float64Array {
-  return places.reduce((so, [wavelength, strength]) => withFeature(so, shape, wavelength, strength * scale), light)
+  return withFeatures(
+    light,
+    places.map(([wavelength, strength]) => ({ shape, wavelength, strength: strength * scale })),
+  )
 }
 
 function product(a: Float64Array, b: Float64Array): Float64Array {

@@ -1,7 +1,7 @@
 import { DEMO_STRENGTHS, DEMO_TEMPERATURES } from '../tables/demoStrengths.ts'
 import type { DemoFeature, StrengthCurve } from '../tables/demoStrengths.ts'
 import { fineGrid, FINE_FIRST, FINE_SAMPLES, FINE_STEP } from './grid.ts'
-import { withFeature } from './profiles.ts'
+import { withFeatures } from './profiles.ts'
 
 /** Value of a curve at a type number, its end values beyond. */
 export function curveAt(curve: StrengthCurve, type: number): number {
@@ -35,15 +35,15 @@ export function lineTransmission(
   luminosity: number,
   scale: Readonly<Record<string, number>> = {},
 ): Float64Array {
-  let light: Float64Array = new Float64Array(FINE_SAMPLES).fill(1)
-  for (const feature of DEMO_STRENGTHS) {
+  const features = DEMO_STRENGTHS.flatMap((feature) => {
     const strength = strengthOf(feature, type, luminosity) * (scale[feature.name] ?? 1)
-    if (strength === 0) continue
-    for (const [wavelength, share] of feature.places) {
-      light = withFeature(light, feature.shape, wavelength, strength * share)
-    }
-  }
-  return light
+    return feature.places.map(([wavelength, share]) => ({
+      shape: feature.shape,
+      wavelength,
+      strength: strength * share,
+    }))
+  })
+  return withFeatures(new Float64Array(FINE_SAMPLES).fill(1), features)
 }
 
 /** hc/k [Å K], from the exact SI values of h, c and k. */
@@ -74,23 +74,25 @@ export function starContinuum(type: number, luminosity: number): Float64Array {
   return body
 }
 
-/** Emission of a star with a disc: line [Å] and strength [Å]. Invented, of the size that Be stars show. */
-const DISC_LINES: readonly (readonly [wavelength: number, strength: number])[] = [
-  [6562.79, 32],
-  [4861.33, 4],
-  [4340.47, 1],
-]
 /** FWHM of a line from a turning disc [Å]. */
 const DISC_WIDTH = 7
+/** Emission of a star with a disc, of the size that Be stars show. Invented. */
+const DISC_LINES = (
+  [
+    [6562.79, 32],
+    [4861.33, 4],
+    [4340.47, 1],
+  ] as const
+).map(([wavelength, strength]) => ({
+  shape: { form: 'emission', width: DISC_WIDTH } as const,
+  wavelength,
+  strength,
+}))
 
 /** Light of a made star in photons per Å on the fine grid, at rest, before air and instrument; 1 near 5500 Å. */
 export function starLight(type: number, luminosity: number, special?: 'emission'): Float64Array {
   const continuum = starContinuum(type, luminosity)
-  let lines = lineTransmission(type, luminosity)
-  if (special === 'emission') {
-    for (const [wavelength, strength] of DISC_LINES) {
-      lines = withFeature(lines, { form: 'emission', width: DISC_WIDTH }, wavelength, strength)
-    }
-  }
+  const absorbed = lineTransmission(type, luminosity)
+  const lines = special === 'emission' ? withFeatures(absorbed, DISC_LINES) : absorbed
   return continuum.map((level, i) => level * lines[i])
 }

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { fineGrid, FINE_STEP, blurred } from '../../src/demo/grid.ts'
-import { withFeature } from '../../src/demo/profiles.ts'
+import { fineGrid, FINE_STEP, blurredAt } from '../../src/demo/grid.ts'
+import { withFeatures } from '../../src/demo/profiles.ts'
 import { blackBody, curveAt, lineTransmission, strengthOf } from '../../src/demo/starLight.ts'
 import { DEMO_STRENGTHS } from '../../src/tables/demoStrengths.ts'
 
@@ -8,7 +8,7 @@ const grid = fineGrid()
 const clear = new Float64Array(grid.length).fill(1)
 const width = (light: Float64Array): number => light.reduce((sum, value) => sum + (1 - value) * FINE_STEP, 0)
 
-describe('withFeature', () => {
+describe('withFeatures', () => {
   it.each([
     // bounds: the tails cut off at 3 FWHM (line) and 60 half widths (hydrogen: 1.1 % of a Lorentzian
     // lies outside), the edges of trough and band are soft, the band is cut off at 6 times its reach
@@ -18,27 +18,27 @@ describe('withFeature', () => {
     { name: 'trough', shape: { form: 'trough', width: 40 }, strength: 6, loss: 0.3 },
     { name: 'band', shape: { form: 'head', reach: 80 }, strength: 30, loss: 0.5 },
   ] as const)('takes out the equivalent width asked for: $name', ({ shape, strength, loss }) => {
-    const light = withFeature(clear, shape, 5000, strength)
+    const light = withFeatures(clear, [{ shape, wavelength: 5000, strength }])
     expect(Math.abs(width(light) - strength)).toBeLessThan(loss)
     expect(Math.min(...light)).toBeGreaterThan(0)
   })
 
   it('gives emission its strength with the other sign', () => {
-    const light = withFeature(clear, { form: 'emission', width: 7 }, 6562.79, 30)
+    const light = withFeatures(clear, [{ shape: { form: 'emission', width: 7 }, wavelength: 6562.79, strength: 30 }])
     expect(width(light)).toBeCloseTo(-30, 2)
   })
 
   it('leaves the array it is given as it was', () => {
     const before = clear.slice()
-    withFeature(clear, { form: 'line' }, 5000, 1)
+    withFeatures(clear, [{ shape: { form: 'line' }, wavelength: 5000, strength: 1 }])
     expect(clear).toEqual(before)
   })
 })
 
-describe('blurred', () => {
+describe('blurredAt', () => {
   it('keeps the equivalent width of a line and gives it the width of the profile', () => {
-    const narrow = withFeature(clear, { form: 'line' }, 5000, 0.5)
-    const wide = blurred(narrow, 6)
+    const narrow = withFeatures(clear, [{ shape: { form: 'line' }, wavelength: 5000, strength: 0.5 }])
+    const wide = blurredAt(narrow, grid, 6)
     expect(width(wide)).toBeCloseTo(width(narrow), 9)
     // quadratic sum of Gaussian widths, √(1.6² + 6²) = 6.21 Å; half depth is met within a sample
     const half = (1 + Math.min(...wide)) / 2
