@@ -40,3 +40,11 @@ function native(bytes: Uint8Array, size: 2 | 4 | 8): ArrayBuffer {
   }
   return copy.buffer
 }
+
+/** The bytes of a typed array in big-endian order; a copy. */
+export function bigEndianOf(
+  values: Int16Array | Int32Array | BigInt64Array | BigUint64Array | Float32Array | Float64Array,
+): Uint8Array {
+  const bytes = new Uint8Array(values.buffer, values.byteOffset, values.byteLength)
+  return new Uint8Array(native(bytes, values.BYTES_PER_ELEMENT as 2 | 4 | 8))
+}

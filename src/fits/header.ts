@@ -46,16 +46,22 @@ export function readHeader(source: ByteSource, start: number, hdu: number): Head
     const length = Math.min(blocks * BLOCK_SIZE, source.size - at)
     const whole = length - (length % CARD_SIZE)
     if (whole <= 0) throw truncated(source, start, hdu)
-    const text = cleanText(source.read(at, whole), at, note)
-    for (let i = 0; i < whole; i += CARD_SIZE) {
-      if (isEnd(text, i)) {
-        const end = at + i + CARD_SIZE
-        const size = Math.ceil((end - start) / BLOCK_SIZE) * BLOCK_SIZE
-        return { header: headerOf(joinContinued(cards)), size, notes: notesOf(seen, cards) }
-      }
+    const bytes = source.read(at, whole)
+    const end = endCard(bytes)
+    const used =
+      end < 0
+        ? whole
+        : Math.min(whole, Math.ceil((at + end + CARD_SIZE - start) / BLOCK_SIZE) * BLOCK_SIZE + start - at)
+    const text = cleanText(bytes.subarray(0, used), at, note)
+    const stop = end < 0 ? whole : end
+    for (let i = 0; i < stop; i += CARD_SIZE) {
       const { card, breach } = parseCard(text.slice(i, i + CARD_SIZE), at + i)
       if (breach) note(breach, breachText(breach, card))
       cards.push(card)
+    }
+    if (end >= 0) {
+      const size = Math.ceil((at + end + CARD_SIZE - start) / BLOCK_SIZE) * BLOCK_SIZE
+      return { header: headerOf(joinContinued(cards)), size, notes: notesOf(seen, cards) }
     }
     if (cards.length > MOST_CARDS) {
       const message = `header requires an END card within ${MOST_CARDS} cards, got none`
@@ -67,9 +73,15 @@ export function readHeader(source: ByteSource, start: number, hdu: number): Head
   }
 }
 
-function isEnd(text: string, i: number): boolean {
-  if (text.charCodeAt(i) !== 69 || !text.startsWith('END', i)) return false
-  return text.slice(i + 3, i + 8).trim() === ''
+const [LETTER_E, LETTER_N, LETTER_D] = [69, 78, 68]
+
+/** Where the END card begins among whole cards, or -1. */
+function endCard(bytes: Uint8Array): number {
+  for (let i = 0; i < bytes.length; i += CARD_SIZE) {
+    if (bytes[i] !== LETTER_E || bytes[i + 1] !== LETTER_N || bytes[i + 2] !== LETTER_D) continue
+    if (bytes.subarray(i + 3, i + 8).every((byte) => byte === 32 || byte === 0)) return i
+  }
+  return -1
 }
 
 function truncated(source: ByteSource, start: number, hdu: number): FormatError {
