@@ -98,11 +98,25 @@ export interface LogEntry {
   readonly setup: string
 }
 
+/** One row of what to observe again, the most urgent first. */
+export interface ObserveAgain {
+  readonly target: string
+  readonly listed?: Target
+  /** One sentence without full stop. */
+  readonly reason: string
+  /** Seconds still to be exposed. */
+  readonly exposureNeeded?: number
+  /** 0 to 1. */
+  readonly urgency: number
+}
+
 export interface NightSummary {
   readonly spectra: readonly SpectrumNight[]
   readonly targets: readonly TargetSummary[]
   /** Listed but without any spectrum. */
   readonly notObserved: readonly Target[]
+  /** Targets of the list never observed and targets to be observed again, the most urgent first. */
+  readonly observeAgain?: readonly ObserveAgain[]
   readonly cover: readonly SetupCover[]
   readonly drifts: readonly Drift[]
   readonly log: readonly LogEntry[]

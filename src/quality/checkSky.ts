@@ -81,7 +81,7 @@ function checkOxygen(input: SpectrumInput, samples: Samples, limit: Limits): Fin
       : []
   })
   const present = depths.filter(({ depth }) => depth > limit('telluricDepth'))
-  const over = isMolecular
+  const over = molecular
     ? []
     : depths.filter(({ depth, error }) => depth < -limit('telluricResidual') && depth < -5 * error)
   const words = (list: typeof depths): string =>
