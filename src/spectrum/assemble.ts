@@ -13,6 +13,8 @@ export interface SpectrumContext {
   readonly factNotes: readonly Note[]
   readonly frame: VelocityFrame
   readonly role: Spectrum['role']
+  /** First and last wavelength [Å] of all spectra that are stored with this one. */
+  readonly span: readonly [number, number]
 }
 
 /** Fewest zeros in a row at an end that count as padding. */
@@ -26,13 +28,11 @@ export function assemble(found: FoundSpectrum, context: SpectrumContext): Spectr
   const notes: Note[] = [...found.axis.notes, ...found.notes]
   const order = increasingOrder(found.axis.wavelength, notes)
   const { wavelength: stored } = found.axis
-  const first = stored[order.all[0]]
-  const last = stored[order.all[order.all.length - 1]]
   const declared = {
     ...(found.axis.medium === undefined ? {} : { medium: found.axis.medium }),
     ...(found.axis.mediumFrom === undefined ? {} : { from: found.axis.mediumFrom }),
   }
-  const medium = decideMedium(found.headers, declared, found.label, [first, last])
+  const medium = decideMedium(found.headers, declared, found.label, { range: context.span, unit: found.fluxUnit })
   notes.push(...medium.notes)
 
   const kept = order.unique

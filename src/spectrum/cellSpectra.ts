@@ -7,6 +7,7 @@ import type { RoledColumn } from './columnRoles.ts'
 import { companionAxis } from './companion.ts'
 import { headersOf, placeWords } from './container.ts'
 import type { Container, HduAnswer } from './container.ts'
+import { fluxUnitCard } from './fluxUnit.ts'
 import type { FoundSpectrum } from './found.ts'
 import { headerAxis } from './headerAxis.ts'
 import type { WavelengthLabel } from './medium.ts'
@@ -107,7 +108,7 @@ function cellRow(
       axis: shown,
       label,
       flux: slice(values, plane),
-      fluxUnit: flux.unit,
+      fluxUnit: flux.unit || fluxUnitCard(headers),
       ...(isNormalised ? { isNormalised: true } : {}),
       ...(errors && errorValues && errorValues.length === values.length
         ? { uncertainty: { values: slice(errorValues, plane), kind: errors.kind } }
@@ -227,6 +228,6 @@ function cellCards(container: Container, hdu: Hdu, flux: Column, length: number)
     const translated = { cards: headers[0].cards, get: (keyword: string) => headers[0].get(names[keyword] ?? keyword) }
     return headerAxis([translated], 1, length)
   }
-  const owner = headers.find((header) => header.get('CRVAL1') ?? header.get('COEFF0'))
-  return owner && headerAxis([owner], 1, length)
+  const own = headers[0]
+  return (own.get('CRVAL1') ?? own.get('COEFF0')) && headerAxis([own], 1, length)
 }

@@ -32,7 +32,7 @@ export function companionAxis(
   const own =
     images.find((hdu) => namePrefix(hdu.name) === prefix) ??
     (prefix === '' ? images[0] : images.find((hdu) => namePrefix(hdu.name) === ''))
-  if (own) return imageAxis(container.source, own, length, row)
+  if (own) return imageAxis(container, own, length, row)
   const inTable = tableAxis(container.file, container.source, owner, length)
   if (inTable) return inTable
   const { companion } = container
@@ -42,7 +42,7 @@ export function companionAxis(
     companion.file.hdus.find((hdu) => isImage(hdu) && hdu.dimensions[0] === length)
   const answer =
     tableAxis(companion.file, companion.source, undefined, length) ??
-    (image && imageAxis(companion.source, image, length, row))
+    (image && imageAxis(companion, image, length, row))
   return answer && 'axis' in answer
     ? { ...answer, axis: { ...answer.axis, words: `${answer.axis.words} of the companion file` } }
     : answer
@@ -64,18 +64,28 @@ function wavelengthRole(hdu: Hdu): PlaneRole | undefined {
   return planeRole(prefix === '' ? hdu.name : hdu.name.slice(prefix.length + 1)) ?? planeRole(hdu.name)
 }
 
-function imageAxis(source: ByteSource, hdu: Hdu, length: number, row: number): CompanionAnswer {
+function imageAxis(
+  { file, source }: Pick<Container, 'file' | 'source'>,
+  hdu: Hdu,
+  length: number,
+  row: number,
+): CompanionAnswer {
   const rows = hdu.dimensions.slice(1).reduce((product, n) => product * n, 1)
   const values = readImage(source, hdu, { start: row < rows ? row * length : 0, count: length })
   const name = hdu.name === '' ? `HDU ${hdu.index}` : `extension ${hdu.name}`
   const answer = listedAxis(values, {
     name,
-    unit: cardText([hdu.header], 'BUNIT') ?? cardText([hdu.header], 'CUNIT1') ?? '',
+    unit: cardText([hdu.header], 'BUNIT') ?? cardText([hdu.header], 'CUNIT1') ?? listedUnit(file) ?? '',
     role: wavelengthRole(hdu) ?? 'wavelength',
     keyword: 'BUNIT',
   })
   if ('refusal' in answer) return { refusal: { ...answer.refusal, hdu: hdu.index } }
   return { axis: answer.axis, label: { name: hdu.name, ucd: '', utype: '' }, hdu: hdu.index }
+}
+
+/** Unit of the wavelengths from a card that lists the units of all planes, such as `UNITS = {"wave": "Angstrom"}`. */
+function listedUnit({ hdus }: FitsFile): string | undefined {
+  return /"wave(?:length)?"\s*:\s*"([^"]+)"/i.exec(cardText([hdus[0].header], 'UNITS') ?? '')?.[1]
 }
 
 function tableAxis(

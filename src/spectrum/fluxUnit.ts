@@ -1,3 +1,5 @@
+import { cardText } from './cards.ts'
+import type { Headers } from './cards.ts'
 import type { FluxKind } from './types.ts'
 
 /** Words that mean a flux per unit of wavelength, frequency or photon, per area and time. */
@@ -17,4 +19,13 @@ export function fluxKindOf(unit: string): FluxKind {
 /** True for a unit that a flux may have, as against one of length, time or angle. */
 export function isFluxUnit(unit: string): boolean {
   return fluxKindOf(unit) === 'flux density' || fluxKindOf(unit) === 'counts'
+}
+
+/** Unit of the flux, from BUNIT and its like. */
+export function fluxUnitCard(headers: Headers): string {
+  for (const keyword of ['BUNIT', 'FLUXUNIT', 'FLXUNIT', 'DATAUNIT']) {
+    const text = cardText([headers[0]], keyword) ?? cardText(headers, keyword)
+    if (text !== undefined) return text
+  }
+  return ''
 }

@@ -9,6 +9,7 @@ import { companionAxis } from './companion.ts'
 import { headersOf, placeWords, refused } from './container.ts'
 import type { Container, HduAnswer } from './container.ts'
 import type { FoundSpectrum } from './found.ts'
+import { fluxUnitCard } from './fluxUnit.ts'
 import { headerAxis, isOtherAxis } from './headerAxis.ts'
 import { imagePlanes } from './imagePlanes.ts'
 import type { ImagePlanes } from './imagePlanes.ts'
@@ -149,7 +150,7 @@ function planeRows(container: Container, hdu: Hdu, headers: Headers, shape: Imag
     axis: answer.axis,
     ...(label ? { label } : {}),
     flux: readRow(container, hdu, shape, at('flux')),
-    fluxUnit: fluxUnit(headersOf(container.file, hdu)),
+    fluxUnit: fluxUnitCard(headersOf(container.file, hdu)),
     ...(errors !== undefined && kind ? { uncertainty: { values: readRow(container, hdu, shape, errors), kind } } : {}),
     ...(sky >= 0 ? { sky: readRow(container, hdu, shape, sky) } : {}),
     headers: headersOf(container.file, hdu),
@@ -157,15 +158,6 @@ function planeRows(container: Container, hdu: Hdu, headers: Headers, shape: Imag
     notes,
   }
   return { spectra: [found], refusals: [], notes: [] }
-}
-
-/** Unit of the flux, from BUNIT and its like. */
-export function fluxUnit(headers: Headers): string {
-  for (const keyword of ['BUNIT', 'FLUXUNIT', 'FLXUNIT', 'DATAUNIT']) {
-    const text = cardText([headers[0]], keyword) ?? cardText(headers, keyword)
-    if (text !== undefined) return text
-  }
-  return ''
 }
 
 function apertureRows(container: Container, hdu: Hdu, headers: Headers, shape: ImageShape, why: string): HduAnswer {
@@ -230,7 +222,7 @@ function apertureRow(
     axis,
     ...(label ? { label } : {}),
     flux: readRow(container, hdu, shape, row, length),
-    fluxUnit: fluxUnit(headers),
+    fluxUnit: fluxUnitCard(headers),
     ...(role === 'normalised' ? { isNormalised: true } : {}),
     ...(uncertainty ? { uncertainty } : {}),
     ...(flags ? { flags } : {}),

@@ -31,6 +31,12 @@ const CUSTOMS: readonly (readonly [string, RegExp, Medium, string])[] = [
     'the instrument gives air wavelengths by custom',
   ],
 ]
+/** Cards by which files of reduction software are known that gives vacuum wavelengths unless told otherwise. */
+const PRODUCERS: readonly (readonly [string, RegExp])[] = [
+  ['UNITS', /"wave"\s*:\s*"/],
+  ['BINSPEC', /^\d+$/],
+  ['PYP_SPEC', /./],
+]
 /** Published libraries by a reference in their headers. */
 const LIBRARIES: readonly (readonly [RegExp, Medium, string])[] = [
   [/1998PASP\.\.110\.\.863P|1998, ?PASP,? ?110, ?863/, 'air', 'Pickles 1998 gives wavelengths in air'],
@@ -42,13 +48,14 @@ const LIBRARIES: readonly (readonly [RegExp, Medium, string])[] = [
  * last from the custom of ground-based optical spectra, air. Every guess carries a note.
  *
  * @param declared  what the axis itself declares (a Paper III code), with its card
- * @param range     first and last wavelength [Å]
+ * @param range     first and last wavelength [Å] of all spectra stored together
+ * @param unit      of the flux, as the file writes it
  */
 export function decideMedium(
   headers: Headers,
   declared: { readonly medium?: Medium; readonly from?: string },
   label: WavelengthLabel | undefined,
-  range: readonly [number, number],
+  { range, unit }: { readonly range: readonly [number, number]; readonly unit: string },
 ): MediumAnswer {
   const stated = statedMedium(headers, declared, label)
   if (stated) return stated
@@ -66,7 +73,15 @@ export function decideMedium(
   if (IN_SPACE.test(telescope)) return guess('vacuum', `${telescope} observes above the air`)
   const custom = CUSTOMS.find(([keyword, pattern]) => pattern.test(cardText(headers, keyword) ?? ''))
   if (custom) return guess(custom[2], `${custom[3]} (${custom[0]} = ${cardText(headers, custom[0])})`)
-  const low = Math.min(...range)
+  if (/^(flam|fnu|photlam|photnu|stmag|abmag)$/i.test(unit.trim()))
+    return guess('vacuum', `the flux unit ${unit} is a custom of space telescopes, which give vacuum wavelengths`)
+  const mark = PRODUCERS.find(([keyword, pattern]) => pattern.test(cardText(headers, keyword) ?? ''))
+  if (mark)
+    return guess(
+      'vacuum',
+      `the software that leaves ${mark[0]} in the header gives vacuum wavelengths by its documentation`,
+    )
+  const low = range[0]
   if (low < 2000) return guess('vacuum', `the range begins below 2000 Å, where spectra are given in vacuum`)
   if (low > 10000) return guess('vacuum', `the range lies in the infrared, where spectra are given in vacuum by custom`)
   return guess('air', 'ground-based optical spectra are given in air by custom')

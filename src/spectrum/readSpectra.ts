@@ -41,6 +41,8 @@ export interface ReadOptions {
 
 /** More spectra than any multi-object spectrograph gives in one exposure. */
 const MOST_SPECTRA = 5000
+/** Fewest samples of a spectrum: the five or so filters of a photometric catalogue are none. */
+const FEWEST_SAMPLES = 10
 
 /**
  * The spectra of a file: of every image and table that holds a flux with wavelengths, each once, in the program's
@@ -68,11 +70,12 @@ export function readSpectra(file: FitsFile, source: ByteSource, options: ReadOpt
       notes.push({ code: 'spectra-limit', text: `reading stopped at ${container.most} spectra` })
       break
     }
-    const answer = hduSpectra(container, hdu)
+    const answer = withoutShort(hduSpectra(container, hdu))
     if (answer.isFrame) frame ??= hdu
     refusals.push(...answer.refusals)
     notes.push(...answer.notes)
-    for (const found of answer.spectra) spectra.push(finished(found, hdu, file, keywords))
+    const span = spanOf(answer.spectra)
+    for (const found of answer.spectra) spectra.push(finished(found, { hdu, file, keywords, span }))
   }
   const header = factHeaders(file, spectra[0]?.hdu ?? frame?.index ?? 0)
   const whole = readHeaderFacts(header, keywords)
@@ -86,6 +89,21 @@ export function readSpectra(file: FitsFile, source: ByteSource, options: ReadOpt
     ? { code: worst.code, message: worst.message, where: refusalPlace(worst, options) }
     : { code: 'no-data', message: 'file requires an image or a table with data, got none', where: placeOf(options) }
   return { ...result, ...(frame ? { frame2d: { hdu: frame.index } } : {}), error }
+}
+
+/** Leaves out what has too few samples to be a spectrum (the arrays of a catalogue), with the reason. */
+function withoutShort(answer: HduAnswer & { readonly isFrame?: boolean }): HduAnswer & { readonly isFrame?: boolean } {
+  const short = answer.spectra.filter(({ flux }) => flux.length < FEWEST_SAMPLES)
+  if (short.length === 0) return answer
+  const refusals = short.map(({ hdu, row, flux }): Refusal => ({
+    code: 'too-few-samples',
+    message: `spectrum requires at least ${FEWEST_SAMPLES} samples, got ${flux.length}`,
+    weight: 3,
+    hdu,
+    ...(row === undefined ? {} : { row }),
+  }))
+  const spectra = answer.spectra.filter(({ flux }) => flux.length >= FEWEST_SAMPLES)
+  return { ...answer, spectra, refusals: [...answer.refusals, ...refusals] }
 }
 
 function placeOf({ fileName }: ReadOptions): Place {
@@ -140,7 +158,26 @@ function hduSpectra(container: Container, hdu: Hdu): HduAnswer & { readonly isFr
   }
 }
 
-function finished(found: FoundSpectrum, hdu: Hdu, file: FitsFile, keywords: KeywordTable): Spectrum {
+function spanOf(spectra: readonly FoundSpectrum[]): readonly [number, number] {
+  let low = Infinity
+  let high = -Infinity
+  for (const { axis } of spectra) {
+    for (const value of axis.wavelength) {
+      if (value < low) low = value
+      if (value > high) high = value
+    }
+  }
+  return [low, high]
+}
+
+interface HduContext {
+  readonly hdu: Hdu
+  readonly file: FitsFile
+  readonly keywords: KeywordTable
+  readonly span: readonly [number, number]
+}
+
+function finished(found: FoundSpectrum, { hdu, file, keywords, span }: HduContext): Spectrum {
   const read = readHeaderFacts(found.headers, keywords)
   const frame = velocityFrame(found.headers, keywords)
   const facts: HeaderFacts = {
@@ -154,5 +191,6 @@ function finished(found: FoundSpectrum, hdu: Hdu, file: FitsFile, keywords: Keyw
     factNotes: [...hduNotes, ...frame.notes, ...read.notes],
     frame: frame.frame,
     role: found.role ?? spectrumRole(facts),
+    span,
   })
 }

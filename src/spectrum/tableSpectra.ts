@@ -9,6 +9,7 @@ import { headersOf, placeWords, refused } from './container.ts'
 import type { Container, HduAnswer } from './container.ts'
 import { flagsOf, pickErrors } from './tablePlanes.ts'
 import type { FoundSpectrum } from './found.ts'
+import { fluxUnitCard } from './fluxUnit.ts'
 import { fluxRank, plainName, planeRole } from './planeRole.ts'
 import { isEvenlySampled } from './sampling.ts'
 import type { Note } from '../findings/types.ts'
@@ -126,7 +127,7 @@ function readRows(
       axis,
       label: { name: wave.column.name, ucd: wave.column.ucd, utype: wave.column.utype },
       flux: read(column),
-      fluxUnit: column.unit,
+      fluxUnit: column.unit || fluxUnitCard(headers),
       ...(role === 'normalised' ? { isNormalised: true } : {}),
       ...(role === 'sky' ? { role: 'sky' as const } : {}),
       ...(errors ? { uncertainty: { values: read(errors.column), kind: errors.kind } } : {}),

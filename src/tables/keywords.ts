@@ -152,7 +152,6 @@ export const KEYWORDS: KeywordTable = {
       'CAT-NAME',
       'STARNAME',
       'DESIG',
-      'NAME',
       'TITLE',
     ),
     ra: [
