@@ -1,8 +1,9 @@
 import { gzipSync } from 'node:zlib'
 import { DEMO_INSTRUMENT, DEMO_SETUPS } from '../tables/demoNight.ts'
 import type { DemoForm, DemoSetupName } from '../tables/demoNight.ts'
+import { encodeFits } from '../fits/write.ts'
+import type { FitsCardInput } from '../fits/writeCard.ts'
 import { airToVacuum } from '../spectrum/air.ts'
-import { fitsBytes } from './fitsBytes.ts'
 import type { MadeCard } from './headers.ts'
 import type { QuickLook } from './quickLook.ts'
 
@@ -12,15 +13,21 @@ export interface DemoFile {
   readonly bytes: Uint8Array
 }
 
+function written(cards: readonly MadeCard[]): readonly FitsCardInput[] {
+  return cards.map(([keyword, value, comment]) => ({ keyword, value, ...(comment === undefined ? {} : { comment }) }))
+}
+
 /** Bytes of a raw frame: unsigned 16-bit counts in the primary image, dispersion along the rows. */
 export function rawFile(counts: Float64Array, cards: readonly MadeCard[]): Uint8Array {
   const { width, height, saturation } = DEMO_INSTRUMENT
-  return fitsBytes([
-    {
-      cards: [...cards, ['BUNIT', 'adu'], ['SATURATE', saturation, '[adu]'], ['DISPAXIS', 1, 'dispersion along rows']],
-      image: { bitpix: 16, dimensions: [width, height], values: counts, zero: 32768 },
-    },
-  ])
+  const own: readonly MadeCard[] = [
+    ...cards,
+    ['BUNIT', 'adu'],
+    ['SATURATE', saturation, '[adu]'],
+    ['DISPAXIS', 1, 'dispersion along rows'],
+  ]
+  const image = { kind: 'image', bitpix: 16, dimensions: [width, height], values: counts, zero: 32768 } as const
+  return encodeFits([{ ...image, cards: written(own) }])
 }
 
 /** Name of a quick-look file by its form. */
@@ -35,52 +42,62 @@ export function quickLookFile(
   form: DemoForm,
   cards: readonly MadeCard[],
 ): Uint8Array {
-  const { step, fwhm } = DEMO_SETUPS[setup]
-  const shared: MadeCard[] = [
+  const shared: readonly MadeCard[] = [
     ...cards,
     ['SPECSYS', 'TOPOCENT', 'no velocity taken out'],
-    ['FWHM_A', fwhm, '[Angstrom] width of arc lines'],
+    ['FWHM_A', DEMO_SETUPS[setup].fwhm, '[Angstrom] width of arc lines'],
     ['SATURATE', Number(look.ceiling.toFixed(0)), '[adu] extracted counts at saturation'],
   ]
-  if (form === 'image' || form === 'image with sigma') {
-    const axis: MadeCard[] = [
-      ['CTYPE1', 'AWAV', 'wavelength in air'],
-      ['CUNIT1', 'Angstrom'],
-      ['CRPIX1', 1],
-      ['CRVAL1', look.wavelength[0]],
-      ['CDELT1', step],
-    ]
-    const plane = (values: Float64Array) => ({ bitpix: -32 as const, dimensions: [values.length], values })
-    const primary = { cards: [...shared, ['BUNIT', 'adu'] as const, ...axis], image: plane(look.flux) }
-    if (form === 'image') return fitsBytes([primary])
-    const extension = (name: string, values: Float64Array) => ({
-      cards: [['EXTNAME', name] as const, ['BUNIT', 'adu'] as const, ...axis],
-      image: plane(values),
-    })
-    return fitsBytes([primary, extension('SIGMA', look.sigma), extension('SKY', look.sky)])
-  }
-  const inVacuum = form === 'vacuum table'
-  const wavelength = inVacuum ? look.wavelength.map((x) => airToVacuum(x)) : look.wavelength
-  const bytes = fitsBytes([
-    { cards: shared },
+  if (form === 'image' || form === 'image with sigma') return imageFile(look, setup, form, shared)
+  const bytes = tableFile(look, form === 'vacuum table', shared)
+  return form === 'gzip' ? new Uint8Array(gzipSync(bytes, { level: 9 })) : bytes
+}
+
+function imageFile(
+  look: QuickLook,
+  setup: DemoSetupName,
+  form: 'image' | 'image with sigma',
+  shared: readonly MadeCard[],
+): Uint8Array {
+  const axis: readonly MadeCard[] = [
+    ['BUNIT', 'adu'],
+    ['CTYPE1', 'AWAV', 'wavelength in air'],
+    ['CUNIT1', 'Angstrom'],
+    ['CRPIX1', 1],
+    ['CRVAL1', look.wavelength[0]],
+    ['CDELT1', DEMO_SETUPS[setup].step],
+  ]
+  const plane = (values: Float64Array, cards: readonly MadeCard[], name?: string) =>
+    ({
+      kind: 'image',
+      bitpix: -32,
+      dimensions: [values.length],
+      values,
+      cards: written(cards),
+      ...(name === undefined ? {} : { name }),
+    }) as const
+  const primary = plane(look.flux, [...shared, ...axis])
+  if (form === 'image') return encodeFits([primary])
+  return encodeFits([primary, plane(look.sigma, axis, 'SIGMA'), plane(look.sky, axis, 'SKY')])
+}
+
+function tableFile(look: QuickLook, inVacuum: boolean, shared: readonly MadeCard[]): Uint8Array {
+  const wavelength = {
+    name: 'WAVELENGTH',
+    letter: 'D',
+    unit: 'Angstrom',
+    ucd: inVacuum ? 'em.wl' : 'em.wl;obs.atmos',
+    values: inVacuum ? look.wavelength.map((x) => airToVacuum(x)) : look.wavelength,
+  } as const
+  const counts = (name: string, values: Float64Array) => ({ name, letter: 'E', unit: 'adu', values }) as const
+  return encodeFits([
+    { kind: 'image', bitpix: 8, dimensions: [], cards: written(shared) },
     {
-      cards: [
-        ['EXTNAME', 'SPECTRUM'],
-        ['VACUUM', inVacuum, 'wavelengths in vacuum'],
-      ],
-      columns: [
-        {
-          name: 'WAVELENGTH',
-          letter: 'D',
-          unit: 'Angstrom',
-          ucd: inVacuum ? 'em.wl' : 'em.wl;obs.atmos',
-          values: wavelength,
-        },
-        { name: 'FLUX', letter: 'E', unit: 'adu', values: look.flux },
-        { name: 'SIGMA', letter: 'E', unit: 'adu', values: look.sigma },
-        { name: 'SKY', letter: 'E', unit: 'adu', values: look.sky },
-      ],
+      kind: 'table',
+      name: 'SPECTRUM',
+      rows: look.flux.length,
+      columns: [wavelength, counts('FLUX', look.flux), counts('SIGMA', look.sigma), counts('SKY', look.sky)],
+      cards: written([['VACUUM', inVacuum, 'wavelengths in vacuum']]),
     },
   ])
-  return form === 'gzip' ? new Uint8Array(gzipSync(bytes, { level: 9 })) : bytes
 }
