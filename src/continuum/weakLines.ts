@@ -23,6 +23,9 @@ const STRONG = 4
 /** The level is raised by no more than this; where it should be, it is a pseudo-continuum. */
 export const GREATEST_RISE = 0.04
 
+/** Beyond this share it is no longer weak lines that crowd. */
+const MOST_TAKEN = 0.15
+
 export interface WeakLines {
   /** ln λ of the middles of the blocks. */
   readonly place: Float64Array
@@ -208,5 +211,5 @@ function shareTaken(integral: number): number {
   for (let k = 0; k < 6; k++)
     root -=
       (root * root * (FAINTEST + GROWTH * root) - integral) / (2 * FAINTEST * root + 3 * GROWTH * root * root + 1e-12)
-  return Math.min(0.5, root * root)
+  return Math.min(MOST_TAKEN, root * root)
 }

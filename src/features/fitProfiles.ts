@@ -1,5 +1,6 @@
-import { type Fit, levenbergMarquardt } from '../numeric/levenbergMarquardt.ts'
+import { type Model, levenbergMarquardt } from '../numeric/levenbergMarquardt.ts'
 import { PARAMETERS, type ProfileShape, profile, profileArea, profileFwhm } from '../numeric/profiles.ts'
+import { FWHM_PER_SIGMA } from '../numeric/smoothToFwhm.ts'
 import { type Pixels, firstPixelAbove } from './pixels.ts'
 
 /** A line to be fitted: where it should be [Å, observed frame], its shape and a first width. */
@@ -10,6 +11,10 @@ export interface ProfileStart {
   readonly fwhm: number
   /** Å: the fitted centre may lie this far from the first one. */
   readonly reach: number
+  /** Å: no line is taken to be wider, FWHM. */
+  readonly widest: number
+  /** What is fitted: all, all but the widths, or the depth alone; the rest stays at its first value. */
+  readonly free: 'all' | 'centre' | 'depth'
 }
 
 /** A fitted line [Å, observed frame]. */
@@ -24,6 +29,7 @@ export interface FittedProfile {
   readonly fwhmErr: number
   readonly depth: number
   readonly depthErr: number
+  readonly free: ProfileStart['free']
 }
 
 export interface ProfileFit {
@@ -49,10 +55,12 @@ export function fitProfiles(
   while (end < pixels.lower.length && pixels.upper[end] <= hi) end++
   const n = end - first
   const offsets: number[] = []
+  const free: number[] = []
   let p = 0
-  for (const { shape } of starts) {
+  for (const one of starts) {
     offsets.push(p)
-    p += PARAMETERS[shape]
+    for (let j = 0; j < PARAMETERS[one.shape]; j++) if (j <= LAST_FREE[one.free]) free.push(p + j)
+    p += PARAMETERS[one.shape]
   }
   const y = new Float64Array(n)
   const weight = new Float64Array(n)
@@ -65,36 +73,71 @@ export function fitProfiles(
     weight[i] = 1 / pixels.noise[first + i] ** 2
     used++
   }
-  if (used < p + 1) return undefined
+  if (used < free.length + 1) return undefined
   const start = firstParameters(pixels, starts, offsets, p)
+  const whole = start.slice()
   const scratch = new Float64Array(5)
+  const derivatives = new Float64Array(p)
   const model = (parameters: Float64Array, values: Float64Array, jacobian: Float64Array): void => {
+    for (let j = 0; j < free.length; j++) whole[free[j]] = parameters[j]
     for (let i = 0; i < n; i++) {
       values[i] = 0
       if (weight[i] === 0) continue
       const x = pixels.wavelength[first + i]
       for (let k = 0; k < starts.length; k++) {
-        const count = PARAMETERS[starts[k].shape]
-        profile(starts[k].shape, x, parameters, offsets[k], scratch)
+        profile(starts[k].shape, x, whole, offsets[k], scratch)
         values[i] += scratch[0]
-        for (let j = 0; j < count; j++) jacobian[i * p + offsets[k] + j] = scratch[j + 1]
+        for (let j = 0; j < PARAMETERS[starts[k].shape]; j++) derivatives[offsets[k] + j] = scratch[j + 1]
       }
+      for (let j = 0; j < free.length; j++) jacobian[i * free.length + j] = derivatives[free[j]]
     }
   }
-  const accept = (parameters: Float64Array): boolean => {
-    for (let k = 0; k < starts.length; k++) {
-      const at = offsets[k]
-      const width = parameters[at + 2]
-      if (!(Math.abs(parameters[at + 1] - starts[k].centre) <= starts[k].reach)) return false
-      if (!(width > 0.2 * step && width < hi - lo) || !(parameters[at] < 3)) return false
-      if (starts[k].shape === 'voigt' && !(parameters[at + 3] >= 0 && parameters[at + 3] < hi - lo)) return false
-    }
-    return true
-  }
-  const fit = levenbergMarquardt(model, y, weight, { start, accept })
+  const bounds = parameterBounds(starts, offsets, p, step)
+  const lower = Float64Array.from(free, (j) => bounds[j][0])
+  const upper = Float64Array.from(free, (j) => bounds[j][1])
+  const fit = levenbergMarquardt(model, y, weight, { start: Float64Array.from(free, (j) => start[j]), lower, upper })
   if (!fit.converged || !Number.isFinite(fit.covariance[0])) return undefined
-  return describe(fit, { starts, offsets, weight, pixels, first, model, degreesOfFreedom: used - p })
+  for (let j = 0; j < free.length; j++) {
+    const [least, most, mayRest] = bounds[free[j]]
+    const value = fit.parameters[j]
+    if (!mayRest && (value <= least || value >= most)) return undefined
+    whole[free[j]] = value
+  }
+  const covariance = new Float64Array(p * p)
+  for (let a = 0; a < free.length; a++)
+    for (let b = 0; b < free.length; b++) covariance[free[a] * p + free[b]] = fit.covariance[a * free.length + b]
+  const pull = continuumPull(fit.parameters, { weight, pixels, first, model })
+  const wholePull = new Float64Array(p)
+  for (let j = 0; j < free.length; j++) wholePull[free[j]] = pull[j]
+  const degreesOfFreedom = used - free.length
+  return describe({
+    starts,
+    offsets,
+    parameters: whole,
+    covariance,
+    pull: wholePull,
+    chiSquare: fit.chiSquare,
+    degreesOfFreedom,
+  })
 }
+
+/** Least and greatest value of every parameter, and whether a fit may come to rest there. */
+function parameterBounds(starts: readonly ProfileStart[], offsets: readonly number[], size: number, step: number) {
+  const bounds = new Array<readonly [number, number, boolean]>(size).fill([-Infinity, 2, false])
+  starts.forEach(({ centre, shape, reach, widest }, k) => {
+    const at = offsets[k]
+    bounds[at + 1] = [centre - reach, centre + reach, false]
+    bounds[at + 2] = [0.2 * step, shape === 'lorentzian' ? widest / 2 : widest / FWHM_PER_SIGMA, false]
+    if (shape === 'voigt') {
+      bounds[at + 2] = [0.2 * step, widest / FWHM_PER_SIGMA, true]
+      bounds[at + 3] = [0, widest, true]
+    }
+  })
+  return bounds
+}
+
+/** Last parameter of a line (depth, centre, widths) that is fitted. */
+const LAST_FREE = { all: 3, centre: 1, depth: 0 } as const
 
 function firstParameters(
   pixels: Pixels,
@@ -117,7 +160,7 @@ function firstParameters(
     const o = offsets[k]
     parameters[o] = Math.abs(depth) < 1e-3 ? 1e-3 : Math.min(depth, 2)
     parameters[o + 1] = centre
-    parameters[o + 2] = shape === 'lorentzian' ? fwhm / 2 : fwhm / 2.3548 / (shape === 'voigt' ? 1.6 : 1)
+    parameters[o + 2] = shape === 'lorentzian' ? fwhm / 2 : fwhm / FWHM_PER_SIGMA / (shape === 'voigt' ? 1.6 : 1)
     if (shape === 'voigt') parameters[o + 3] = fwhm / 4
   }
   return parameters
@@ -126,20 +169,19 @@ function firstParameters(
 interface Fitted {
   readonly starts: readonly ProfileStart[]
   readonly offsets: readonly number[]
-  readonly weight: Float64Array
-  readonly pixels: Pixels
-  readonly first: number
-  readonly model: (parameters: Float64Array, values: Float64Array, jacobian: Float64Array) => void
+  readonly parameters: Float64Array
+  /** 0 where a parameter was not fitted. */
+  readonly covariance: Float64Array
+  readonly pull: Float64Array
+  readonly chiSquare: number
   readonly degreesOfFreedom: number
 }
 
-function describe(fit: Fit, { starts, offsets, weight, pixels, first, model, degreesOfFreedom }: Fitted): ProfileFit {
-  const { parameters, covariance, chiSquare } = fit
+function describe({ starts, offsets, parameters, covariance, pull, chiSquare, degreesOfFreedom }: Fitted): ProfileFit {
   const p = parameters.length
   const excess = chiSquare / degreesOfFreedom
   const scale = excess > 1 + BAD_FIT * Math.sqrt(2 / degreesOfFreedom) ? Math.sqrt(excess) : 1
-  const pull = continuumPull(parameters, { weight, pixels, first, model })
-  const lines = starts.map(({ shape }, k) => {
+  const lines = starts.map(({ shape, free }, k) => {
     const at = offsets[k]
     const gradient = areaGradient(shape, parameters, at)
     let variance = 0
@@ -162,16 +204,21 @@ function describe(fit: Fit, { starts, offsets, weight, pixels, first, model, deg
       fwhmErr: (sd(2) * fwhm) / parameters[at + 2],
       depth: parameters[at],
       depthErr: sd(0),
+      free,
     }
   })
   return { lines, chiSquare, degreesOfFreedom }
 }
 
+interface Fitting {
+  readonly weight: Float64Array
+  readonly pixels: Pixels
+  readonly first: number
+  readonly model: Model
+}
+
 /** Jᵀ W δ, where δ is what a level too high by its 1 σ adds to 1 − F/Fc. */
-function continuumPull(
-  parameters: Float64Array,
-  { weight, pixels, first, model }: Pick<Fitted, 'weight' | 'pixels' | 'first' | 'model'>,
-): Float64Array {
+function continuumPull(parameters: Float64Array, { weight, pixels, first, model }: Fitting): Float64Array {
   const n = weight.length
   const p = parameters.length
   const jacobian = new Float64Array(n * p)

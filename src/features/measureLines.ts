@@ -2,9 +2,9 @@ import type { Continuum } from '../continuum/types.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 import type { SpectralLine } from '../tables/types.ts'
 import type { RestFrame } from '../velocity/types.ts'
-import { type FittedProfile, fitProfiles } from './fitProfiles.ts'
+import { type FittedProfile, type ProfileFit, type ProfileStart, fitProfiles } from './fitProfiles.ts'
 import { type Integral, integrateLine } from './integrateLine.ts'
-import { type Pixels, pixelsOf } from './pixels.ts'
+import { type Pixels, pixelsOf, windowMean } from './pixels.ts'
 import type { Measurement } from './types.ts'
 
 export interface LineOptions {
@@ -103,15 +103,10 @@ function fitGroups(
       Math.min(...members.map((k) => placed[k].window[0])),
       Math.max(...members.map((k) => placed[k].window[1])),
     ] as const
-    const result = fitProfiles(
+    const result = fitMembers(
       pixels,
       span,
-      members.map((k) => ({
-        centre: placed[k].centre,
-        shape: placed[k].line.profile ?? 'gaussian',
-        fwhm: placed[k].line.profile === 'voigt' ? Math.max(placed[k].fwhm, (span[1] - span[0]) / 8) : placed[k].fwhm,
-        reach: Math.max(placed[k].fwhm, 2),
-      })),
+      members.map((k) => ({ one: placed[k], area: integrals[k].area })),
     )
     members.forEach((k, j) => {
       if (result) fits[k] = { fit: result.lines[j], together: members.length }
@@ -119,6 +114,40 @@ function fitGroups(
     from = to
   }
   return fits
+}
+
+/** A line whose core is weaker than this many σ has its depth alone fitted, at the place and width expected. */
+const FREE_FIT = 5
+
+/** km/s: lines are not taken to be broader than this by themselves (the fastest rotators have half of it). */
+const BROADEST = 700
+
+/** All parameters free for lines that stand out; where that fails, the widths fixed, then the places too. */
+function fitMembers(
+  pixels: Pixels,
+  span: readonly [number, number],
+  members: readonly { readonly one: Placed; readonly area: number }[],
+): ProfileFit | undefined {
+  const outlook = members.map(({ one, area }) => {
+    const core = windowMean(pixels, one.centre - one.fwhm / 2, one.centre + one.fwhm / 2)
+    const depth = 1 - core.mean
+    const broad = one.line.profile === 'voigt'
+    const width = one.window[1] - one.window[0]
+    return {
+      centre: one.centre,
+      shape: one.line.profile ?? ('gaussian' as const),
+      fwhm: broad && area * depth > 0 ? Math.min(width / 2, Math.max(one.fwhm, (0.75 * area) / depth)) : one.fwhm,
+      reach: Math.max(one.fwhm, 2),
+      widest: broad ? width : Math.hypot(one.fwhm, (one.centre * BROADEST) / CLIGHT),
+      weak: Math.abs(depth) < FREE_FIT * Math.sqrt(core.variance),
+    }
+  })
+  for (const free of ['all', 'centre', 'depth'] as const) {
+    const starts = outlook.map((one): ProfileStart => ({ ...one, free: one.weak ? 'depth' : free }))
+    const result = fitProfiles(pixels, span, starts)
+    if (result) return result
+  }
+  return undefined
 }
 
 /** Of lines within one FWHM, the first in the list stands for all. */
@@ -189,17 +218,19 @@ function fromFit(one: Placed, integral: Integral, result: GroupFit | undefined):
   const ewErrNoise = fit.errNoise / stretch
   const ewErrContinuum = fit.errContinuum / stretch
   const ewErr = Math.hypot(ewErrNoise, ewErrContinuum)
-  return {
+  const found = {
     ...base(one, method),
     ew,
     ewErrNoise,
     ewErrContinuum,
     ewErr,
     ...judged(one, ew, ewErr),
-    centre: fit.centre / stretch,
-    centreErr: fit.centreErr / stretch,
-    fwhm: fit.fwhm / stretch,
     depth: fit.depth,
+  }
+  return {
+    ...found,
+    ...(fit.free === 'depth' ? {} : { centre: fit.centre / stretch, centreErr: fit.centreErr / stretch }),
+    ...(fit.free === 'all' ? { fwhm: fit.fwhm / stretch } : {}),
   }
 }
 

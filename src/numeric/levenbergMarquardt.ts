@@ -17,7 +17,9 @@ export interface Fit {
 }
 
 const FIRST_DAMPING = 1e-3
-const TOLERANCE = 1e-5
+const TOLERANCE = 1e-4
+/** No step, however short, makes the fit better: it stands at its minimum, or at a bound. */
+const LARGEST_DAMPING = 1e7
 
 /**
  * Weighted least-squares fit by the Levenberg–Marquardt method with Marquardt's scaling (Marquardt 1963, J. SIAM 11,
@@ -26,7 +28,8 @@ const TOLERANCE = 1e-5
  * @param y       shape (n), finite
  * @param weight  shape (n), inverse variances; 0 leaves a point out
  * @param start   first parameters, shape (p)
- * @param accept  false where parameters are out of bounds; such a step is not taken
+ * @param lower   least value of every parameter; a parameter whose way down leads beyond it rests there
+ * @param upper   greatest value of every parameter, likewise
  */
 export function levenbergMarquardt(
   model: Model,
@@ -34,11 +37,13 @@ export function levenbergMarquardt(
   weight: Float64Array,
   {
     start,
-    accept = () => true,
+    lower,
+    upper,
     maxIterations = 30,
   }: {
     readonly start: ArrayLike<number>
-    readonly accept?: (parameters: Float64Array) => boolean
+    readonly lower?: Float64Array
+    readonly upper?: Float64Array
     readonly maxIterations?: number
   },
 ): Fit {
@@ -51,6 +56,7 @@ export function levenbergMarquardt(
   const normal = new Float64Array(p * p)
   const damped = new Float64Array(p * p)
   const gradient = new Float64Array(p)
+  const pushed = new Float64Array(p)
   model(parameters, values, jacobian)
   const residual = new Float64Array(n)
   let chiSquare = residuals(y, values, weight, residual)
@@ -63,11 +69,21 @@ export function levenbergMarquardt(
   while (iterations < maxIterations && !converged) {
     iterations++
     damped.set(normal)
-    for (let j = 0; j < p; j++) damped[j * p + j] *= 1 + damping
-    const step = solvePositive(damped, gradient)
-    if (step) for (let j = 0; j < p; j++) trial[j] = parameters[j] + step[j]
+    pushed.set(gradient)
+    for (let j = 0; j < p; j++) {
+      damped[j * p + j] *= 1 + damping
+      const down = lower && parameters[j] <= lower[j] && gradient[j] < 0
+      const up = upper && parameters[j] >= upper[j] && gradient[j] > 0
+      if (down || up) hold(damped, pushed, j)
+    }
+    const step = solvePositive(damped, pushed)
     let better = false
-    if (step && accept(trial)) {
+    if (step) {
+      for (let j = 0; j < p; j++) {
+        trial[j] = parameters[j] + step[j]
+        if (lower && trial[j] < lower[j]) trial[j] = lower[j]
+        if (upper && trial[j] > upper[j]) trial[j] = upper[j]
+      }
       model(trial, values, trialJacobian)
       const trialChiSquare = residuals(y, values, weight, trialResidual)
       if (trialChiSquare <= chiSquare) {
@@ -81,10 +97,18 @@ export function levenbergMarquardt(
       }
     }
     damping = better ? damping / 10 : damping * 8
-    if (damping > 1e8) break
+    if (damping > LARGEST_DAMPING) converged = true
   }
   const covariance = choleskyInverse(normal, p) ?? new Float64Array(p * p).fill(NaN)
   return { parameters, covariance, chiSquare, iterations, converged }
+}
+
+/** Takes parameter j out of the step: its equation becomes step_j = 0. */
+function hold(matrix: Float64Array, right: Float64Array, j: number): void {
+  const p = right.length
+  for (let k = 0; k < p; k++) matrix[j * p + k] = matrix[k * p + j] = 0
+  matrix[j * p + j] = 1
+  right[j] = 0
 }
 
 function residuals(y: Float64Array, values: Float64Array, weight: Float64Array, out: Float64Array): number {

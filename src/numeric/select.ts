@@ -25,7 +25,13 @@ export function selectInPlace(values: Float64Array, count: number, k: number): n
   return values[k]
 }
 
-/** Median of the first `count` values (the upper of the middle two); partly sorts them. NaN when there is none. */
+/** Median of the first `count` values, the mean of the middle two for an even count; partly sorts them. NaN for none. */
 export function medianInPlace(values: Float64Array, count: number): number {
-  return count > 0 ? selectInPlace(values, count, count >> 1) : NaN
+  if (count === 0) return NaN
+  const half = count >> 1
+  const upper = selectInPlace(values, count, half)
+  if (count & 1) return upper
+  let lower = values[0]
+  for (let i = 1; i < half; i++) if (values[i] > lower) lower = values[i]
+  return 0.5 * (lower + upper)
 }
