@@ -22,10 +22,10 @@ export function drawFirstPage(face: Typeface, flow: Flow, view: TargetView): voi
     .wrap(face.clean(capital(verdict.sentence)), flow.width - 10, { size: 12, weight: 'bold' })
     .slice(0, 3)
   flow.area(lines.length * 15 + 8, (area) => [sentence(face, area, lines)])
-  flow.area(66, (area) => answers(face, area, verdict.answers))
+  flow.area(76, (area) => answers(face, area, verdict.answers))
   const { spectrum } = view.exposures[view.best]
   const room = flow.room()
-  const bottom = 148
+  const bottom = view.type.grid ? 148 : 90
   const upper = room - bottom - 24
   flow.area(upper * 0.38, (area) => [spectrumFigure(face, area, spectrum)])
   flow.space(12)
@@ -95,8 +95,8 @@ function answers(face: Typeface, area: Area, given: readonly Answer[]): Block[] 
     const lines = answer.details.flatMap((detail) =>
       face.wrap(face.clean(detail), width, { size: 7.5, weight: 'regular' }),
     )
-    lines.slice(0, 3).forEach((line, k) => {
-      const isCut = k === 2 && lines.length > 3
+    lines.slice(0, 4).forEach((line, k) => {
+      const isCut = k === 3 && lines.length > 4
       items.push(face.text(x, area.y + 37 + k * 9.6, isCut ? `${line} …` : line, { size: 7.5, fit: width }))
     })
     return { role: 'P', items }

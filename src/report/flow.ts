@@ -143,7 +143,7 @@ export function makeFlow(
       y += rowHeight
       rules.push(stroke([x, y - 1.5], [x + width, y - 1.5], PALETTE.ink, { width: 0.6 }))
     }
-    ensure(rowHeight * 3)
+    ensure(rowHeight * (rows.length < 9 ? rows.length + 1 : 4))
     open()
     for (const row of rows) {
       const set = bodyRow(face, columns, widths, { row, x, y: 0, size, rowHeight })

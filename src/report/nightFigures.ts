@@ -2,6 +2,7 @@ import type { Drift } from '../night/types.ts'
 import type { Curves } from '../quality/types.ts'
 import type { Block, Item } from './drawing.ts'
 import { stroke } from './drawing.ts'
+import { quantile } from '../numeric/median.ts'
 import { mark } from './marks.ts'
 import { PALETTE } from './palette.ts'
 import type { Frame } from './plot.ts'
@@ -13,17 +14,13 @@ import type { Typeface } from './typeface.ts'
 import type { Standing } from './verdict.ts'
 import { shortNumber, typeWord } from './words.ts'
 
-/** A normalised spectrum inside a cell of a table: a thin line from 0 to 1.3, clipped. */
+/** A normalised spectrum inside a cell of a table: a thin line, scaled to its own deepest line. */
 export function smallSpectrum(area: Area, xRange: readonly [number, number], curves: Curves | undefined): Item[] {
   if (!curves || !(xRange[1] > xRange[0])) return []
-  const frame: Frame = {
-    x: area.x,
-    y: area.y + 1,
-    width: area.width,
-    height: area.height - 4,
-    xRange,
-    yRange: [0.2, 1.2],
-  }
+  const low = Math.min(0.8, quantile(curves.normalised, 0.004))
+  const high = Math.max(1.05, quantile(curves.normalised, 0.99))
+  const yRange: readonly [number, number] = [low, high]
+  const frame: Frame = { x: area.x, y: area.y + 1, width: area.width, height: area.height - 4, xRange, yRange }
   const line = curve(frame, curves.restWavelength, curves.normalised, { stroke: PALETTE.ink, width: 0.35, column: 1.6 })
   return line.points.length > 2 ? [line] : []
 }
@@ -50,7 +47,7 @@ export function foundAgainstExpected(face: Typeface, area: Area, pairs: readonly
     width: Math.min(side * 1.25, area.width - AXIS_ROOM),
     height: side,
     xRange: [low, high],
-    yRange: [high, low],
+    yRange: [low, high],
   }
   const right = frame.x + frame.width
   const bottom = frame.y + frame.height
@@ -112,7 +109,8 @@ export function driftFigure(face: Typeface, area: Area, drift: Drift, times: rea
   const [least, most] = [Math.min(...values), Math.max(...values)]
   const margin = (most - least || Math.abs(most) || 1) * 0.1
   const hour = 1 / 24
-  const xRange: readonly [number, number] = times[1] - times[0] > hour ? times : [times[0] - hour, times[1] + hour]
+  const aside = Math.max((times[1] - times[0]) * 0.02, times[1] - times[0] > hour ? 0 : hour)
+  const xRange: readonly [number, number] = [times[0] - aside, times[1] + aside]
   const frame: Frame = {
     x: area.x + AXIS_ROOM,
     y: area.y + HEADING_ROOM,

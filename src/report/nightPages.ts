@@ -200,10 +200,10 @@ function targetTable(flow: Flow, views: readonly TargetView[], options: NightPag
         cell('', { draw: (area) => smallSpectrum(area, range, best.spectrum.curves) }),
       ]
     }),
-    { rowHeight: 17 },
+    { rowHeight: 18 },
   )
   flow.paragraph(
-    'Disc: usable. Triangle: doubtful. Square: unusable. A number in brackets counts the exposures of a target.',
+    'Disc: usable. Triangle: doubtful. Square: unusable. A number in brackets counts the exposures of a target. Each small spectrum is scaled to its own deepest line.',
     {
       size: 7,
       colour: PALETTE.quiet,

@@ -54,6 +54,13 @@ export function namedFeatures(
 const labelWidth = (face: Typeface, label: string): number =>
   Math.max(face.width(label, NAME_SIZE, 'bold'), face.width('88 %', 6.5, 'regular')) + 5
 
+/** From a fifth below the deepest line (or zero) to above the continuum, in steps of 0.2 below. */
+function depthRange(normalised: ArrayLike<number>): readonly [number, number] {
+  const deepest = quantile(normalised, 0.001)
+  const low = deepest < 0 ? Math.max(-0.5, deepest) : Math.max(0, Math.floor((deepest - 0.06) * 5) / 5)
+  return [Math.min(0.8, low), Math.min(6, Math.max(1.1, quantile(normalised, 0.998) + 0.04))]
+}
+
 /** Lowest flux near a wavelength, where a feature's line ends; 1 when nothing is there. */
 function fluxNear(curves: Curves, wavelength: number): number {
   let lowest = Infinity
@@ -114,15 +121,15 @@ export function normalisedFigure(face: Typeface, area: Area, spectrum: SpectrumO
     width: area.width - AXIS_ROOM,
     height: area.height - HEADING_ROOM - NAME_ROOM - 4 - strips - LABEL_ROOM,
     xRange: last > first ? [first, last] : [first - 1, first + 1],
-    yRange: [
-      Math.min(0, quantile(curves.normalised, 0.002)),
-      Math.max(1.15, quantile(curves.normalised, 0.998) + 0.05),
-    ],
+    yRange: depthRange(curves.normalised),
   }
   const named = namedFeatures(face, spectrum, type.evidence, frame)
-  const best = typeFound(type)
+  const isTyped = type.state === 'typed' || type.state === 'wide'
+  const best = isTyped
+    ? `at ${type.spectralType ?? typeFound(type)} ${type.luminosityClass ?? ''}`.trim()
+    : 'of the nearest ordinary type'
   const measured = { label: 'this spectrum', stroke: PALETTE.ink, width: 0.5 }
-  const model = { label: `expected at ${best}`, stroke: PALETTE.sky, width: 2 }
+  const model = { label: `expected ${best}`, stroke: PALETTE.sky, width: 2 }
   const one = heldY(frame, 1)
   const items: Item[] = [
     figureHeading(face, area, heading),
@@ -136,7 +143,7 @@ export function normalisedFigure(face: Typeface, area: Area, spectrum: SpectrumO
   items.push(...stripItems(face, frame, curves, expected))
   const alt =
     `Normalised flux against rest wavelength from ${first.toFixed(0)} to ${last.toFixed(0)} Å` +
-    (expected ? `, over the spectrum expected at ${best}` : '; no expected spectrum is known for the type') +
+    (expected ? `, over the spectrum expected ${best}` : '; no expected spectrum is known for the type') +
     (named.length
       ? `. Features that decided: ${[...named]
           .sort((a, b) => b.evidence.share - a.evidence.share)

@@ -10,8 +10,8 @@ export const PALETTE = {
   /** Rules and frames. */
   rule: '#b5b5b5',
   /** Grounds of rows and bands. */
-  wash: '#f1f1ef',
-  shade: '#dcdcda',
+  wash: '#eeeeec',
+  shade: '#d2d2cf',
   paper: '#ffffff',
   /** Okabe & Ito "vermillion": the continuum, and what needs attention. */
   vermillion: '#d55e00',

@@ -1,6 +1,8 @@
 import type { TypeGrid, TypePosterior } from '../typing/types.ts'
 import type { Block, Item } from './drawing.ts'
 import { box, stroke } from './drawing.ts'
+import type { LegendEntry } from './legend.ts'
+import { legend } from './legend.ts'
 import { PALETTE } from './palette.ts'
 import type { Frame } from './plot.ts'
 import { atX } from './plot.ts'
@@ -13,6 +15,8 @@ const ROMAN: Readonly<Record<number, string>> = { 1: 'I', 2: 'II', 3: 'III', 4: 
 const SPAN_LEAST = 20
 const VALUE_ROOM = 34
 const NAME_ROOM = 22
+/** Line where the expected type lies. */
+const EXPECTED = { width: 1, dash: [2, 1.5] } as const
 
 /** Sums of the grid over class (by type) and over type (by class). */
 export function marginals({ types, classes, probability }: TypeGrid): {
@@ -78,7 +82,7 @@ export function posteriorFigure(
   type: TypePosterior,
   expected?: { readonly word: string; readonly number: number },
 ): Block {
-  const heading = 'Probability over type and class'
+  const heading = 'Probability over type'
   const { grid, low68, high68, low95, high95 } = type
   if (!grid || low68 === undefined || high68 === undefined || low95 === undefined || high95 === undefined)
     return absentFigure(face, area, heading, `none: ${type.reason ?? 'the spectrum was not typed'}`)
@@ -95,7 +99,12 @@ export function posteriorFigure(
     xRange,
     yRange: [0, 1],
   }
-  const items: Item[] = [figureHeading(face, area, heading)]
+  const entries: LegendEntry[] = [
+    { label: '68 %', stroke: PALETTE.shade, width: 6 },
+    { label: '95 %', stroke: PALETTE.wash, width: 6 },
+    ...(expected ? [{ label: `expected ${expected.word}`, stroke: PALETTE.vermillion, ...EXPECTED }] : []),
+  ]
+  const items: Item[] = [figureHeading(face, area, heading), ...legend(face, area.x + area.width, area.y + 8, entries)]
   const top = byType.reduce((most, p) => Math.max(most, p), 0)
   const base = frame.y + frame.height
   const held = (value: number): number => Math.min(frame.x + frame.width, Math.max(frame.x, atX(frame, value)))
@@ -120,28 +129,12 @@ export function posteriorFigure(
   const foot = base + rows * rowHeight + 1
   items.push(...typeAxis(face, frame, foot))
   if (expected && expected.number >= xRange[0] && expected.number <= xRange[1])
-    items.push(...expectedMark(face, frame, expected))
+    items.push(
+      stroke([atX(frame, expected.number), frame.y], [atX(frame, expected.number), foot], PALETTE.vermillion, EXPECTED),
+    )
   const alt =
     `Probability over spectral type: 68 % within ${typeRange(low68, high68)}, 95 % within ${typeRange(low95, high95)}. By class: ` +
     [...byClass].map((p, c) => `${ROMAN[grid.classes[c]] ?? grid.classes[c]} ${percent(p)}`).join(', ') +
     (expected ? `. The list expects ${expected.word}` : '')
   return { role: 'Figure', alt, items }
-}
-
-/** A line with a foot where the expected type lies; its name on the side with more room. */
-function expectedMark(
-  face: Typeface,
-  frame: Frame,
-  { word, number }: { readonly word: string; readonly number: number },
-): Item[] {
-  const x = atX(frame, number)
-  const isLeft = x > frame.x + frame.width / 2
-  return [
-    stroke([x, frame.y], [x, frame.y + frame.height], PALETTE.vermillion, { width: 1, dash: [2, 1.5] }),
-    face.text(x + (isLeft ? -3 : 3), frame.y + 6, `expected ${word}`, {
-      size: 7,
-      colour: PALETTE.ink,
-      anchor: isLeft ? 'end' : 'start',
-    }),
-  ]
 }

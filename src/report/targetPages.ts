@@ -105,16 +105,16 @@ function featureTable(flow: Flow, view: TargetView): void {
   const evidence = new Map(view.type.evidence.map((e) => [e.feature, e]))
   flow.table(
     [
-      { head: 'feature', width: 54 },
-      { head: 'species', width: 36 },
-      { head: 'at, Å', width: 36, align: 'end' },
-      { head: 'measured', width: 68, align: 'end' },
-      { head: 'unit', width: 20 },
-      { head: 'expected', width: 62, align: 'end' },
-      { head: 'pull', width: 28, align: 'end' },
-      { head: '−3   0   +3', width: 48 },
-      { head: 'part', width: 30, align: 'end' },
-      { head: '', width: 1, share: true },
+      { head: 'feature', width: 50 },
+      { head: 'species', width: 28 },
+      { head: 'at, Å', width: 32, align: 'end' },
+      { head: 'measured', width: 62, align: 'end' },
+      { head: 'unit', width: 16 },
+      { head: 'expected', width: 58, align: 'end' },
+      { head: 'pull', width: 24, align: 'end' },
+      { head: '−3   0   +3', width: 44 },
+      { head: 'part', width: 28, align: 'end' },
+      { head: 'remark', width: 1, share: true, wrap: true },
     ],
     measurements.map((m) => {
       const e = evidence.get(m.feature)
@@ -138,8 +138,8 @@ function featureTable(flow: Flow, view: TargetView): void {
 
 function remark(m: { status: string; reason?: string; limit3sigma?: number; unit: string }): string {
   if (m.status === 'absent' && m.limit3sigma !== undefined)
-    return `not detected, below ${m.limit3sigma.toPrecision(2)} ${m.unit}`
-  if (m.reason) return `${m.status}: ${m.reason}`
+    return `below ${m.limit3sigma.toPrecision(2)} ${m.unit}, 3 σ`
+  if (m.reason) return m.status === 'measured' ? m.reason : `${m.status}: ${m.reason}`
   return m.status === 'measured' ? '' : m.status
 }
 

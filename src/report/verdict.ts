@@ -133,10 +133,11 @@ function canBeTrusted(view: TargetView): Said {
     ['5500', snr.visual],
     ['6500', snr.red],
   ] as const
-  const ratios = parts.flatMap(([at, value]) => (value === undefined ? [] : [`${shortNumber(value)} at ${at} Å`]))
+  const measured = parts.flatMap(([at, value]) => (value === undefined ? [] : [{ at, value: shortNumber(value) }]))
+  const ratios = `S/N ${measured.map((m) => m.value).join(', ')} at ${measured.map((m) => m.at).join(', ')} Å`
   const details = [
     counts.length ? counts.join(', ') : 'nothing found against it',
-    ratios.length ? `S/N per Å ${ratios.join(', ')}` : 'S/N could not be measured',
+    measured.length ? ratios : 'S/N could not be measured',
     restFrame.trusted
       ? `velocity ${restFrame.velocity.toFixed(0).replace(/^-/, '−')} ± ${restFrame.error?.toFixed(0) ?? '?'} km/s`
       : `velocity not trusted: ${restFrame.reason ?? 'no reason given'}`,

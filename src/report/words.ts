@@ -15,12 +15,12 @@ export function typeRange(low: number, high: number): string {
   return first === last ? first : `${first}–${last}`
 }
 
-/** A probability as a person reads it: '62 %', 'above 99 %', '0.3 %', 'below 0.1 %'. */
+/** A probability as a person reads it: '62 %', '>99 %', '0.3 %', '<0.1 %'. */
 export function percent(probability: number): string {
-  if (probability > 0.99 && probability < 1) return 'above 99 %'
+  if (probability > 0.99 && probability < 1) return '>99 %'
   if (probability >= 0.1 || probability === 0) return `${Math.round(probability * 100)} %`
   if (probability >= 0.001) return `${(probability * 100).toPrecision(1)} %`
-  return 'below 0.1 %'
+  return '<0.1 %'
 }
 
 /** A number with as many decimals as its error asks for (two significant digits of the error). */
