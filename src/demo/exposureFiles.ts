@@ -45,7 +45,7 @@ export function quickLookFile(
   const shared: readonly MadeCard[] = [
     ...cards,
     ['SPECSYS', 'TOPOCENT', 'no velocity taken out'],
-    ['FWHM_A', DEMO_SETUPS[setup].fwhm, '[Angstrom] width of arc lines'],
+    ['WAVRESOL', DEMO_SETUPS[setup].fwhm, '[Angstrom] width of arc lines'],
     ['SATURATE', Number(look.ceiling.toFixed(0)), '[adu] extracted counts at saturation'],
   ]
   if (form === 'image' || form === 'image with sigma') return imageFile(look, setup, form, shared)
