@@ -80,8 +80,8 @@ export function spectrumFigure(face: Typeface, area: Area, spectrum: SpectrumOut
     curve(frame, curves.wavelength, curves.flux, { stroke: line.stroke, width: line.width }),
   ]
   if (hasContinuum) {
-    const { label: _label, ...style } = dashed
-    items.push(curve(frame, curves.wavelength, curves.continuum, { ...style, column: 4 }))
+    const { stroke, width, dash } = dashed
+    items.push(curve(frame, curves.wavelength, curves.continuum, { stroke, width, dash, column: 4 }))
   }
   const alt =
     `Flux against wavelength from ${first.toFixed(0)} to ${last.toFixed(0)} Å` +

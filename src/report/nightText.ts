@@ -1,0 +1,129 @@
+import type { NightSummary } from '../night/types.ts'
+import type { Outcome } from '../quality/types.ts'
+import { cutToWidth, padToWidth, wrapToWidth } from './columnWidth.ts'
+import { errorFinding } from './errorFinding.ts'
+import { plainText } from './plainText.ts'
+import type { TerminalStyle } from './terminalTable.ts'
+import { strong, tinted } from './terminalTable.ts'
+import { dateAndTime, nightDates } from './timeWords.ts'
+import { targetViews } from './targetView.ts'
+import { qualityOf } from './verdict.ts'
+import { percent, typeFound } from './words.ts'
+
+/** Lines of a list on the terminal before it says how many more there are. */
+const MOST = 40
+
+/**
+ * The night as an observer reads it at dawn, for a terminal of the given width: what to observe again, what was not
+ * reached, what holds for the whole night, every target in a line, what calibrations lack, what could not be read.
+ */
+export function nightSummaryText(night: NightSummary, outcomes: readonly Outcome[], style: TerminalStyle): string {
+  const sections = [
+    opening(night, style),
+    again(night, style),
+    list(
+      'Listed, but not reached',
+      night.notObserved.map((t) => t.object),
+      style,
+    ),
+    findings(night, style),
+    targets(night, outcomes, style),
+    cover(night, style),
+    list(
+      'Files that could not be read',
+      outcomes.flatMap((o) => (o.error ? [`${o.file}: ${errorFinding(o.error).text}`] : [])),
+      style,
+    ),
+  ]
+  return sections
+    .filter((section) => section.length > 0)
+    .map((section) => section.join('\n') + '\n')
+    .join('\n')
+}
+
+function opening(night: NightSummary, { width, colour }: TerminalStyle): string[] {
+  const { counts, mjdFirst, mjdLast } = night
+  const last = mjdLast ?? mjdFirst
+  const title =
+    mjdFirst === undefined || last === undefined
+      ? 'Night without times'
+      : `Night of ${nightDates(mjdFirst, last)} (${dateAndTime(mjdFirst)} to ${dateAndTime(last)} UTC)`
+  const count =
+    `${night.targets.length} targets; spectra: ${counts.usable} usable, ${counts.doubtful} doubtful, ` +
+    `${counts.unusable} unusable; files not read: ${counts.unreadable}`
+  return [strong(cutToWidth(title, width), colour), ...wrapToWidth(count, width)]
+}
+
+function again(night: NightSummary, { width, colour }: TerminalStyle): string[] {
+  const rows = night.targets.filter((t) => t.observeAgain).sort((a, b) => (b.urgency ?? 0) - (a.urgency ?? 0))
+  if (rows.length === 0) return [strong('Observe again first', colour), '  nothing that was observed']
+  const lines = rows.slice(0, MOST).flatMap((t) => {
+    const needs = t.exposureNeeded === undefined ? '' : ` (needs ${t.exposureNeeded.toFixed(0)} s)`
+    const name = plainText(t.target)
+    const text = `${name}: ${plainText(t.reason ?? 'no reason given')}${needs}`
+    const urgency = padToWidth(t.urgency === undefined ? '' : t.urgency.toFixed(2), 4)
+    return wrapToWidth(text, Math.max(10, width - 8)).map((line, i) => `  ${i === 0 ? urgency : '    '}  ${line}`)
+  })
+  return [strong('Observe again first (urgency 1 is the highest)', colour), ...lines, ...rest(rows.length)]
+}
+
+const rest = (n: number): string[] => (n > MOST ? [`  … and ${n - MOST} more`] : [])
+
+function list(heading: string, lines: readonly string[], { width, colour }: TerminalStyle): string[] {
+  if (lines.length === 0) return []
+  const wrapped = lines
+    .slice(0, MOST)
+    .flatMap((line) =>
+      wrapToWidth(plainText(line), Math.max(10, width - 4)).map((part, i) => (i === 0 ? '  ' : '    ') + part),
+    )
+  return [strong(heading, colour), ...wrapped, ...rest(lines.length)]
+}
+
+function findings(night: NightSummary, { width, colour }: TerminalStyle): string[] {
+  const all = [...night.findings, ...night.drifts.flatMap((d) => d.findings)]
+  if (all.length === 0) return []
+  const lines = all.flatMap((f) =>
+    wrapToWidth(plainText(f.text), Math.max(10, width - 9)).map(
+      (line, i) => `  ${i === 0 ? tinted(padToWidth(f.level, 5), colour) : '     '}  ${line}`,
+    ),
+  )
+  return [strong('What holds for the whole night', colour), ...lines]
+}
+
+function targets(night: NightSummary, outcomes: readonly Outcome[], { width, colour }: TerminalStyle): string[] {
+  const views = targetViews(outcomes, night)
+  if (views.length === 0) return []
+  const rows = views.map((view) => {
+    const { type, summary, name } = view
+    const error = type.typeNumberErr === undefined ? '' : `± ${type.typeNumberErr.toFixed(1)}`
+    const expected = summary?.listed?.expectedType
+    const against = expected === undefined ? '' : `expected ${plainText(expected)}`
+    const odds = summary?.expectedProbability === undefined ? '' : percent(summary.expectedProbability)
+    const snr = summary?.snrReached === undefined ? '' : `S/N ${summary.snrReached.toFixed(0)}`
+    return [plainText(name), `${typeFound(type)} ${error}`.trim(), qualityOf(view), snr, `${against} ${odds}`.trim()]
+  })
+  const limits = [Math.max(12, Math.floor(width * 0.3)), 22, 9, 9, 24]
+  const widths = limits.map((limit, k) =>
+    Math.min(limit, Math.max(...rows.map((row) => cutToWidth(row[k], limit).length))),
+  )
+  const lines = rows.slice(0, MOST).map((row) => {
+    let used = 2
+    let line = '  '
+    row.forEach((text, k) => {
+      if (used + widths[k] > width) return
+      line += tinted(padToWidth(cutToWidth(text, widths[k]), widths[k]), colour) + '  '
+      used += widths[k] + 2
+    })
+    return line.trimEnd()
+  })
+  return [strong('Targets', colour), ...lines, ...rest(rows.length)]
+}
+
+function cover(night: NightSummary, style: TerminalStyle): string[] {
+  const lines = night.cover.map((c) => {
+    const missing = (['bias', 'flat', 'arc'] as const).filter((kind) => c[kind] === 0)
+    const found = `${c.bias} bias, ${c.dark} dark, ${c.flat} flat, ${c.arc} arc, ${c.standard} standard`
+    return `${c.setup}: ${c.science} science; ${found}${missing.length ? `; no ${missing.join(', no ')}` : ''}`
+  })
+  return list('Calibration cover', lines, style)
+}
