@@ -207,6 +207,13 @@ export const NIGHT_RULES = {
     remedy: 'Observe it',
     source: COMMON,
   },
+  'only-raw-frames': {
+    level: 'note',
+    meaning: 'A target has raw frames and no spectrum that could be read',
+    remedy: 'Extract its spectrum',
+    unit: 'frames',
+    source: COMMON,
+  },
   'signal-below-wanted': {
     level: 'doubt',
     meaning: 'All exposures of a target together do not reach the signal-to-noise wanted',

@@ -3,6 +3,7 @@ import { gravestFirst, qualityOf } from '../quality/qualityOf.ts'
 import type { Outcome } from '../quality/types.ts'
 import type { CoverRules, Thresholds } from '../tables/types.ts'
 import { calibrationCover, unusedCalibrations } from './calibrationCover.ts'
+import type { CoverFrame } from './calibrationCover.ts'
 import { checkClock } from './checkClock.ts'
 import { checkPointing, timeZoneSlip } from './checkPointing.ts'
 import { commonOffsetFindings } from './commonOffsetFindings.ts'
@@ -18,6 +19,7 @@ import { checkExpectedType, checkNames, checkTarget } from './rightStar.ts'
 import { slipFinding } from './slipFinding.ts'
 import { summariseTargets } from './summariseTargets.ts'
 import { swappedTypes } from './swappedTypes.ts'
+import { plainName } from './targetName.ts'
 import { groupByTarget } from './targetGroups.ts'
 import type { NightSummary, SpectrumNight, Target } from './types.ts'
 
@@ -77,6 +79,7 @@ export function summariseNight(outcomes: readonly Outcome[], options: NightOptio
     nights: judged,
     repeats,
     targets,
+    rawFrames: rawFramesOf(frames, matches),
     thresholds,
     typing,
   })
@@ -96,6 +99,21 @@ export function summariseNight(outcomes: readonly Outcome[], options: NightOptio
     ...(times.length ? { mjdFirst: least(times), mjdLast: -least(times.map((time) => -time)) } : {}),
     counts: countsOf(outcomes, judged),
   }
+}
+
+/** Usable raw frames of each listed target, by its plain name. */
+function rawFramesOf(
+  frames: readonly CoverFrame[],
+  matches: ReadonlyMap<number, TargetMatch>,
+): ReadonlyMap<string, number> {
+  const counts = new Map<string, number>()
+  for (const { exposure, isUsable } of frames) {
+    const target = matches.get(exposure.outcome)?.target
+    if (!target || !exposure.isFrame || !isUsable) continue
+    const name = plainName(target.object)
+    counts.set(name, (counts.get(name) ?? 0) + 1)
+  }
+  return counts
 }
 
 function least(values: readonly number[]): number {

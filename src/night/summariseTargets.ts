@@ -17,6 +17,8 @@ interface TargetsInput {
   /** Outcomes that repeat another and are not counted. */
   readonly repeats: ReadonlySet<number>
   readonly targets: readonly Target[]
+  /** Names (plain) of listed targets that usable raw frames were taken of, with their number. */
+  readonly rawFrames: ReadonlyMap<string, number>
   readonly thresholds: Thresholds
   readonly typing: NightTyping
 }
@@ -32,10 +34,13 @@ export function summariseTargets(
   /** Of targets without a spectrum. */
   readonly findings: readonly Finding[]
 } {
-  const { targets, thresholds, spectra, nights } = input
-  const summaries = groups.map((group) => summariseTarget(group, input))
+  const { targets, thresholds, spectra, nights, rawFrames } = input
+  const withSpectra = groups.map((group) => summariseTarget(group, input))
   const observed = new Set(groups.flatMap(({ listed }) => (listed ? [plainName(listed.object)] : [])))
-  const notObserved = targets.filter(({ object }) => !observed.has(plainName(object)))
+  const without = targets.filter(({ object }) => !observed.has(plainName(object)))
+  const notObserved = without.filter(({ object }) => !rawFrames.has(plainName(object)))
+  const rawOnly = without.flatMap((target) => onlyRaw(target, rawFrames.get(plainName(target.object))))
+  const summaries = [...withSpectra, ...rawOnly]
   const scale = brightnessScale(
     groups.flatMap(({ members, listed }) =>
       members.map((i) => ({ spectrum: spectra[i].spectrum, night: nights[i], ...(listed ? { listed } : {}) })),
@@ -62,6 +67,23 @@ export function summariseTargets(
     ),
     findings: missing.flatMap(({ verdict }) => verdict.findings),
   }
+}
+
+/** A target that was exposed but has no spectrum: nothing to observe, something to extract. */
+function onlyRaw(listed: Target, frames: number | undefined): readonly TargetSummary[] {
+  if (frames === undefined) return []
+  const text = `${listed.object}: ${frames} raw ${frames === 1 ? 'frame' : 'frames'}, no spectrum that could be read`
+  return [
+    {
+      target: listed.object,
+      listed,
+      spectra: [],
+      type: NO_TYPE,
+      ...(listed.wantedSnr === undefined ? {} : { snrWanted: listed.wantedSnr }),
+      observeAgain: false,
+      findings: [finding(NIGHT_RULES, 'only-raw-frames', text, { value: frames })],
+    },
+  ]
 }
 
 function needed(exposureNeeded: number | undefined): { readonly exposureNeeded?: number } {

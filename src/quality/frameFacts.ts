@@ -10,18 +10,24 @@ const WITH_TRACE: readonly FrameKind[] = ['science', 'standard', 'sky', 'focus',
 const WITH_LINES: readonly FrameKind[] = ['arc', 'unknown']
 
 /**
- * The row of a 2-D frame: its kind and how that was known, set-up, statistics, findings and quality. Statistics that
- * mean nothing for the kind are left out: the trace of a lamp frame, the arc lines of a star.
+ * The row of a file as a frame: its kind and how that was known, set-up, statistics, findings and quality. A file of
+ * extracted spectra has no statistics and is science unless its header says otherwise. Statistics that mean nothing
+ * for the kind are left out: the trace of a lamp frame, the arc lines of a star.
  */
-export function frameFacts(facts: HeaderFacts, statistics: FrameStatistics, thresholds: Thresholds): FrameFacts {
+export function frameFacts(
+  facts: HeaderFacts,
+  statistics: FrameStatistics | undefined,
+  thresholds: Thresholds,
+): FrameFacts {
   const sorted = sortFrame(facts, statistics)
+  const base = { kindHow: sorted.kindHow, setup: setupName(facts), facts }
+  if (!statistics)
+    return { ...base, kind: sorted.kind === 'unknown' ? 'science' : sorted.kind, quality: 'usable', findings: [] }
   const findings = checkFrame(sorted, facts, statistics, thresholds)
   const { arcLines, arcPeak, trace, traceContrast, ...rest } = statistics
   return {
+    ...base,
     kind: sorted.kind,
-    kindHow: sorted.kindHow,
-    setup: setupName(facts),
-    facts,
     statistics: {
       ...rest,
       ...(WITH_LINES.includes(sorted.kind) ? { arcLines, arcPeak } : {}),

@@ -7,6 +7,8 @@ import type { FrameStatistics } from './types.ts'
 
 /** Share of the header's saturation level from which a count is taken as saturated; bias may have been taken out. */
 const SATURATION_SHARE = 0.98
+/** Largest count over the stated saturation from which the counts cannot be those of one readout. */
+const SUMMED = 1.02
 
 /**
  * Statistics of the pixels of a 2-D frame, read row by row: level, noise, saturation, lines along the dispersion and
@@ -24,7 +26,9 @@ export function frameStatistics(source: ByteSource, hdu: Hdu, facts: HeaderFacts
   const lines = dispersionAxis === 1 ? alongX : alongY
   const [dispersed, slit] = dispersionAxis === 1 ? [scan.columnMeans, scan.rowMeans] : [scan.rowMeans, scan.columnMeans]
   const trace = brightestTrace(slit)
-  const saturation = facts.saturation ?? scan.rangeEnd
+  // counts far above the stated limit are sums of pixels or of exposures, for which the limit does not hold
+  const stated = facts.saturation !== undefined && max > SUMMED * facts.saturation ? undefined : facts.saturation
+  const saturation = stated ?? scan.rangeEnd
   const total = width * height - nonfinite
   const saturated =
     saturation === undefined ? flatTop(scan.countAbove(max)) : scan.countAbove(SATURATION_SHARE * saturation)

@@ -19,8 +19,8 @@ export interface SortedFrame {
  * 'expose') is overruled by an object's name or a lamp.
  */
 export function sortFrame(facts: HeaderFacts, statistics?: FrameStatistics): SortedFrame {
-  const byHeader = kindOfHeader(facts)
   const byContent = statistics ? kindOfPixels(facts, statistics) : undefined
+  const byHeader = kindOfHeader(facts, byContent?.sure === true && byContent.kind === 'science')
   if (byHeader) {
     const disagrees = byContent !== undefined && byContent.sure && conflicts(byHeader.kind, byContent.kind)
     return { ...byHeader, kindHow: 'header', ...(disagrees ? { looksLike: byContent.kind } : {}) }
@@ -37,7 +37,11 @@ function firstMatch(words: readonly FrameWord[], text: string): FrameWord | unde
   return words.find((word) => word.pattern.test(text))
 }
 
-function kindOfHeader(facts: HeaderFacts): { readonly kind: FrameKind; readonly reason: string } | undefined {
+/** `hasStar`: the pixels hold a trace, so a lamp's name is that of a lamp at hand, not of one that burns. */
+function kindOfHeader(
+  facts: HeaderFacts,
+  hasStar: boolean,
+): { readonly kind: FrameKind; readonly reason: string } | undefined {
   const said = facts.frameWords ?? ''
   const words = plainWords(said)
   const named = firstMatch(KIND_WORDS, words)
@@ -46,7 +50,7 @@ function kindOfHeader(facts: HeaderFacts): { readonly kind: FrameKind; readonly 
   const object = plainWords(facts.object ?? '')
   const byName = object === '' ? undefined : firstMatch(OBJECT_NAMES, object)
   if (byName) return { kind: byName.kind, reason: `the object is named '${facts.object ?? ''}'` }
-  const lamp = lampKind(facts.lamp)
+  const lamp = hasStar ? undefined : lampKind(facts.lamp)
   if (lamp) return { kind: lamp, reason: `the lamp '${facts.lamp ?? ''}' is on` }
   if (named) return { kind: named.kind, reason: `the header says '${said}'` }
   if (facts.exposure === 0) return { kind: 'bias', reason: 'the exposure lasted 0 s' }
