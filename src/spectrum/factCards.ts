@@ -1,5 +1,6 @@
 import type { Card } from '../fits/types.ts'
 import { numberValue, textValue } from '../fits/header.ts'
+import { cardText } from './cards.ts'
 import type { Headers } from './cards.ts'
 import type { FactName, KeywordSynonym, KeywordTable } from '../tables/types.ts'
 import type { Note } from '../findings/types.ts'
@@ -23,11 +24,17 @@ export function factCards(headers: Headers, keywords: KeywordTable, fact: FactNa
         (typeof card.value === 'string' && card.value.trim() === '')
       )
         continue
-      if (synonym.when !== undefined && headers[i].get(synonym.when)?.value !== true) continue
+      if (!counts(headers, synonym)) continue
       found.push({ synonym, card, header: i })
     }
   }
   return found
+}
+
+function counts(headers: Headers, { when, whenAbsent }: KeywordSynonym): boolean {
+  if (when === undefined) return true
+  const text = cardText(headers, when)
+  return text === undefined ? whenAbsent === 'counts' : /^(t|true|on|1|yes)$/i.test(text)
 }
 
 /** Words that stand in a header for "not known". */
@@ -93,7 +100,7 @@ function scaled(value: number, form: KeywordSynonym['form']): number {
   if (form === 'minutes') return value * 60
   if (form === 'milliseconds') return value / 1000
   if (form === 'jd') return value - 2400000.5
-  if (form === 'km') return value * 1000
+  if (form === 'tai seconds') return value / 86400
   return value
 }
 

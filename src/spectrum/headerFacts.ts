@@ -12,7 +12,7 @@ import type { HeaderFacts } from './types.ts'
 const GENERIC_OBJECT =
   /^(object|science|target|star|test|std|standard|spectrum|image|exposure|.*_science(_.*)?|empty image.*|0)$/i
 /** Words of a filter wheel that mean no filter. */
-const NO_FILTER = /^(free|clear|open|none|empty|out|no filter|0)$/i
+const NO_FILTER = /^(free|clear|open|none|empty|out|air|notpresent|no filter|0)$/i
 
 /**
  * What the headers say of the observation, by a table of synonyms: the first synonym with a possible value wins, the
@@ -48,7 +48,7 @@ export function readHeaderFacts(
     grating: text('grating'),
     gratingTilt: number('gratingTilt', [-1e6, 1e6], 'grating tilt'),
     filter: joined('filter', (word) => !NO_FILTER.test(word)),
-    slit: text('slit'),
+    slit: factTexts(headers, keywords, 'slit').find((word) => !/^(out|free|open|0)$/i.test(word)),
     binning: binningOf(headers, keywords),
     window: text('window'),
     gain: number('gain', [1e-3, 1e3], 'gain'),

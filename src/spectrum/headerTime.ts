@@ -33,13 +33,19 @@ export function headerTime(headers: Headers, keywords: KeywordTable, notes: Note
   const end = calendar(headers, keywords, 'dateEnd', 'timeEnd', notes, start?.mjd)
   const mjd = (fact: FactName): number | undefined =>
     factNumber(headers, keywords, { fact, range: MJD_RANGE, words: 'modified Julian date' }, notes)?.value
-  const givenStart = mjd('mjdStart')
+  const givenStart = mjdStartOf(headers, keywords, notes)
   const givenMid = mjd('mjdMid')
   const givenEnd = mjd('mjdEnd')
-  if (start?.hasTime && givenStart !== undefined && Math.abs(start.mjd - givenStart) > SAME_TIME)
+  const length = exposure === undefined ? undefined : exposure / 86400
+  const isMiddle =
+    start !== undefined &&
+    length !== undefined &&
+    givenStart !== undefined &&
+    Math.abs(start.mjd + length / 2 - givenStart) < SAME_TIME
+  if (start?.hasTime && givenStart !== undefined && !isMiddle && Math.abs(start.mjd - givenStart) > SAME_TIME)
     notes.push({
       code: 'times-disagree',
-      text: `DATE-OBS means MJD ${start.mjd.toFixed(5)} and another card gives ${givenStart.toFixed(5)}; DATE-OBS is used`,
+      text: `the date means MJD ${start.mjd.toFixed(5)} and another card gives ${givenStart.toFixed(5)}; the date is used`,
     })
   const scale = cardText(headers, 'TIMESYS')
   if (scale !== undefined && !/^UTC?$/i.test(scale) && (start ?? givenStart) !== undefined)
@@ -49,7 +55,6 @@ export function headerTime(headers: Headers, keywords: KeywordTable, notes: Note
     })
   const mjdStart = start?.hasTime ? start.mjd : (givenStart ?? start?.mjd)
   const mjdEnd = givenEnd ?? (end?.hasTime ? end.mjd : undefined)
-  const length = exposure === undefined ? undefined : exposure / 86400
   let mjdMid = givenMid
   if (mjdMid !== undefined && mjdStart !== undefined && Math.abs(mjdMid - mjdStart) > Math.max(length ?? 0, 1)) {
     notes.push({
@@ -64,12 +69,39 @@ export function headerTime(headers: Headers, keywords: KeywordTable, notes: Note
     else if (mjdEnd !== undefined && mjdEnd > mjdStart && mjdEnd - mjdStart < 1) mjdMid = (mjdStart + mjdEnd) / 2
   }
   return {
-    ...(start ? { dateObs: start.text } : {}),
+    ...(start ? { dateObs: isoText(start) } : {}),
     ...(mjdStart === undefined || !isExact ? {} : { mjdStart }),
     ...(mjdMid === undefined ? {} : { mjdMid }),
     ...(mjdEnd === undefined ? {} : { mjdEnd }),
     ...(exposure === undefined ? {} : { exposure }),
   }
+}
+
+/** MJD of the start; whole numbers, which only name the night, are passed over. */
+function mjdStartOf(headers: Headers, keywords: KeywordTable, notes: Note[]): number | undefined {
+  const own: Note[] = []
+  let table = keywords
+  for (;;) {
+    const answer = factNumber(
+      headers,
+      table,
+      { fact: 'mjdStart', range: MJD_RANGE, words: 'modified Julian date' },
+      own,
+    )
+    if (!answer || answer.value % 1 !== 0) {
+      notes.push(...own)
+      return answer?.value
+    }
+    const rest = table.facts.mjdStart.filter((synonym) => synonym !== answer.found.synonym)
+    table = { ...table, facts: { ...table.facts, mjdStart: rest } }
+  }
+}
+
+/** The date as the file has it where that is ISO 8601, else turned into it. */
+function isoText({ text, mjd, hasTime }: CalendarTime): string {
+  if (/^\d{4}-\d\d-\d\d(T\d\d:\d\d(:\d\d(\.\d*)?)?)?$/.test(text)) return text
+  const iso = new Date(Math.round((mjd - 40587) * 86_400_000)).toISOString()
+  return hasTime ? iso.slice(0, 23).replace(/\.?0+$/, '') : iso.slice(0, 10)
 }
 
 interface CalendarTime {

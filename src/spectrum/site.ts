@@ -19,7 +19,7 @@ export function geodetic(x: number, y: number, z: number): Site | undefined {
     latitude = Math.atan2(z, across * (1 - (squared * normal) / (normal + height)))
   }
   const degree = 180 / Math.PI
-  return { longitude: Math.atan2(y, x) * degree * 1, latitude: latitude * degree, height }
+  return { longitude: Math.atan2(y, x) * degree, latitude: latitude * degree, height }
 }
 
 /** The known telescope that a header's words name; undefined when none or more than one place fits. */
@@ -33,6 +33,7 @@ export function knownSite(sites: readonly KnownSite[], words: readonly string[])
 
 /** Longitude from −180 to 180 degrees. */
 export function wrapLongitude(degrees: number): number {
+  if (degrees >= -180 && degrees <= 180) return degrees
   const turn = ((degrees % 360) + 360) % 360
   return turn > 180 ? turn - 360 : turn
 }

@@ -241,6 +241,7 @@ export const KEYWORDS: KeywordTable = {
     timeEnd: named('UTEND', 'UTSTOP', 'UT_END', 'TIME-END', 'UT-END', 'TM-END'),
     mjdStart: [
       ...named('MJD-OBS', 'MJD_OBS', 'MJDOBS', 'MJD-BEG', 'EXPSTART', 'UTMJD', 'MJDSTART', 'MJD-STR', 'MJD'),
+      ...formed('tai seconds', 'TAI-BEG'),
       ...formed('jd', 'JD', 'JD-OBS', 'JD_OBS', 'JULDAT', 'JDSTART', 'JD-START'),
     ],
     mjdMid: [
@@ -360,18 +361,9 @@ export const KEYWORDS: KeywordTable = {
       'OBJTYPE',
     ),
     lamp: [
-      ...named(
-        'LAMP',
-        'LAMPID',
-        'LAMPNAME',
-        'LAMPS',
-        'COMPLAMP',
-        'COMPSRC',
-        'LAMPCOMP',
-        'ARCLAMP',
-        'CALLAMP',
-        'ESO INS LAMP NAME',
-      ),
+      ...named('LAMP', 'LAMPID', 'LAMPS', 'COMPLAMP', 'COMPSRC', 'LAMPCOMP', 'ARCLAMP', 'CALLAMP', 'ESO INS LAMP NAME'),
+      { keyword: 'LAMPNAME', when: 'LAMPSTAE', whenAbsent: 'counts' },
+      ...[...'ABCDFGHIJK'].map((letter) => ({ keyword: `LAMPNAM${letter}`, when: `LAMPSTA${letter}` })),
       ...[1, 2, 3, 4, 5, 6, 7, 8].flatMap((i): KeywordSynonym[] => [
         { keyword: `LAMP${i}TYP`, when: `LAMP${i}SET` },
         { keyword: `ESO INS LAMP${i} NAME`, when: `ESO INS LAMP${i} ST` },
@@ -388,6 +380,7 @@ export const KEYWORDS: KeywordTable = {
       'GRATID',
       'GRISNAME',
       'GRISM_N',
+      'GRATNG_N',
       'GRNAME',
       'ESO INS GRIS1 NAME',
       'ESO INS GRAT1 NAME',
@@ -426,6 +419,7 @@ export const KEYWORDS: KeywordTable = {
     slit: named(
       'SLIT',
       'SLITNAME',
+      'SLIT_N',
       'SLITWID',
       'SLITWDTH',
       'SLIT_WID',

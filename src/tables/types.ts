@@ -54,6 +54,73 @@ export interface SpectralLine {
   readonly strength?: number
 }
 
+/** Means and scatter of the features over type and luminosity class, fitted on published stars (`calibration.ts`). */
+export interface Calibration {
+  /** Names this calibration: first 12 hex digits of the SHA-256 of its inputs' list. */
+  readonly digest: string
+  /** What it was fitted on. */
+  readonly inputs: readonly {
+    readonly set: string
+    readonly stars: number
+    readonly reference: string
+  }[]
+  /** SHA-256 of the list of inputs: one line a file, its path, its own SHA-256 and its published type. */
+  readonly inputsSha256: string
+  /** Å, FWHM all spectra were brought to. */
+  readonly commonFwhm: number
+  /** Keys of the side-band features, in the order of all arrays below; f is their number. */
+  readonly features: readonly string[]
+  /** shape (f): figures of `mean` and `scatter` are in thousandths of this [unit of the feature]. */
+  readonly scale: readonly number[]
+  /** Type numbers of the grid, increasing by one; t is their number. */
+  readonly firstType: number
+  readonly types: number
+  /** Luminosity numbers of the grid; c is their number. */
+  readonly classes: readonly number[]
+  /** shape (t × c, f): expected value [scale / 1000]. */
+  readonly mean: readonly (readonly number[])[]
+  /** shape (t × c): variance of the expected values for want of stars, in units of scale². */
+  readonly meanVariance: readonly number[]
+  /** Scatter between stars and telescopes, learned from residuals, by zones of type. */
+  readonly zones: readonly CalibrationZone[]
+  /** Degrees of freedom of the heavy-tailed likelihood. */
+  readonly degreesOfFreedom: number
+  /** shape (f): change of a feature for a spectrum 1 Å of FWHM coarser, per zone elsewhere. */
+  readonly prior: {
+    /** shape (c): weight of the luminosity classes; types are flat over those in use. */
+    readonly classes: readonly number[]
+  }
+  /** Mean normalised spectra by type, in bins of equal width. */
+  readonly spectra: CalibrationSpectra
+}
+
+/** Scatter of the features about their expected values for stars near one type. */
+export interface CalibrationZone {
+  readonly type: number
+  /** shape (f × (f + 1) / 2): lower triangle of the covariance, row by row, in units of (scale / 1000)². */
+  readonly covariance: readonly number[]
+  /** Exponent on the likelihood, so that the ranges hold what they should; by cross-validation. */
+  readonly tempering: number
+  /** shape (f) [scale / 1000]: change of the features with metals a factor of ten weaker; empty where not known. */
+  readonly metalWeak: readonly number[]
+  /** Mahalanobis distance squared per feature that 50, 90, 98 and 99.5 % of ordinary stars stay below. */
+  readonly fitQuantiles: readonly number[]
+}
+
+/** Mean normalised spectra of a type, averaged over three or more stars in bins of 8 Å or more. */
+export interface CalibrationSpectra {
+  /** Å, air, rest: middle of the first bin and width of a bin. */
+  readonly first: number
+  readonly step: number
+  /** One for each type and class that has enough stars. Values in thousandths of the continuum; −1 where not known. */
+  readonly rows: readonly {
+    readonly type: number
+    readonly luminosity: number
+    readonly stars: number
+    readonly values: readonly number[]
+  }[]
+}
+
 /** A limit that decides on a finding: its figure, unit, why this figure, and where it comes from. */
 export interface Threshold {
   readonly value: number
@@ -146,16 +213,17 @@ export interface LinePattern {
 }
 
 /** How a header card's value is to be read where it is not plain text or in the unit of the fact. */
-export type CardForm =
-  'degrees' | 'hours' | 'packed' | 'west' | 'minutes' | 'milliseconds' | 'km' | 'jd' | 'truncated jd' | 'inverse' | 'nm'
+export type CardForm = 'packed' | 'west' | 'minutes' | 'milliseconds' | 'jd' | 'tai seconds'
 
 /** One keyword that observatories use for a fact. HIERARCH keywords stand without the leading word. */
 export interface KeywordSynonym {
   readonly keyword: string
   /** Form of the value where it differs from the fact's own. */
   readonly form?: CardForm
-  /** The card counts only where this logical one is true. */
+  /** The card counts only where this one is true or says 'on'. */
   readonly when?: string
+  /** 'counts' where the card counts as well when the one of `when` is absent. */
+  readonly whenAbsent?: 'counts'
 }
 
 /** Facts of a header that have synonyms. */
