@@ -123,9 +123,14 @@ function join(parts: readonly Spectrum[]): Spectrum {
     code: 'joined',
     text: `joined from ${parts.length} spectra that overlap or abut${gaps > 0 ? `, with ${gaps} gaps` : ''}; in an overlap the stronger signal is kept`,
   })
-  const { row: _row, sky: _sky, sigma: _sigma, ...rest } = first
   return {
-    ...rest,
+    medium: first.medium,
+    mediumHow: first.mediumHow,
+    frame: first.frame,
+    fluxUnit: first.fluxUnit,
+    fluxKind: first.fluxKind,
+    role: first.role,
+    facts: first.facts,
     wavelength: pick((part) => part.wavelength),
     flux: pick((part) => part.flux),
     ...(parts.some((part) => part.sigma) ? { sigma: pick((part) => part.sigma) } : {}),
