@@ -1,6 +1,6 @@
 import type { NightSummary } from '../night/types.ts'
 import type { Outcome } from '../quality/types.ts'
-import { cutToWidth, padToWidth, wrapToWidth } from './columnWidth.ts'
+import { columnWidth, cutToWidth, padToWidth, wrapToWidth } from './columnWidth.ts'
 import { errorFinding } from './errorFinding.ts'
 import { plainText } from './plainText.ts'
 import type { TerminalStyle } from './terminalTable.ts'
@@ -104,7 +104,7 @@ function targets(night: NightSummary, outcomes: readonly Outcome[], { width, col
   })
   const limits = [Math.max(12, Math.floor(width * 0.3)), 22, 9, 9, 24]
   const widths = limits.map((limit, k) =>
-    Math.min(limit, Math.max(...rows.map((row) => cutToWidth(row[k], limit).length))),
+    Math.min(limit, Math.max(...rows.map((row) => columnWidth(cutToWidth(row[k], limit))))),
   )
   const lines = rows.slice(0, MOST).map((row) => {
     let used = 2
