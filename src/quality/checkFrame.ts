@@ -23,7 +23,7 @@ export function checkFrame(
   const limit = (name: keyof Thresholds): number => thresholds[name].value
   return [
     ...checkKind(sorted),
-    ...(LAMPS.includes(sorted.kind) ? checkLamp(sorted.kind, statistics, limit) : []),
+    ...(LAMPS.includes(sorted.kind) ? checkLamp(sorted.kind, facts, statistics, limit) : []),
     ...(sorted.kind === 'bias' || sorted.kind === 'dark' ? checkDark(sorted.kind, facts, statistics, limit) : []),
     ...(STARS.includes(sorted.kind) ? checkStar(statistics, limit) : []),
     ...checkPixels(statistics),
@@ -51,14 +51,16 @@ function checkKind({ kind, kindHow, reason, looksLike }: SortedFrame): Finding[]
 
 function checkLamp(
   kind: FrameKind,
+  { gain }: HeaderFacts,
   { median, p99, max, noise, saturatedFraction, arcLines = 0, arcPeak }: FrameStatistics,
   limit: Limit,
 ): Finding[] {
   const found: Finding[] = []
   const brightest = kind === 'arc' ? Math.max(p99 - median, arcPeak ?? 0) : Math.max(p99 - median, 0)
   const light = noise > 0 ? brightest / noise : Infinity
-  const isLevelDark = kind === 'arc' || p99 < 20 * Math.max(noise, 1)
-  const isOff = light < limit('lampOffLevel') && arcLines < limit('arcLinesMinimum') && isLevelDark
+  // an evenly lit flat has the noise of its photons, a dark one far less than its level
+  const isQuiet = kind === 'arc' || noise ** 2 * (gain ?? 1) < 0.3 * Math.abs(median) || p99 < 20 * Math.max(noise, 1)
+  const isOff = light < limit('lampOffLevel') && arcLines < limit('arcLinesMinimum') && isQuiet
   if (isOff) {
     const text = `The ${kind} frame holds no light of a lamp: its brightest hundredth lies ${figure(light)} times the noise above the median, at least ${limit('lampOffLevel')} expected`
     found.push(finding(QUALITY_RULES, 'lamp-off', text, { value: light, limit: limit('lampOffLevel') }))

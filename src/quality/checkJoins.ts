@@ -26,19 +26,16 @@ export function checkJoins({ spectrum, type }: SpectrumInput, samples: Samples, 
 function checkSteps(samples: Samples, limit: Limits): Finding[] {
   const { n, residual, noise, wavelength } = samples
   const steps: { readonly at: number; readonly height: number }[] = []
+  const [lowest, sigmas] = [limit('stepHeight'), limit('stepSigma')]
   for (let i = SIDE - 1; i < n - SIDE; i++) {
     const jump = residual[i + 1] - residual[i]
-    if (
-      Math.abs(jump) < limit('stepHeight') * SHARP ||
-      !(Math.abs(jump) > limit('stepSigma') * (noise[i] || 0) * SHARP)
-    )
-      continue
+    if (Math.abs(jump) < lowest * SHARP || !(Math.abs(jump) > sigmas * (noise[i] || 0) * SHARP)) continue
     const left = residual.subarray(i - SIDE + 1, i + 1)
     const right = residual.subarray(i + 1, i + SIDE + 1)
     const height = median(right) - median(left)
     const scatter = Math.max(robustSigma(left), robustSigma(right), noise[i] || 0)
     // both sides must be even, else it is a line or a band
-    if (Math.abs(height) < limit('stepHeight') || Math.abs(height) < limit('stepSigma') * scatter) continue
+    if (Math.abs(height) < lowest || Math.abs(height) < sigmas * scatter) continue
     if (jump / height < SHARP || jump / height > 2 - SHARP) continue
     steps.push({ at: (wavelength[i] + wavelength[i + 1]) / 2, height })
   }
@@ -96,10 +93,12 @@ function checkRinging({ n, residual }: Samples, limit: Limits): Finding[] {
   for (let from = 0; from + STRETCH < n; from += STRETCH) {
     let cross = 0
     let square = 0
+    let before = residual[from + 1] - residual[from]
     for (let i = from + 1; i < from + STRETCH - 1; i++) {
-      const [before, after] = [residual[i] - residual[i - 1], residual[i + 1] - residual[i]]
+      const after = residual[i + 1] - residual[i]
       cross -= before * after
       square += before * before
+      before = after
     }
     stretches++
     const share = square > 0 ? cross / square : 0

@@ -33,11 +33,12 @@ export function findSpikes(samples: Samples, fwhm: number, limit: Limits): reado
   const width = Math.max(NARROWEST_FWHM, fwhm)
   const share = 0.5 * Math.exp((-4 * Math.LN2) / width ** 2)
   const rough = roughness(samples)
+  const [sigmas, depth] = [limit('spikeSigma'), limit('spikeDepth')]
   const spikes: Spike[] = []
   const around = new Float64Array(6)
   for (let i = 4; i < n - 4; i++) {
     const scale = Math.max(noise[i] || 0, rough[i])
-    const least = Math.max(limit('spikeSigma') * scale, limit('spikeDepth'))
+    const least = Math.max(sigmas * scale, depth)
     // a spike bends the spectrum by at least its height less the neighbours' share
     if (Math.abs(residual[i] - (residual[i - 1] + residual[i + 1]) / 2) < (1 - share) * least) continue
     if (index[i + 4] - index[i - 4] !== 8) continue
@@ -61,12 +62,12 @@ export function findSpikes(samples: Samples, fwhm: number, limit: Limits): reado
 
 /** Scatter of the samples about the mean of their neighbours, in blocks: what crowded lines do counts as noise. */
 function roughness({ n, residual }: Samples): Float64Array {
-  const block = 100
+  const block = 200
   const bends = new Float64Array(Math.max(0, n - 2))
   for (let i = 1; i < n - 1; i++) bends[i - 1] = residual[i] - (residual[i - 1] + residual[i + 1]) / 2
   const out = new Float64Array(n)
   for (let from = 0; from < n; from += block) {
-    const part = bends.subarray(Math.max(0, from - block / 2), Math.min(bends.length, from + 1.5 * block))
+    const part = bends.subarray(from, Math.min(bends.length, from + block))
     // variance of x0 − (x−1 + x+1)/2 is 1.5 times that of a sample
     out.fill(robustSigma(part) / Math.sqrt(1.5), from, Math.min(n, from + block))
   }

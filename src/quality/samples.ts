@@ -56,18 +56,26 @@ export function samplesOf(spectrum: Spectrum, continuum: Continuum): Samples {
   for (let i = 0; i < total; i++) {
     if (spectrum.usable[i] && Number.isFinite(spectrum.flux[i]) && continuum.level[i] > 0) index[n++] = i
   }
-  const kept = index.slice(0, n)
-  const steps = new Float64Array(Math.max(0, total - 1))
-  for (let i = 0; i < steps.length; i++) steps[i] = spectrum.wavelength[i + 1] - spectrum.wavelength[i]
-  return {
-    n,
-    index: kept,
-    wavelength: Float64Array.from(kept, (i) => spectrum.wavelength[i]),
-    flux: Float64Array.from(kept, (i) => spectrum.flux[i]),
-    residual: Float64Array.from(kept, (i) => spectrum.flux[i] / continuum.level[i] - 1),
-    noise: Float64Array.from(kept, (i) => continuum.noise[i] / continuum.level[i]),
-    step: median(steps),
+  const wavelength = new Float64Array(n)
+  const flux = new Float64Array(n)
+  const residual = new Float64Array(n)
+  const noise = new Float64Array(n)
+  for (let k = 0; k < n; k++) {
+    const i = index[k]
+    wavelength[k] = spectrum.wavelength[i]
+    flux[k] = spectrum.flux[i]
+    residual[k] = spectrum.flux[i] / continuum.level[i] - 1
+    noise[k] = continuum.noise[i] / continuum.level[i]
   }
+  return { n, index: index.subarray(0, n), wavelength, flux, residual, noise, step: stepOf(spectrum.wavelength) }
+}
+
+/** Median step of increasing wavelengths, from some two hundred of the steps. */
+function stepOf(wavelength: Float64Array): number {
+  const stride = Math.max(1, Math.floor(wavelength.length / 200))
+  const steps: number[] = []
+  for (let i = 1; i < wavelength.length; i += stride) steps.push(wavelength[i] - wavelength[i - 1])
+  return median(steps)
 }
 
 /** Index of the first of increasing `values` that is not below `value`. */

@@ -2,6 +2,7 @@ import type { Finding } from '../findings/types.ts'
 import type { FoundLine, Measurement } from '../features/types.ts'
 import type { FluxKind, HeaderFacts, Medium, MediumHow, UncertaintyKind } from '../spectrum/types.ts'
 import type { TypePosterior } from '../typing/types.ts'
+import type { TypingInput } from '../typing/typingInput.ts'
 import type { Resolution, RestFrame, ZeroPoint } from '../velocity/types.ts'
 
 export type Quality = 'usable' | 'doubtful' | 'unusable'
@@ -51,6 +52,8 @@ export interface SpectrumOutcome {
   readonly measurements: readonly Measurement[]
   readonly lines?: readonly FoundLine[]
   readonly type: TypePosterior
+  /** What the type was told from, so that several spectra of one star can be typed together. */
+  readonly typing?: TypingInput
   readonly quality: Quality
   readonly findings: readonly Finding[]
   /** Median flux in the visual band per second, for throughput. */
