@@ -1,5 +1,5 @@
 import { FormatError } from '../errors.ts'
-import { readData } from './source.ts'
+import { requireData } from './source.ts'
 import { physicalValues } from './stored.ts'
 import type { NumberLetter } from './stored.ts'
 import { readTiles } from './tiles.ts'
@@ -13,8 +13,11 @@ export interface ElementRange {
 
 const LETTER: Readonly<Record<Bitpix, NumberLetter>> = { 8: 'B', 16: 'I', 32: 'J', 64: 'K', [-32]: 'E', [-64]: 'D' }
 
-/** Elements above which an array is refused: its numbers would not fit in memory (2^26 x 8 bytes = 512 MiB). */
-const MOST_ELEMENTS = 2 ** 26
+/** Elements above which an array is refused at once (8 bytes each: 256 MiB); larger ones are read by ranges. */
+const MOST_ELEMENTS = 2 ** 25
+
+/** Elements that are scaled in one go, so that little is held beside the result. */
+const STEP = 2 ** 20
 
 /** Elements of an image: the product of its axes; 0 without axes. */
 export function elementCount(hdu: Hdu): number {
@@ -37,16 +40,26 @@ export function readImage(source: ByteSource, hdu: Hdu, range?: ElementRange): F
   if (!Number.isInteger(start) || !Number.isInteger(count) || start < 0 || count < 0 || start + count > total) {
     throw new RangeError(`range requires elements within ${total}, got ${start} + ${count}`)
   }
-  const size = Math.abs(hdu.bitpix) / 8
-  if (hdu.kind === 'image') {
-    const bytes = readData(source, hdu, hdu.dataByte + start * size, limited(hdu, count) * size)
-    return physicalValues(bytes, LETTER[hdu.bitpix], { scale: hdu.scale, zero: hdu.zero, empty: hdu.blank })
-  }
-  return readTiles(source, hdu, { start, count: limited(hdu, count) })
+  limit(hdu, count)
+  return hdu.kind === 'image' ? plainPixels(source, hdu, start, count) : readTiles(source, hdu, { start, count })
 }
 
-function limited(hdu: Hdu, count: number): number {
-  if (count <= MOST_ELEMENTS) return count
+function plainPixels(source: ByteSource, hdu: Hdu, start: number, count: number): Float64Array {
+  const size = Math.abs(hdu.bitpix) / 8
+  const scaling = { scale: hdu.scale, zero: hdu.zero, empty: hdu.blank }
+  const first = hdu.dataByte + start * size
+  requireData(source, hdu, first, count * size)
+  if (count <= STEP) return physicalValues(source.read(first, count * size), LETTER[hdu.bitpix], scaling)
+  const out = new Float64Array(count)
+  for (let at = 0; at < count; at += STEP) {
+    const bytes = source.read(first + at * size, Math.min(STEP, count - at) * size)
+    out.set(physicalValues(bytes, LETTER[hdu.bitpix], scaling), at)
+  }
+  return out
+}
+
+function limit(hdu: Hdu, count: number): void {
+  if (count <= MOST_ELEMENTS) return
   const message = `image requires at most ${MOST_ELEMENTS} elements at once, got ${count}`
   throw new FormatError('too-large', message, { hdu: hdu.index, keyword: 'NAXIS1' })
 }

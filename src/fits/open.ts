@@ -2,6 +2,7 @@ import { FormatError } from '../errors.ts'
 import { BLOCK_SIZE } from './card.ts'
 import { hduOf } from './hdu.ts'
 import { readHeader } from './header.ts'
+import { lineEndFault } from './lineEnds.ts'
 import { requireFits } from './signature.ts'
 import { textOf } from './text.ts'
 import type { ByteSource, FitsFile, FitsNote, Hdu } from './types.ts'
@@ -50,7 +51,15 @@ export function openFits(source: ByteSource): FitsFile {
       })
     }
   }
-  return { hdus, notes }
+  return { hdus: notes.some((note) => note.code === 'trailing-bytes') ? checked(source, hdus) : hdus, notes }
+}
+
+function checked(source: ByteSource, hdus: readonly Hdu[]): readonly Hdu[] {
+  if (source.size % BLOCK_SIZE === 0) return hdus
+  return hdus.map((hdu) => {
+    const fault = hdu.fault ?? lineEndFault(source, hdu)
+    return fault === undefined ? hdu : { ...hdu, fault }
+  })
 }
 
 function beginsExtension(source: ByteSource, at: number): boolean {

@@ -12,8 +12,10 @@ export interface RowRange {
 const WIDE_ROW = 16_384
 const ROW_BLOCK = 4 << 20
 
-/** Bytes of one column above which reading is refused. */
-const MOST_BYTES = 2 ** 29
+/** Elements, texts and arrays of one column above which reading at once is refused (about 256 MiB as numbers or strings). */
+const MOST_ELEMENTS = 2 ** 25
+const MOST_TEXTS = 2 ** 22
+const MOST_ARRAYS = 2 ** 20
 
 /** Stored bytes of a column's cells, one after another. */
 export function readCells(source: ByteSource, hdu: Hdu, column: Column, { firstRow, rowCount }: RowRange): Uint8Array {
@@ -22,8 +24,10 @@ export function readCells(source: ByteSource, hdu: Hdu, column: Column, { firstR
   const start = dataByte + firstRow * rowSize
   if (rowCount > 0) requireData(source, hdu, start, (rowCount - 1) * rowSize + offset + width)
   else requireData(source, hdu, dataByte, 0)
-  if (width * rowCount > MOST_BYTES) {
-    const message = `column requires at most ${MOST_BYTES} bytes at once, got ${width} x ${rowCount}`
+  const most = column.descriptor ? MOST_ARRAYS : 'AL'.includes(column.letter) ? MOST_TEXTS : MOST_ELEMENTS
+  const bits = column.letter === 'X' ? 8 : 1
+  if (rowCount > most || width * bits * rowCount > MOST_ELEMENTS * 8) {
+    const message = `column requires at most ${MOST_ELEMENTS} elements at once, got ${rowCount} rows of ${width} bytes`
     throw new FormatError('too-large', message, { hdu: hdu.index, keyword: 'NAXIS2' })
   }
   if (width === rowSize) return readData(source, hdu, start, rowCount * rowSize)

@@ -15,7 +15,7 @@ import type { Bitpix, ByteSource, Column, Hdu, StoredTable } from './types.ts'
 import { descriptorsOf, heapArray } from './variable.ts'
 
 /** Pixels above which a tile is refused. */
-const MOST_TILE_PIXELS = 2 ** 26
+const MOST_TILE_PIXELS = 2 ** 24
 
 const LETTER: Readonly<Record<Bitpix, NumberLetter>> = { 8: 'B', 16: 'I', 32: 'J', 64: 'K', [-32]: 'E', [-64]: 'D' }
 

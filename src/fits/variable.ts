@@ -40,7 +40,7 @@ export function readVariable(source: ByteSource, hdu: Hdu, column: Column, at: D
   return { kind: 'variable', cells }
 }
 
-const MOST_BYTES = 2 ** 29
+const MOST_BYTES = 2 ** 27
 
 /** Where one array lies in the heap. */
 export interface HeapPlace {

@@ -47,6 +47,7 @@ const DIFFERENCES: Readonly<Record<string, string>> = {
   'real/suite_f/testf77.std 7 Dvalue': 'as above',
   'synth/rows_scaled_ints_tnull.fits 1 FLUX': 'the stored value is TNULL: NaN; astropy scales it like a number',
   'broken/bitpix_bad.fits 0 error': 'BITPIX -33 leaves the size unknown: an error, as the manifest wants',
+  'broken/crlf_translated.fits 0 data': 'copied as text: every line feed has a carriage return before it, so an error',
   'broken/naxis1_table_mismatch.fits 1 error': 'NAXIS1 differs from the columns: an error, as the manifest wants',
   'broken/vla_descriptor_out_of_heap.fits 1 WAVE': 'row 0 points outside the heap: an error, as the manifest wants',
 }
@@ -157,7 +158,7 @@ function kindsOf(row: Row): readonly string[] {
 }
 
 function sameImage(row: Row, source: ByteSource, hdu: Hdu): boolean {
-  if (hdu.kind === 'unknown') return false
+  if (hdu.kind === 'unknown' || hdu.fault) return false
   const values = readImage(source, hdu)
   const wanted = new Map(row.values.split(' ').map((part) => part.split('=') as [string, string]))
   const finite = values.filter(Number.isFinite)
