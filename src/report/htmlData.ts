@@ -11,7 +11,7 @@ export interface PackedCurve {
 }
 
 /** Samples kept of all curves of a page together, so that it stays a few MB for any number of targets. */
-const SAMPLES_IN_ALL = 500_000
+const SAMPLES_IN_ALL = 400_000
 const LEAST_SAMPLES = 400
 
 const base64 = (bytes: Uint8Array): string =>

@@ -226,7 +226,7 @@ function limits(x, list) {
     for (let i = 0; i < x.length; i++) if (x[i] >= state.from && x[i] <= state.to && Number.isFinite(y[i])) kept.push(y[i])
     kept.sort((a, b) => a - b)
     if (!kept.length) continue
-    low = Math.min(low, kept[Math.floor((kept.length - 1) * 0.002)])
+    low = Math.min(low, kept[Math.floor((kept.length - 1) * 0.0005)])
     high = Math.max(high, kept[Math.ceil((kept.length - 1) * 0.998)])
   }
   if (!(high > low)) return low === high ? [low - 0.5, high + 0.5] : [0, 1]

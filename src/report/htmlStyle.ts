@@ -14,22 +14,25 @@ a { color: var(--blue); }
 .skip { position: absolute; left: -100rem; }
 .skip:focus { left: 1rem; top: .5rem; background: #fff; padding: .3rem; }
 :focus-visible { outline: 3px solid var(--blue); outline-offset: 2px; }
-.panes { display: grid; grid-template-columns: minmax(22rem, 5fr) 6fr; gap: 1.6rem; align-items: start; }
-@media (max-width: 70rem) { .panes { grid-template-columns: 1fr; } .scroll { max-height: 45vh !important; } }
+.panes { display: grid; grid-template-columns: minmax(0, 11fr) minmax(0, 10fr); gap: 1.4rem; align-items: start; }
+@media (max-width: 80rem) { .panes { grid-template-columns: 1fr; } .scroll { max-height: 45vh !important; } }
 .detail { position: sticky; top: 0; padding-bottom: 1rem; min-width: 0; }
 .controls { display: flex; flex-wrap: wrap; gap: .6rem 1rem; align-items: end; margin: .4rem 0; }
 .controls label { display: flex; flex-direction: column; font-size: .85rem; }
+.controls .check { flex-direction: row; gap: .4rem; align-items: center; }
 input, select, button { font: inherit; color: inherit; }
 input, select { padding: .25rem .4rem; border: 1px solid var(--quiet); border-radius: 3px; background: #fff; }
 .scroll { max-height: 78vh; overflow: auto; border: 1px solid var(--rule); }
 table { border-collapse: collapse; width: 100%; font-size: .88rem; font-variant-numeric: tabular-nums; }
-th, td { text-align: left; padding: .18rem .5rem; border-bottom: 1px solid var(--wash); vertical-align: top; }
+th, td { text-align: left; padding: .18rem .4rem; border-bottom: 1px solid var(--wash); vertical-align: top; }
 thead th { position: sticky; top: 0; background: #fff; border-bottom: 2px solid var(--ink); padding: 0; z-index: 1; }
-thead button { width: 100%; text-align: left; padding: .3rem .5rem; border: 0; background: none; font-weight: 700; cursor: pointer; white-space: nowrap; }
+thead button { width: 100%; text-align: left; padding: .3rem .4rem; border: 0; background: none; font-weight: 700; cursor: pointer; white-space: nowrap; }
 thead th[aria-sort=ascending] button::after { content: " \\2191"; }
 thead th[aria-sort=descending] button::after { content: " \\2193"; }
+td { white-space: nowrap; }
 td.number { text-align: right; }
-tbody th { font-weight: 400; overflow-wrap: anywhere; }
+.half td { white-space: normal; }
+tbody th { font-weight: 400; overflow-wrap: anywhere; min-width: 6rem; }
 tbody th button { border: 0; background: none; padding: 0; color: var(--blue); text-decoration: underline; cursor: pointer; text-align: left; font-weight: 600; }
 tr[aria-current=true] { background: var(--wash); box-shadow: inset 4px 0 0 var(--ink); }
 tr[hidden] { display: none; }
@@ -40,7 +43,7 @@ canvas { display: block; width: 100%; height: 21rem; cursor: crosshair; touch-ac
 .tools { display: flex; flex-wrap: wrap; gap: .35rem; align-items: center; }
 .tools button { border: 1px solid var(--quiet); border-radius: 3px; background: #fff; padding: .12rem .55rem; cursor: pointer; }
 .tools button:hover, thead button:hover { background: var(--wash); }
-.again { border-left: 4px solid var(--vermillion); padding-left: .6rem; }
+#reason { border-left: 4px solid var(--vermillion); padding-left: .6rem; }
 .half { max-height: 15rem; overflow: auto; }
 .half thead th { padding: .2rem .5rem; }
 `

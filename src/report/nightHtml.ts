@@ -88,7 +88,7 @@ ${opening(night, name)}
 <div class="controls">
 <label>Filter by any word <input id="filter" type="search" autocomplete="off"></label>
 <label>Quality <select id="quality"><option value="">all</option><option>usable</option><option>doubtful</option><option>unusable</option></select></label>
-<span><input id="again" type="checkbox"> <label for="again">only those to observe again</label></span>
+<label class="check"><input id="again" type="checkbox"> only those to observe again</label>
 </div>
 <p id="shown" class="quiet" role="status"></p>
 <div class="scroll" tabindex="0" role="region" aria-label="Table of targets">
@@ -126,7 +126,7 @@ function missed(night: NightSummary): string {
 const DETAIL = `<section id="detail" class="detail" aria-labelledby="name" tabindex="-1" hidden>
 <h2 id="name"></h2>
 <p id="verdict" class="lead"></p>
-<p id="reason" class="again"></p>
+<p id="reason"></p>
 <div class="controls"><label>Show <select id="view"><option value="normalised">normalised, at rest</option><option value="observed">as observed</option></select></label>
 <span id="range" class="quiet" role="status"></span></div>
 <div class="plot"><canvas id="plot" tabindex="0" role="img" aria-label="Spectrum" aria-describedby="keys"></canvas></div>
