@@ -32,4 +32,21 @@ export const SOURCES = {
   osterbrock1992: { citation: 'Osterbrock & Martel 1992, PASP 104, 76', doi: '10.1086/132961' },
   dib: { citation: 'diffuse interstellar bands, wavelengths written down from memory', fromMemory: true },
   pickles1998: { citation: 'Pickles 1998, PASP 110, 863', doi: '10.1086/316197' },
+  worthey1994: {
+    citation: 'Worthey 1994, ApJS 95, 107; Trager, Worthey, Faber, Burstein & González 1998, ApJS 116, 1',
+    doi: '10.1086/192087',
+  },
+  worthey1997: { citation: 'Worthey & Ottaviani 1997, ApJS 111, 377', doi: '10.1086/313021' },
+  windows: { citation: 'windows chosen for this program on published stars, by cross-validation' },
+  cardelli1989: { citation: 'Cardelli, Clayton & Mathis 1989, ApJ 345, 245', doi: '10.1086/167900' },
+  fraunhofer: {
+    citation: 'extents of the Fraunhofer bands A, B and a; of the water bands: handbook values',
+    fromMemory: true,
+  },
+  oxygen: {
+    citation:
+      'O2 b-X system: ground state B = 1.437676, D = 4.84e-6, λ = 1.984751, γ = -0.008425; upper states ν0 = 13120.909 and 14525.66, B = 1.39125 and 1.372955 (cm-1); energies after Schlapp 1937, Phys. Rev. 51, 342',
+    fromMemory: true,
+    changed: 'converted to air, lines closer than 0.12 Å joined',
+  },
 } as const satisfies Record<string, Source>
