@@ -15,10 +15,12 @@ export interface InflateLimits {
 /** 512 MiB, the memory that one file may cost. */
 const LIMITS: InflateLimits = { mostBytes: 2 ** 29 }
 
-/** Deflate packs at most 1032 bytes into one (RFC 1951: 258 bytes from 2 bits); what the last four bytes claim is
- *  believed up to this size, beyond it the stream is inflated step by step. */
-const DEFLATE_RATIO = 1032
+/**
+ * What the last four bytes of a gzip file claim of its size is believed up to this many bytes and this many times the
+ * packed size (FITS files pack to a tenth at best); beyond it the stream is inflated step by step.
+ */
 const TRUSTED_SIZE = 64 << 20
+const TRUSTED_RATIO = 100
 const STEP = 16_384
 
 /**
@@ -48,7 +50,7 @@ export function inflateSource(source: ByteSource, limits: InflateLimits = LIMITS
 function inflateGzip(packed: Uint8Array, limits: InflateLimits): ByteSource {
   const n = packed.length
   const claimed = new DataView(packed.buffer, packed.byteOffset, n).getUint32(Math.max(0, n - 4), true)
-  if (claimed <= Math.min(TRUSTED_SIZE, limits.mostBytes, n * DEFLATE_RATIO)) {
+  if (claimed <= Math.min(TRUSTED_SIZE, limits.mostBytes, n * TRUSTED_RATIO)) {
     try {
       return memorySource(gunzipSync(packed, { maxOutputLength: Math.max(1, claimed) }))
     } catch {
@@ -60,7 +62,7 @@ function inflateGzip(packed: Uint8Array, limits: InflateLimits): ByteSource {
   const stream = new Gunzip((chunk) => void sink.push(chunk))
   try {
     for (let at = 0; at < n && !sink.full(); at += STEP) stream.push(packed.subarray(at, at + STEP), at + STEP >= n)
-    if (!sink.full()) notes.push(...remark(packed, sink.size(), limits))
+    if (!sink.full()) notes.push(...remark(packed, sink.size()))
   } catch (error) {
     if (sink.size() === 0)
       throw new FormatError('inflate', 'gzip stream requires whole data, got none', {}, { cause: error })
@@ -74,9 +76,9 @@ function cutNote(size: number): FitsNote {
 }
 
 /** What a whole pass says of a stream that the quick way refused: cut, a wrong check value, or nothing wrong. */
-function remark(packed: Uint8Array, size: number, limits: InflateLimits): readonly FitsNote[] {
+function remark(packed: Uint8Array, size: number): readonly FitsNote[] {
   try {
-    gunzipSync(packed, { maxOutputLength: limits.mostBytes })
+    gunzipSync(packed, { maxOutputLength: size + 1 })
     return []
   } catch (error) {
     if (error instanceof Error && /unexpected end of file/.test(error.message)) return [cutNote(size)]

@@ -51,11 +51,12 @@ export function openFits(source: ByteSource): FitsFile {
       })
     }
   }
-  return { hdus: notes.some((note) => note.code === 'trailing-bytes') ? checked(source, hdus) : hdus, notes }
+  const grown = at < source.size && source.size % BLOCK_SIZE !== 0
+  return { hdus: grown ? checked(source, hdus) : hdus, notes }
 }
 
+/** The HDUs with a fault in those whose data were changed as text is; asked of files of no whole number of blocks. */
 function checked(source: ByteSource, hdus: readonly Hdu[]): readonly Hdu[] {
-  if (source.size % BLOCK_SIZE === 0) return hdus
   return hdus.map((hdu) => {
     const fault = hdu.fault ?? lineEndFault(source, hdu)
     return fault === undefined ? hdu : { ...hdu, fault }
