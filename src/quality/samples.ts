@@ -48,12 +48,16 @@ export function isMolecular(type: TypePosterior): boolean {
   return type.typeNumber !== undefined && type.typeNumber >= MOLECULAR
 }
 
+/** Å: what optical spectrographs and silicon detectors see; outside it the checks below mean nothing. */
+const OPTICAL = [3000, 10100] as const
+
 /** Packs the samples the checks can use; `n` is 0 where no level could be set. */
 export function samplesOf(spectrum: Spectrum, continuum: Continuum): Samples {
   const total = spectrum.flux.length
   const index = new Int32Array(total)
   let n = 0
   for (let i = 0; i < total; i++) {
+    if (spectrum.wavelength[i] < OPTICAL[0] || spectrum.wavelength[i] > OPTICAL[1]) continue
     if (spectrum.usable[i] && Number.isFinite(spectrum.flux[i]) && continuum.level[i] > 0) index[n++] = i
   }
   const wavelength = new Float64Array(n)

@@ -53,7 +53,7 @@ export const THRESHOLDS: Thresholds = {
     source: common,
   },
   negativeShare: { value: 0.05, unit: '1', reason: 'sky or bias was taken out twice over a twentieth', source: common },
-  skySigma: { value: 6, unit: 'σ', reason: 'against the scatter of the same measure beside the line', source: common },
+  skySigma: { value: 8, unit: 'σ', reason: 'against the scatter of the same measure beside the line', source: common },
   skyResidual: {
     value: 0.15,
     unit: '1',
