@@ -1,32 +1,13 @@
-import type { Block, CellBlock, Drawing, Item, LinkTarget, Page, Paper } from './drawing.ts'
+import type { Block, CellBlock, Drawing, Item, Page, Paper } from './drawing.ts'
 import { PAPERS, stroke } from './drawing.ts'
 import { PALETTE } from './palette.ts'
 import type { Area } from './spectrumFigure.ts'
+import type { TableCell, TableColumn } from './tableCell.ts'
+import { bodyRow, columnWidths, headRow } from './tableRow.ts'
 import type { Typeface } from './typeface.ts'
 
 /** Margins of every page [points]. */
 export const MARGIN = { left: 46, right: 40, top: 50, bottom: 44 } as const
-
-export interface TableColumn {
-  readonly head: string
-  /** Points, or a share of what is left when `share` is true. */
-  readonly width: number
-  readonly share?: true
-  readonly align?: 'start' | 'end'
-  /** Broken into lines instead of cut. */
-  readonly wrap?: true
-  /** Cut in the middle (paths). */
-  readonly middle?: true
-}
-
-export interface TableCell {
-  readonly text: string
-  readonly bold?: boolean
-  readonly colour?: string
-  readonly link?: LinkTarget
-  /** Drawn instead of the text, which then is only read out. */
-  readonly draw?: (area: Area) => readonly Item[]
-}
 
 export interface TableStyle {
   readonly size?: number
@@ -181,74 +162,4 @@ export function makeFlow(
   }
 
   return { x, width, room, space: (height) => void (y += height), newPage, heading, paragraph, area, table, finish }
-}
-
-const GAP = 6
-
-function columnWidths(columns: readonly TableColumn[], width: number): number[] {
-  const fixed = columns.reduce((sum, c) => sum + (c.share ? 0 : c.width), 0) + GAP * (columns.length - 1)
-  const shares = columns.reduce((sum, c) => sum + (c.share ? c.width : 0), 0)
-  return columns.map((c) => (c.share ? ((width - fixed) * c.width) / shares : c.width))
-}
-
-interface RowPlace {
-  readonly x: number
-  readonly y: number
-  readonly size: number
-}
-
-function headRow(
-  face: Typeface,
-  columns: readonly TableColumn[],
-  widths: readonly number[],
-  { x, y, size }: RowPlace,
-): CellBlock[] {
-  let left = x
-  return columns.map((column, i) => {
-    const at = column.align === 'end' ? left + widths[i] : left
-    left += widths[i] + GAP
-    const style = { size: size - 0.5, colour: PALETTE.quiet, anchor: column.align ?? 'start', fit: widths[i] }
-    return { heading: true, items: column.head === '' ? [] : [face.text(at, y, column.head, style)] }
-  })
-}
-
-function bodyRow(
-  face: Typeface,
-  columns: readonly TableColumn[],
-  widths: readonly number[],
-  { row, x, y, size, rowHeight }: RowPlace & { readonly row: readonly TableCell[]; readonly rowHeight: number },
-): { readonly cells: CellBlock[]; readonly height: number } {
-  const leading = size * 1.3
-  const texts = columns.map((column, i) => {
-    const { text, bold } = row[i]
-    const weight = bold ? 'bold' : 'regular'
-    const clean = face.clean(text)
-    return column.wrap ? face.wrap(clean, widths[i], { size, weight }) : [clean]
-  })
-  const lines = Math.max(...texts.map((t) => t.length))
-  const height = rowHeight + (lines - 1) * leading
-  let left = x
-  const cells = columns.map((column, i): CellBlock => {
-    const cell = row[i]
-    const at = column.align === 'end' ? left + widths[i] : left
-    const place: Area = { x: left, y, width: widths[i], height }
-    left += widths[i] + GAP
-    if (cell.draw) return { heading: false, items: cell.draw(place) }
-    const base = y + (lines === 1 ? (rowHeight + size * 0.72) / 2 - 1 : size + 1)
-    const items = texts[i]
-      .filter((line) => line !== '')
-      .map((line, k) =>
-        face.text(at, base + k * leading, line, {
-          size,
-          weight: cell.bold ? 'bold' : 'regular',
-          colour: cell.colour ?? (cell.link ? PALETTE.blue : PALETTE.ink),
-          anchor: column.align ?? 'start',
-          fit: widths[i],
-          ...(column.middle ? { middle: true } : {}),
-          ...(cell.link ? { link: cell.link } : {}),
-        }),
-      )
-    return { heading: false, items }
-  })
-  return { cells, height }
 }

@@ -4,8 +4,10 @@ import type { Outcome, Quality } from '../quality/types.ts'
 import type { Drawing, LinkTarget } from './drawing.ts'
 import { box } from './drawing.ts'
 import { errorFinding } from './errorFinding.ts'
-import type { Flow, TableCell, TableColumn } from './flow.ts'
+import type { Flow } from './flow.ts'
+import type { TableCell, TableColumn } from './tableCell.ts'
 import { makeFlow } from './flow.ts'
+import { cell } from './tableCell.ts'
 import { mark } from './marks.ts'
 import type { TypePair } from './nightFigures.ts'
 import { driftFigure, foundAgainstExpected, smallSpectrum } from './nightFigures.ts'
@@ -29,7 +31,6 @@ export interface NightPageOptions extends PageOptions {
   readonly fileOf?: (file: string) => string | undefined
 }
 
-const cell = (text: string, more: Omit<TableCell, 'text'> = {}): TableCell => ({ text, ...more })
 const STANDINGS: Readonly<Record<Quality, Standing>> = { usable: 'good', doubtful: 'doubt', unusable: 'bad' }
 
 /** The night's pages: what to observe again, every target, found against expected, inventory, drifts, log. */

@@ -1,4 +1,5 @@
 import type { Block, Drawing, Item, LinkTarget, PathItem, TextItem } from './drawing.ts'
+import { compactPdf } from './compactPdf.ts'
 import { embeddable } from './embeddable.ts'
 import type { PdfDocument, Structure } from './pdfDocument.ts'
 import { openPdf } from './pdfDocument.ts'
@@ -38,7 +39,7 @@ export function encodePdf(drawing: Drawing, fonts: Fonts, meta: PdfMeta): Promis
   const chunks: Uint8Array[] = []
   const done = new Promise<Uint8Array>((resolve, reject) => {
     doc.on('data', (chunk: Uint8Array) => chunks.push(chunk))
-    doc.on('end', () => resolve(Buffer.concat(chunks)))
+    doc.on('end', () => resolve(compactPdf(Buffer.concat(chunks))))
     doc.on('error', reject)
   })
   doc.registerFont('regular', embeddable(fonts.regular))
@@ -162,13 +163,15 @@ function drawText(doc: PdfDocument, item: TextItem): void {
   const shift = anchor === 'end' ? -width : anchor === 'middle' ? -width / 2 : 0
   doc.font(item.weight).fontSize(item.size).fillColor(item.colour)
   const options = { lineBreak: false, baseline: 0 } as const
+  // A space after every piece keeps the words of two pieces apart when the text is read out or copied.
+  const text = `${item.text} `
   if (!item.upright) {
-    doc.text(item.text, item.x + shift, item.y, options)
+    doc.text(text, item.x + shift, item.y, options)
     return
   }
   doc.save()
   doc.rotate(-90, { origin: [item.x, item.y] })
-  doc.text(item.text, item.x + shift, item.y, options)
+  doc.text(text, item.x + shift, item.y, options)
   doc.restore()
 }
 

@@ -1,8 +1,9 @@
 import type { Drawing, Item, Paper } from './drawing.ts'
-import { stroke } from './drawing.ts'
 import { drawFirstPage } from './firstPage.ts'
-import type { Flow, TableCell } from './flow.ts'
+import { featureTable } from './featureTable.ts'
+import type { Flow } from './flow.ts'
 import { makeFlow } from './flow.ts'
+import { cell } from './tableCell.ts'
 import { PALETTE } from './palette.ts'
 import { plate } from './plate.ts'
 import type { Provenance } from './provenance.ts'
@@ -11,7 +12,7 @@ import type { Area } from './spectrumFigure.ts'
 import type { TargetView } from './targetView.ts'
 import type { Typeface } from './typeface.ts'
 import { findingsOf } from './verdict.ts'
-import { featureWord, minus, percent, signed, typeFound, withError } from './words.ts'
+import { minus, percent, typeFound, withError } from './words.ts'
 
 /** How target pages are laid out. */
 export interface PageOptions {
@@ -35,8 +36,6 @@ export function layoutTargetPages(view: TargetView, { face, paper, provenance }:
     'What the star is, how sure that is, and whether the data can be trusted',
   )
 }
-
-const cell = (text: string, more: Omit<TableCell, 'text'> = {}): TableCell => ({ text, ...more })
 
 function exposureTable(flow: Flow, view: TargetView): void {
   flow.heading('Exposures')
@@ -88,92 +87,6 @@ export function smallPlate(
     yRange: [0, 1] as const,
   }
   return [plate(frame, curves.restWavelength, curves.normalised, 1)]
-}
-
-function featureTable(flow: Flow, view: TargetView): void {
-  const { measurements } = view.exposures[view.best].spectrum
-  const type = typeFound(view.type)
-  const isTyped = view.type.evidence.length > 0
-  flow.heading('Features')
-  if (measurements.length === 0) return flow.paragraph('No feature was measured.')
-  flow.paragraph(
-    isTyped
-      ? `Strengths are positive in absorption. Expected: at the best type, ${type}, with the scatter between stars of that type. Pull: measured less expected in units of the total error. Part: share of the feature in the decision.`
-      : 'Strengths are positive in absorption. No type was found, so none is expected.',
-    { size: 7.5, colour: PALETTE.quiet },
-  )
-  const evidence = new Map(view.type.evidence.map((e) => [e.feature, e]))
-  flow.table(
-    [
-      { head: 'feature', width: 50 },
-      { head: 'species', width: 28 },
-      { head: 'at, Å', width: 32, align: 'end' },
-      { head: 'measured', width: 62, align: 'end' },
-      { head: 'unit', width: 16 },
-      { head: 'expected', width: 58, align: 'end' },
-      { head: 'pull', width: 24, align: 'end' },
-      { head: '−3   0   +3', width: 44 },
-      { head: 'part', width: 28, align: 'end' },
-      { head: 'remark', width: 1, share: true, wrap: true },
-    ],
-    measurements.map((m) => {
-      const e = evidence.get(m.feature)
-      const decided = e !== undefined && e.share >= 0.05
-      return [
-        cell(featureWord(m.feature), { bold: decided }),
-        cell(m.species),
-        cell(m.wavelengthRest.toFixed(1)),
-        cell(m.ew === undefined ? '–' : withError(m.ew, m.ewErr), { bold: decided }),
-        cell(m.unit === '1' ? '' : m.unit),
-        cell(e ? withError(e.expected, e.expectedScatter) : ''),
-        cell(e ? signed(e.pull, 1) : ''),
-        cell('', { draw: (area) => (e ? pullBar(area, e.pull) : []) }),
-        cell(e ? percent(e.share) : ''),
-        cell(remark(m), { colour: PALETTE.quiet }),
-      ]
-    }),
-    { rowHeight: 10.6 },
-  )
-}
-
-function remark(m: { status: string; reason?: string; limit3sigma?: number; unit: string }): string {
-  if (m.status === 'absent' && m.limit3sigma !== undefined)
-    return `below ${m.limit3sigma.toPrecision(2)} ${m.unit}, 3 σ`
-  if (m.reason) return m.status === 'measured' ? m.reason : `${m.status}: ${m.reason}`
-  return m.status === 'measured' ? '' : m.status
-}
-
-/** The pull as a dot on a line from −3 to +3; beyond, an arrow's head at the end. */
-function pullBar(area: Area, pull: number): Item[] {
-  const middle = area.y + area.height / 2 - 0.5
-  const scale = area.width / 7
-  const centre = area.x + area.width / 2
-  const held = Math.max(-3.3, Math.min(3.3, pull))
-  const at = centre + held * scale
-  const colour = Math.abs(pull) > 3 ? PALETTE.vermillion : PALETTE.ink
-  return [
-    stroke([centre - 3 * scale, middle], [centre + 3 * scale, middle], PALETTE.rule, { width: 0.4 }),
-    stroke([centre, middle - 2.5], [centre, middle + 2.5], PALETTE.rule, { width: 0.4 }),
-    { draw: 'path', points: Float64Array.of(centre, middle, at, middle), stroke: colour, width: 1.6 },
-    ...(Math.abs(pull) > 3
-      ? [
-          {
-            draw: 'path' as const,
-            points: Float64Array.of(
-              at,
-              middle - 2.4,
-              at + Math.sign(pull) * 3.5,
-              middle,
-              at,
-              middle + 2.4,
-              at,
-              middle - 2.4,
-            ),
-            fill: colour,
-          },
-        ]
-      : []),
-  ]
 }
 
 function ratioTable(flow: Flow, view: TargetView): void {
