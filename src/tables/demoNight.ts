@@ -194,7 +194,7 @@ export const DEMO_DATE = '2026-05-16'
 export const DEMO_OVERHEAD = { readout: 14, pointing: 150, grating: 45 } as const
 
 /** From this time (UTC, hours from the start of DEMO_DATE) the red scale of the troubled night is off by so many Å. */
-export const DEMO_JUMP = { hour: 31.2, setup: 'red', shift: 5 } as const
+export const DEMO_JUMP = { hour: 31, setup: 'red', shift: 5 } as const
 
 /** Figures of the planted troubles. */
 export const DEMO_OFFSETS = {
@@ -250,7 +250,7 @@ export const DEMO_PLAN: readonly DemoStep[] = [
   science('Fendral', 'blue', 480),
   science('Fendral', 'red', 240),
   arc('red'),
-  science('Galvyn', 'red', 240),
+  science('Galvyn', 'red', 240, { at: '00:52' }),
   science('Galvyn', 'blue', 300),
   science('Hespora', 'blue', 90, { trouble: 'saturated', form: 'image with sigma' }),
   science('Ithrane', 'blue', 540),
@@ -259,7 +259,7 @@ export const DEMO_PLAN: readonly DemoStep[] = [
   science('Kestimar', 'blue', 600, { trouble: 'cosmic ray', form: 'image with sigma' }),
   science('Lorwen', 'blue', 660, { trouble: 'truncated' }),
   arc('blue'),
-  science('Mirovel', 'blue', 720, { trouble: 'sky over-subtracted' }),
+  science('Mirovel', 'blue', 720, { trouble: 'sky over-subtracted', at: '02:50' }),
   science('Mirovel', 'red', 480),
   arc('red'),
   science('Nerathis', 'red', 240),
@@ -271,7 +271,7 @@ export const DEMO_PLAN: readonly DemoStep[] = [
   science('Quorine', 'blue', 900, { trouble: 'too faint', form: 'image with sigma' }),
   science('Rastivel', 'blue', 600, { form: 'gzip' }),
   arc('blue'),
-  science('Selmora', 'blue', 900),
+  science('Selmora', 'blue', 900, { at: '04:46' }),
   science('Selmora', 'red', 480),
   arc('red'),
   science('Tavrine', 'blue', 540),
@@ -287,7 +287,7 @@ export const DEMO_PLAN: readonly DemoStep[] = [
   science('Xanthir', 'red', 240),
   arc('red'),
   science('Xanthir', 'blue', 600, { form: 'image with sigma' }),
-  science('Yolvane', 'blue', 300, { trouble: 'emission' }),
+  science('Yolvane', 'blue', 300, { trouble: 'emission', at: '07:04' }),
   arc('blue'),
   science('Yolvane', 'red', 300, { trouble: 'emission' }),
   science('Zephrine', 'red', 300),
@@ -295,11 +295,14 @@ export const DEMO_PLAN: readonly DemoStep[] = [
   science('Zephrine', 'blue', 300),
   science('Arquell', 'blue', 480, { form: 'image with sigma' }),
   science('Brinmoor', 'blue', 600),
+  science('Brinmoor', 'red', 300),
+  arc('red'),
+  science('Arquell', 'red', 300),
   arc('blue'),
-  science('Cindrel', 'blue', 300),
+  science('Cindrel', 'blue', 300, { at: '08:40' }),
   science('Dorvath', 'blue', 480, { trouble: 'not observed' }),
   science('Dorvath', 'red', 240, { trouble: 'not observed' }),
-  { kind: 'standard', star: 'Std Ombrel', setup: 'red', exposure: 300, form: 'table' },
+  { kind: 'standard', star: 'Std Ombrel', setup: 'red', exposure: 300, form: 'table', at: '09:22' },
   arc('red'),
   { kind: 'standard', star: 'Std Ombrel', setup: 'blue', exposure: 300, form: 'table' },
   arc('blue'),
