@@ -76,6 +76,8 @@ export const READING_RULES = {
   'pixel-axis': fault('the axis counts pixels: no wavelength solution', 'calibrate the wavelengths first'),
   'no-dispersion': fault('a row has no dispersion solution that can be read'),
   'no-rest-wavelength': fault('a velocity axis has no rest wavelength', 'write RESTWAV into the header'),
+  'grism-incomplete': fault('a grism axis lacks its ruling or order'),
+  'no-table': fault('the table of a tabulated axis is missing'),
   'unit-unknown': fault('the unit of the wavelengths is unknown', 'correct CUNIT1 or TUNITn'),
   'zero-step': fault('the wavelength step is 0'),
   'constant-wavelength': fault('all wavelengths are the same'),

@@ -37,7 +37,7 @@ export function listedAxis(
   const log =
     found?.log ??
     (role === 'log wavelength' ? (/^ln/i.test(name) ? 'ln' : 'log10') : undefined) ??
-    (low >= 3 && high <= 5 && (!found || found.scale === 1) ? 'log10' : undefined)
+    (low >= 3 && high <= 5 && (!found || (found.quantity === 'wavelength' && found.scale === 1)) ? 'log10' : undefined)
   if (log && !found?.log && role !== 'log wavelength')
     notes.push({
       code: 'log-guessed',

@@ -1,4 +1,4 @@
-import { vacuumToAir } from './air.ts'
+import { airToVacuum, vacuumToAir } from './air.ts'
 import { figure, refuse, wavelengthFault } from './axis.ts'
 import type { AxisAnswer } from './axis.ts'
 import { cardNumber, cardText } from './cards.ts'
@@ -90,6 +90,25 @@ export function headerAxis(headers: Headers, number: number, length: number): Ax
   return wavelengthFault(answer.axis.wavelength, `axis ${number}`) ?? answer
 }
 
+/**
+ * As `headerAxis`, for the first alternate description (CTYPE1A, CRVAL1A ...; FITS 4.0, section 8.2.1) whose type is a
+ * code of Paper III; undefined when there is none.
+ */
+export function alternateAxis(headers: Headers, number: number, length: number): AxisAnswer | undefined {
+  for (const letter of 'ABCDEFGHIJKLMNOPQRSTUVWXYZ') {
+    const type = cardText([headers[0]], `CTYPE${number}${letter}`)
+    if (type === undefined || SPECTRAL_CODES[type.slice(0, 4).toUpperCase()] === undefined) continue
+    const shifted = headers.map((header) => ({
+      cards: header.cards,
+      get: (keyword: string) => header.get(keyword + letter),
+    }))
+    const answer = headerAxis(shifted, number, length)
+    if ('axis' in answer)
+      return { axis: { ...answer.axis, words: `${answer.axis.words} of the alternate description ${letter}` } }
+  }
+  return undefined
+}
+
 /** COEFF0 and COEFF1: log10 of the first wavelength and step (surveys that give no CRVAL). */
 function coefficientPart(headers: Headers): LinearPart | undefined {
   const reference = cardNumber(headers, 'COEFF0')
@@ -132,19 +151,26 @@ function standardAxis(
     rest = found
   }
   const reference = linear.reference * unit.scale
-  const isAir = code === 'AWAV' || algorithm === 'GRA'
+  const isAir = code === 'AWAV'
   const wavelength = new Float64Array(length)
   const sampling = /^[FWAV]2/.test(algorithm) ? SAMPLING[algorithm[0]] : undefined
-  const grism =
-    algorithm === 'GRI' || algorithm === 'GRA' ? grismOf((i) => cardNumber(headers, `PV${number}_${i}`)) : undefined
-  if (grism && grism.ruling * grism.order === 0)
+  const vacuumReference = known.toVacuum(reference, rest)
+  const vacuumSlope = known.slope(reference, rest)
+  const inAir = algorithm === 'GRA'
+  const grism = /^GR[IA]$/.test(algorithm)
+    ? {
+        of: grismOf((i) => cardNumber(headers, `PV${number}_${i}`)),
+        inAir,
+        reference: inAir ? vacuumToAir(vacuumReference) : vacuumReference,
+        slope: vacuumSlope * (inAir ? SAMPLING.A.slope(vacuumReference, rest) : 1),
+      }
+    : undefined
+  if (grism && grism.of.ruling * grism.of.order === 0)
     return refuse(
       'grism-incomplete',
       `PV${number}_0 and PV${number}_1 require a ruling and an order other than 0, got 0`,
       8,
     )
-  const vacuumReference = known.toVacuum(reference, rest)
-  const vacuumSlope = known.slope(reference, rest)
   for (let i = 0; i < length; i++) {
     const step = linear.step * unit.scale * (i + 1 - linear.pixel)
     if (algorithm === 'LOG') wavelength[i] = known.toVacuum(reference * Math.exp(step / reference), rest)
@@ -152,11 +178,10 @@ function standardAxis(
       const start = sampling.of(vacuumReference, rest)
       wavelength[i] = sampling.toVacuum(start + step * vacuumSlope * sampling.slope(vacuumReference, rest), rest)
     } else if (grism) {
-      const origin =
-        isAir && code !== 'AWAV' ? vacuumToAir(vacuumReference) : code === 'AWAV' ? reference : vacuumReference
-      wavelength[i] = grismWavelength(grism, origin, step * (code === 'AWAV' ? 1 : vacuumSlope))
+      const bent = grismWavelength(grism.of, grism.reference, step * grism.slope)
+      wavelength[i] = grism.inAir ? airToVacuum(bent) : bent
     } else wavelength[i] = known.toVacuum(reference + step, rest)
-    if (code === 'AWAV' && !grism) wavelength[i] = vacuumToAir(wavelength[i])
+    if (code === 'AWAV') wavelength[i] = vacuumToAir(wavelength[i])
   }
   const how =
     algorithm === '' ? '' : algorithm === 'LOG' ? ', logarithmic' : grism ? ', grism' : `, even in ${sampling?.words}`
@@ -247,7 +272,8 @@ function plainAxis(headers: Headers, input: AxisInput & { readonly type: string 
     return refuse('unit-unknown', `CUNIT${number} requires a spectral unit, got '${unknown}'`, 8, `CUNIT${number}`)
   const ends = [values[0], values[length - 1]]
   // log10 of 1000 to 100000 Å lies between 3 and 5: no optical axis in Å does, and none of this length in µm.
-  const looksLog = (!unit || unit.scale === 1) && Math.min(...ends) >= 3 && Math.max(...ends) <= 5
+  const isAngstrom = !unit || (unit.quantity === 'wavelength' && unit.scale === 1)
+  const looksLog = isAngstrom && Math.min(...ends) >= 3 && Math.max(...ends) <= 5
   if (looksLog && !isLog && unit?.log === undefined)
     notes.push({
       code: 'log-guessed',

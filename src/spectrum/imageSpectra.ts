@@ -10,12 +10,14 @@ import { headersOf, placeWords, refused } from './container.ts'
 import type { Container, HduAnswer } from './container.ts'
 import type { FoundSpectrum } from './found.ts'
 import { fluxUnitCard } from './fluxUnit.ts'
-import { headerAxis, isOtherAxis } from './headerAxis.ts'
+import { alternateAxis, headerAxis, isOtherAxis } from './headerAxis.ts'
 import { imagePlanes } from './imagePlanes.ts'
 import type { ImagePlanes } from './imagePlanes.ts'
 import { imageRole } from './imageRole.ts'
 import type { WavelengthLabel } from './medium.ts'
 import { planeRole } from './planeRole.ts'
+import { isEvenlySampled } from './sampling.ts'
+import { guessedWavelengthUnit } from './unit.ts'
 import { rowLayout } from './rowLayout.ts'
 import type { RowLayout } from './rowLayout.ts'
 import { tabulatedAxis } from './tabulatedAxis.ts'
@@ -48,7 +50,8 @@ export function imageSpectra(container: Container, hdu: Hdu): HduAnswer & { read
     }
     return { ...refused(refusal), isFrame: false }
   }
-  const layout = shape.rows > 1 ? rowLayout(headers, shape.rows) : undefined
+  const layout =
+    shape.rows > 1 ? (rowLayout(headers, shape.rows) ?? unnamedLayout(container, hdu, headers, shape)) : undefined
   const why = shape.rows === 1 ? 'one row' : rowsEvidence(container, hdu, headers, shape, layout)
   if (why === undefined) {
     const message = `image requires rows that are spectra, got a frame of ${shape.samples} x ${shape.rows} without one dispersion solution a row`
@@ -81,6 +84,18 @@ function imageShape(hdu: Hdu): ImageShape | undefined {
   // Three axes: aperture spectra with bands (spectrum, raw, background, sigma), else a cube.
   const isBands = cardText([hdu.header], 'BANDID1') !== undefined || isMultispec(hdu.header)
   return isBands && third <= FEW_ROWS ? { samples, rows: second, bands: third, axis: 1 } : undefined
+}
+
+/** Rows wavelength, flux and perhaps σ of an image without names and axis, told by the values of its first row. */
+function unnamedLayout(container: Container, hdu: Hdu, headers: Headers, shape: ImageShape): RowLayout | undefined {
+  const isSmall = shape.rows <= 4 && shape.samples >= 16 && shape.bands === 1
+  if (!isSmall || 'axis' in headerAxis(headers, 1, shape.samples) || isMultispec(hdu.header)) return undefined
+  const first = readRow(container, hdu, shape, 0)
+  const ends = [first[0], first[first.length - 1]]
+  if (!isEvenlySampled(first) || guessedWavelengthUnit(Math.min(...ends), Math.max(...ends)) === undefined)
+    return undefined
+  const roles = (['wavelength', 'flux', 'sigma', 'other'] as const).slice(0, shape.rows)
+  return { roles, words: `rows ${roles.join(', ')} by their order and values`, isNamed: false }
 }
 
 /** Why the rows of an image are spectra, in words; undefined for a frame. */
@@ -142,9 +157,7 @@ function planeRows(container: Container, hdu: Hdu, headers: Headers, shape: Imag
   const errors = ['sigma', 'inverse variance', 'variance', 'relative'].map(at).find((row) => row >= 0)
   const kind = errors === undefined ? undefined : uncertaintyKind(layout.roles[errors])
   const sky = at('sky')
-  const notes = layout.isNamed
-    ? []
-    : [{ code: 'layout-guessed', text: `${layout.words}: by the documentation of the survey, not by the file` }]
+  const notes = layout.isNamed ? [] : [{ code: 'layout-guessed', text: `${layout.words}; the file does not name them` }]
   const found: FoundSpectrum = {
     hdu: hdu.index,
     axis: answer.axis,
@@ -190,7 +203,9 @@ function findAxis(container: Container, hdu: Hdu, headers: Headers, shape: Image
   if (companion)
     return 'refusal' in companion ? companion : { axis: companion.axis, label: companion.label, perRow: shape.rows > 1 }
   const tabulated = tabulatedAxis(container, hdu, headers, shape.axis, shape.samples)
-  return tabulated ?? headerAxis(headers, shape.axis, shape.samples)
+  if (tabulated) return tabulated
+  const plain = headerAxis(headers, shape.axis, shape.samples)
+  return 'axis' in plain ? plain : (alternateAxis(headers, shape.axis, shape.samples) ?? plain)
 }
 
 function apertureRow(

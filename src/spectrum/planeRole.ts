@@ -32,13 +32,13 @@ const PATTERNS: readonly (readonly [PlaneRole, RegExp])[] = [
   ['weight', /(^|_)(weight|weights|wht|snr|s_n|sn)(_|$)/],
   [
     'wavelength',
-    /^(obs_?|rest_?|vac_?|air_?|bary_?|helio_?)?(wave|waves|wavelength|wavelengths|wavelen|wavel|waveln|wlen|wl|lambda|lambdas|lam|awav|spectral_axis|spectral_coordinate|angstrom|angstroms|microns?)(_?(vac|vacuum|air|obs|bary|helio|nm|um|a|aa|ang|angstroms?|microns?|soln|sol|start|\d+))*$/,
+    /^(obs_?|rest_?|vac_?|air_?|bary_?|helio_?|opt_|box_|std_|sci_|[a-z]_|calib_|arm_)?(wave|waves|wavelength|wavelengths|wavelen|wavel|waveln|wlen|wl|lambda|lambdas|lam|awav|spectral_axis|spectral_coordinate|angstrom|angstroms|microns?)(_?(vac|vacuum|air|obs|bary|helio|nm|um|a|aa|ang|angstroms?|microns?|soln|sol|start|\d+))*$/,
   ],
   ['sky', /(^|_)(sky|skies|bkg|bkgd|back|background|bgd)(_|$)|sky_?(flux|spec)|skyflux/],
   ['normalised', /normali[sz]|(^|_)norm(_|$)|rectified|flux_?norm|continuum_?normal|contsub|continuum_sub/],
   [
     'other',
-    /contin|model|fit(_|$)|template|tell?uric|scatter|cross_?talk|blaze|flat|gross|gcounts|raw|calib|epsilon|residual|corr/,
+    /contin|model|fit(_|$)|template|tell?uric|scatter|cross_?talk|blaze|flat|gross|gcounts|raw|noss|calib_?vec|epsilon|residual|corr/,
   ],
   [
     'flux',

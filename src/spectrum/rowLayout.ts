@@ -20,7 +20,7 @@ const SURVEYS: readonly {
   {
     is: (headers, rows) => /lamost|guoshoujing/i.test(cardText(headers, 'TELESCOP') ?? '') && rows === 5,
     roles: ['flux', 'inverse variance', 'wavelength', 'other', 'other'],
-    words: 'rows flux, inverse variance, wavelength, masks',
+    words: 'rows flux, inverse variance, wavelength, masks by the documentation of the survey',
   },
   {
     is: (headers, rows) =>
@@ -29,13 +29,13 @@ const SURVEYS: readonly {
       rows <= 6 &&
       cardNumber(headers, 'COEFF0') !== undefined,
     roles: ['flux', 'normalised', 'sigma', 'other', 'other', 'other'],
-    words: 'rows flux, continuum-subtracted flux, sigma, masks',
+    words: 'rows flux, continuum-subtracted flux, sigma, masks by the documentation of the survey',
   },
   {
     is: (headers, rows) =>
       rows >= 3 && rows <= 4 && cardText(headers, 'OBSRUN') !== undefined && cardText(headers, 'PIVOT') !== undefined,
     roles: ['flux', 'variance', 'sky', 'other'],
-    words: 'rows flux, variance, sky',
+    words: 'rows flux, variance, sky by the documentation of the survey',
   },
 ]
 

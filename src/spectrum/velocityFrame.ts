@@ -1,4 +1,4 @@
-import { cardText, cardTruth } from './cards.ts'
+import { cardNumber, cardText, cardTruth } from './cards.ts'
 import type { Headers } from './cards.ts'
 import { factCards, factNumber } from './factCards.ts'
 import type { KeywordTable } from '../tables/types.ts'
@@ -53,6 +53,9 @@ export function velocityFrame(headers: Headers, keywords: KeywordTable): FrameAn
       if (isDone) return answer(frame, `${card.keyword} = ${String(card.value)}`)
     }
   }
+  const applied = cardNumber(headers, 'BSS_VHEL')
+  if (applied !== undefined && applied !== 0)
+    return answer('heliocentric', `BSS_VHEL = ${applied}, a velocity taken out`)
   if (cardText(headers, 'DOPCOR01') !== undefined) {
     const why = `DOPCOR01 = ${cardText(headers, 'DOPCOR01')}`
     return answer(velocity ? 'heliocentric' : 'star', why)
