@@ -292,3 +292,20 @@ export interface KeywordTable {
   readonly sites: readonly KnownSite[]
   readonly source: SourceKey
 }
+
+/** An emission line of the night sky [Å, air]. */
+export interface SkyLine {
+  readonly wavelength: number
+  readonly species: string
+  /** Other sky lines lie so near that a spectrograph of a few Å sees one line. */
+  readonly isBlend: boolean
+  readonly source: SourceKey
+}
+
+/** An absorption band of the Earth's air [Å, air]. */
+export interface TelluricBand {
+  readonly species: string
+  readonly name: string
+  readonly range: readonly [number, number]
+  readonly source: SourceKey
+}

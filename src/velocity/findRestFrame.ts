@@ -1,16 +1,11 @@
 import type { Continuum } from '../continuum/types.ts'
-import { correlate } from '../numeric/correlate.ts'
-import { subtractRunningMean } from '../numeric/runningMean.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 import type { LinePattern } from '../tables/types.ts'
 import { halved, toLogGrid } from './logGrid.ts'
 import type { LogGrid } from './logGrid.ts'
-import { patternDepth } from './pattern.ts'
-import { findPeak } from './peak.ts'
-import type { CorrelationPeak } from './peak.ts'
+import { matchPattern, rangeOf, SPEED_OF_LIGHT, velocityOf } from './matchPattern.ts'
+import type { Match, MatchOptions } from './matchPattern.ts'
 import type { RestFrame } from './types.ts'
-
-const SPEED_OF_LIGHT = 299792.458
 
 /** Step in ln wavelength of the grid the peak is judged on: 75 km/s. The pattern is chosen on cells twice as wide. */
 const STEP = 2.5e-4
@@ -18,9 +13,6 @@ const STEP = 2.5e-4
 /** A peak narrower than this many cells is found anew on a finer grid, down to the step given. */
 const NARROW_PEAK = 8
 const FINEST_STEP = 4e-5
-
-/** Full window of the running mean that takes out slopes, in ln wavelength: 120 Å at 4000 Å. */
-const WINDOW = 0.03
 
 /** [km/s] farther than the search, so that the antisymmetric part of the correlation is seen far from the peak. */
 const BEYOND = 2000
@@ -34,9 +26,6 @@ const TRUST = { ratio: 3, height: 0.2, overNoise: 5.5, second: 0.9, fast: 700, f
 
 /** [km/s] how well the patterns themselves are at rest, from known velocities of stars they were not made from. */
 const PATTERN_ZERO = 5
-
-/** Fewest cells that a pattern must share with the spectrum. */
-const FEWEST_CELLS = 12
 
 export interface RestFrameOptions {
   readonly patterns: readonly LinePattern[]
@@ -74,24 +63,6 @@ export function findRestFrame(spectrum: Spectrum, continuum: Continuum, options:
   return judge(match, centred(spectrum, continuum, match, { grid, fwhm, sampling }), grid.step)
 }
 
-interface Match {
-  readonly pattern: LinePattern
-  readonly peak: CorrelationPeak
-  /** Shift of the pattern before the correlation [cells]. */
-  readonly before: number
-  /** Number of cells of equal weight that would weigh as much. */
-  readonly cells: number
-}
-
-interface MatchOptions {
-  readonly fwhm: number
-  readonly maxVelocity: number
-  /** [km/s] beyond maxVelocity that the correlation goes on, default 0. */
-  readonly beyond?: number
-  /** [km/s] that the search is centred on, default 0. */
-  readonly around?: number
-}
-
 /** The pattern with the highest peak, which is the likeliest for noise of one strength; on cells twice as wide. */
 function bestPattern(grid: LogGrid, patterns: readonly LinePattern[], options: MatchOptions): LinePattern | undefined {
   const wide = halved(grid)
@@ -116,57 +87,6 @@ function centred(
   const fine = toLogGrid(spectrum, continuum, rangeOf(spectrum.wavelength, [match.pattern]), step)
   const refined = matchPattern(fine, match.pattern, { fwhm, maxVelocity: 120, around })
   return refined && !refined.peak.isAtEdge ? velocityOf(refined, fine) : around
-}
-
-/** cz from a shift in ln wavelength. */
-function velocityOf(match: Match, grid: LogGrid): number {
-  return SPEED_OF_LIGHT * Math.expm1((match.peak.shift + match.before) * grid.step)
-}
-
-function rangeOf(wavelength: Float64Array, patterns: readonly LinePattern[]): [number, number] {
-  const ends = patterns.flatMap((pattern) => pattern.covered.flat())
-  return [Math.max(wavelength[0], Math.min(...ends)), Math.min(wavelength[wavelength.length - 1], Math.max(...ends))]
-}
-
-function matchPattern(
-  grid: LogGrid,
-  pattern: LinePattern,
-  { fwhm, maxVelocity, beyond = 0, around = 0 }: MatchOptions,
-): Match | undefined {
-  const { step, start } = grid
-  const weight = coveredWeight(grid, pattern)
-  const cells = independentCells(weight)
-  if (cells < FEWEST_CELLS) return undefined
-  const half = Math.round(WINDOW / 2 / step)
-  const search = Math.ceil(maxVelocity / SPEED_OF_LIGHT / step)
-  const reach = Math.ceil((maxVelocity + beyond) / SPEED_OF_LIGHT / step)
-  const before = Math.round(around / SPEED_OF_LIGHT / step)
-  const data = subtractRunningMean(grid.depth, weight, half)
-  const count = weight.length + 2 * (reach + half)
-  const depth = patternDepth(pattern, { start: start - (reach + half + before) * step, step, count }, fwhm)
-  const shape = subtractRunningMean(depth, undefined, half)
-  const correlation = correlate(data, weight, shape.subarray(half, count - half), reach)
-  return { pattern, peak: findPeak(correlation, search), before, cells }
-}
-
-function independentCells(weight: Float64Array): number {
-  let sum = 0
-  let squares = 0
-  for (let i = 0; i < weight.length; i++) {
-    sum += weight[i]
-    squares += weight[i] * weight[i]
-  }
-  return squares > 0 ? (sum * sum) / squares : 0
-}
-
-function coveredWeight(grid: LogGrid, pattern: LinePattern): Float64Array {
-  const weight = new Float64Array(grid.weight.length)
-  for (const [first, last] of pattern.covered) {
-    const from = Math.max(0, Math.ceil((Math.log(first) - grid.start) / grid.step))
-    const to = Math.min(weight.length, Math.floor((Math.log(last) - grid.start) / grid.step))
-    for (let i = from; i < to; i++) weight[i] = grid.weight[i]
-  }
-  return weight
 }
 
 function untrusted(reason: string): RestFrame {
