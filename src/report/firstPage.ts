@@ -1,3 +1,4 @@
+import type { SpectrumOutcome } from '../quality/types.ts'
 import type { Block, Item } from './drawing.ts'
 import { box } from './drawing.ts'
 import type { Flow } from './flow.ts'
@@ -6,7 +7,7 @@ import { normalisedFigure } from './normalisedFigure.ts'
 import { PALETTE } from './palette.ts'
 import { posteriorFigure } from './posteriorFigure.ts'
 import type { Area } from './spectrumFigure.ts'
-import { figureHeading, spectrumFigure } from './spectrumFigure.ts'
+import { ABSENT_HEIGHT, figureHeading, isDrawable, spectrumFigure } from './spectrumFigure.ts'
 import type { TargetView } from './targetView.ts'
 import type { Typeface } from './typeface.ts'
 import type { Answer } from './verdict.ts'
@@ -26,16 +27,23 @@ export function drawFirstPage(face: Typeface, flow: Flow, view: TargetView): voi
   const { spectrum } = view.exposures[view.best]
   const room = flow.room()
   const bottom = view.type.grid ? 148 : 90
-  const upper = room - bottom - 24
-  flow.area(upper * 0.38, (area) => [spectrumFigure(face, area, spectrum)])
+  const [first, second] = heights(spectrum, room - bottom - 24)
+  flow.area(first, (area) => [spectrumFigure(face, area, spectrum)])
   flow.space(12)
-  flow.area(upper * 0.62, (area) => [normalisedFigure(face, area, spectrum, view.type)])
+  flow.area(second, (area) => [normalisedFigure(face, area, spectrum, view.type)])
   flow.space(11)
   flow.area(bottom, (area) => {
     const left = { ...area, width: area.width * 0.56 }
     const right = { ...area, x: area.x + area.width * 0.6, width: area.width * 0.4 }
     return [posteriorFigure(face, left, view.type, expectedOf(view)), watch(face, right, view)]
   })
+}
+
+/** Heights of the spectrum and of the normalised one; what cannot be drawn takes a line of words, no empty box. */
+function heights({ curves }: SpectrumOutcome, room: number): readonly [number, number] {
+  const [hasFlux, hasNormalised] = [curves && isDrawable(curves.flux), curves && isDrawable(curves.normalised)]
+  if (hasFlux && hasNormalised) return [room * 0.38, room * 0.62]
+  return [hasFlux ? room * 0.5 : ABSENT_HEIGHT, hasNormalised ? room * 0.7 : ABSENT_HEIGHT]
 }
 
 const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1)

@@ -9,7 +9,7 @@ import { plate } from './plate.ts'
 import type { Frame } from './plot.ts'
 import { atX, curve, heldY, xAxis, yAxis } from './plot.ts'
 import type { Area } from './spectrumFigure.ts'
-import { absentFigure, AXIS_ROOM, figureHeading, hasFinite, HEADING_ROOM, LABEL_ROOM } from './spectrumFigure.ts'
+import { absentFigure, AXIS_ROOM, figureHeading, isDrawable, HEADING_ROOM, LABEL_ROOM } from './spectrumFigure.ts'
 import { spread } from './spread.ts'
 import type { Typeface } from './typeface.ts'
 import { featureWord, percent, typeFound } from './words.ts'
@@ -107,11 +107,11 @@ function nameItems(face: Typeface, frame: Frame, named: readonly Named[], curves
 export function normalisedFigure(face: Typeface, area: Area, spectrum: SpectrumOutcome, type: TypePosterior): Block {
   const heading = 'Normalised, at rest, with the features that decided'
   const curves = spectrum.curves
-  if (!curves || !hasFinite(curves.normalised)) {
-    const why = curves ? 'not drawn: no continuum could be set' : 'not drawn: no curves were kept'
+  if (!curves || !isDrawable(curves.normalised)) {
+    const why = curves ? 'not drawn: there is no continuum to divide by' : 'not drawn: no curves were kept'
     return absentFigure(face, area, heading, why)
   }
-  const expected = curves.expected && hasFinite(curves.expected) ? curves.expected : undefined
+  const expected = curves.expected && isDrawable(curves.expected) ? curves.expected : undefined
   const plates = expected ? 2 : 1
   const [first, last] = [curves.restWavelength[0], curves.restWavelength[curves.restWavelength.length - 1]]
   const strips = plates * (PLATE_HEIGHT + 2) + 4

@@ -49,14 +49,14 @@ function fluxRange(flux: ArrayLike<number>, continuum: ArrayLike<number>): reado
 export function spectrumFigure(face: Typeface, area: Area, spectrum: SpectrumOutcome): Block {
   const heading = 'Spectrum as observed, with its continuum'
   const curves = spectrum.curves
-  if (!curves || !hasFinite(curves.flux))
+  if (!curves || !isDrawable(curves.flux))
     return absentFigure(
       face,
       area,
       heading,
-      curves ? 'not drawn: no sample has a finite flux' : 'not drawn: no curves were kept',
+      curves ? 'not drawn: fewer than two samples have a finite flux' : 'not drawn: no curves were kept',
     )
-  const hasContinuum = hasFinite(curves.continuum)
+  const hasContinuum = isDrawable(curves.continuum)
   const [first, last] = [curves.wavelength[0], curves.wavelength[curves.wavelength.length - 1]]
   const frame: Frame = {
     x: area.x + AXIS_ROOM,
@@ -89,8 +89,12 @@ export function spectrumFigure(face: Typeface, area: Area, spectrum: SpectrumOut
   return { role: 'Figure', alt, items }
 }
 
-/** True where at least one value is finite. */
-export function hasFinite(values: ArrayLike<number>): boolean {
-  for (let i = 0; i < values.length; i++) if (Number.isFinite(values[i])) return true
-  return false
+/** True where at least two values are finite: enough for a line. */
+export function isDrawable(values: ArrayLike<number>): boolean {
+  let count = 0
+  for (let i = 0; i < values.length && count < 2; i++) if (Number.isFinite(values[i])) count++
+  return count === 2
 }
+
+/** Height of a figure that cannot be drawn: its heading and a line of words. */
+export const ABSENT_HEIGHT = 24

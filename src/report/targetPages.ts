@@ -55,7 +55,7 @@ function exposureTable(flow: Flow, view: TargetView): void {
     ],
     view.exposures.map(({ file, spectrum, night }, i) => [
       cell(place(file, spectrum.hdu, spectrum.row), { bold: i === view.best }),
-      cell(spectrum.facts.dateObs?.slice(0, 19) ?? ''),
+      cell(spectrum.facts.dateObs?.slice(0, 16).replace('T', ' ') ?? ''),
       cell(spectrum.facts.exposure?.toFixed(0) ?? ''),
       cell(spectrum.snr.visual?.toFixed(0) ?? ''),
       cell(
@@ -94,18 +94,19 @@ function ratioTable(flow: Flow, view: TargetView): void {
   flow.heading('Ratios a classifier would quote')
   flow.table(
     [
-      { head: 'ratio', width: 130 },
+      { head: 'ratio', width: 150 },
       { head: 'value', width: 70, align: 'end' },
-      { head: 'reading', width: 1, share: true, wrap: true },
-      { head: 'source', width: 0.8, share: true, wrap: true },
+      { head: 'reading', width: 1, share: true },
     ],
     view.type.ratios.map((r) => [
       cell(r.name),
       cell(r.value === undefined ? '–' : withError(r.value, r.error)),
       cell(r.value === undefined ? `absent: ${r.reason ?? 'no reason given'}` : r.reading),
-      cell(r.source, { colour: PALETTE.quiet }),
     ]),
+    { rowHeight: 10.6 },
   )
+  const sources = [...new Set(view.type.ratios.map((r) => r.source))].join('; ')
+  flow.paragraph(`After ${sources}.`, { size: 7, colour: PALETTE.quiet })
 }
 
 function findingTable(flow: Flow, view: TargetView): void {
@@ -125,6 +126,7 @@ function findingTable(flow: Flow, view: TargetView): void {
 function provenanceTable(flow: Flow, view: TargetView, provenance: Provenance): void {
   const best = view.exposures[view.best].spectrum
   const rows: (readonly [string, string])[] = [
+    ['object', view.name],
     ...view.exposures.flatMap((e): (readonly [string, string])[] => [
       ['file', place(e.file, e.spectrum.hdu, e.spectrum.row)],
       ['SHA-256', e.sha256 ?? 'not computed'],
