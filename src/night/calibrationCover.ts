@@ -102,7 +102,7 @@ function coverOf(
     arc: arc.length,
   }
   const findings: Finding[] = CALIBRATIONS.filter((kind) => counts[kind] < wanted[kind]).map((kind) => {
-    const text = `Set-up ${setup}: ${countWords(kind, counts[kind])} fit${counts[kind] === 1 ? 's' : ''}, ${wanted[kind]} wanted${misfits(kind, example, frames)}`
+    const text = `Set-up ${setup}: ${countWords(kind, counts[kind])} fit${counts[kind] < 2 ? 's' : ''}, ${wanted[kind]} wanted${misfits(kind, example, frames)}`
     return finding(NIGHT_RULES, CODES[kind], text, {
       value: counts[kind],
       limit: wanted[kind],

@@ -42,7 +42,7 @@ export function exposuresOf(outcomes: readonly Outcome[]): readonly Exposure[] {
         outcome,
         file,
         facts,
-        kind: frame?.kind ?? 'science',
+        kind: frame === undefined || (frame.kind === 'unknown' && spectra.length > 0) ? 'science' : frame.kind,
         setup: frame?.setup ?? spectra[0]?.setup ?? setupName(facts),
         isFrame: spectra.length === 0,
         ...(mjd === undefined ? {} : { mjd }),

@@ -2,7 +2,7 @@ import { NIGHT_RULES } from '../findings/night.ts'
 import { finding } from '../findings/rules.ts'
 import type { Finding } from '../findings/types.ts'
 import { median } from '../numeric/median.ts'
-import { figure } from '../quality/figures.ts'
+import { chance, figure } from '../quality/figures.ts'
 import type { SignalToNoise, SpectrumOutcome } from '../quality/types.ts'
 import type { Thresholds } from '../tables/types.ts'
 import type { SpectrumNight, Target } from './types.ts'
@@ -92,7 +92,7 @@ export function judgeTarget(
     })
   if (expectedProbability !== undefined && expectedProbability < thresholds.typeProbability.value && usable.length)
     reasons.push({
-      text: `the type found is not the one expected (probability ${figure(expectedProbability, 2)}), look whether this is the star`,
+      text: `the type found is not the one expected (probability ${chance(expectedProbability)}), look whether this is the star`,
       gravity: GRAVITY.type,
       ...exposureOf(total(usable)),
     })

@@ -2,7 +2,7 @@ import { angularSeparation } from '../ephemeris/angularSeparation.ts'
 import { NIGHT_RULES } from '../findings/night.ts'
 import { finding } from '../findings/rules.ts'
 import type { Finding } from '../findings/types.ts'
-import { figure } from '../quality/figures.ts'
+import { chance, figure } from '../quality/figures.ts'
 import type { TypePosterior } from '../typing/types.ts'
 import type { Thresholds } from '../tables/types.ts'
 import { addFinding, baseName, isOnSky } from './exposures.ts'
@@ -53,7 +53,7 @@ export function checkExpectedType(
   const found = [type.spectralType, type.luminosityClass].filter((part) => part !== undefined).join(' ')
   const words =
     type.state === 'outside' ? type.peculiar.map(({ word }) => word).join(', ') || 'no ordinary star' : found
-  const text = `The type found is ${words}, the list expects ${expectedType}: its probability is ${figure(probability, 2)}`
+  const text = `The type found is ${words}, the list expects ${expectedType}: its probability is ${chance(probability)}`
   const limit = isDoubt ? thresholds.typeProbability.value : thresholds.typeProbabilityNote.value
   return [
     finding(NIGHT_RULES, 'type-unlike-expected', text, {

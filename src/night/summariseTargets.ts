@@ -1,8 +1,9 @@
 import { NIGHT_RULES } from '../findings/night.ts'
 import { finding } from '../findings/rules.ts'
 import type { Finding } from '../findings/types.ts'
-import { figure } from '../quality/figures.ts'
+import { chance } from '../quality/figures.ts'
 import type { Thresholds } from '../tables/types.ts'
+import { disagreement } from '../typing/combineTypes.ts'
 import type { NightSpectrum } from './exposures.ts'
 import { NO_TYPE } from './nightTyping.ts'
 import type { NightTyping } from './nightTyping.ts'
@@ -118,7 +119,7 @@ function summariseTarget({ target, listed, members }: TargetGroup, input: Target
     typed.length > 1
   ) {
     const found = [type.spectralType, type.luminosityClass].filter((part) => part !== undefined).join(' ') || 'none'
-    const text = `${target}: the type of ${typed.length} spectra together is ${found}, the list expects ${expectedType} (probability ${figure(probability, 2)})`
+    const text = `${target}: the type of ${typed.length} spectra together is ${found}, the list expects ${expectedType} (probability ${chance(probability)})`
     findings.push(
       finding(NIGHT_RULES, 'type-unlike-expected', text, {
         value: probability,
@@ -126,6 +127,8 @@ function summariseTarget({ target, listed, members }: TargetGroup, input: Target
       }),
     )
   }
+  const disagrees = typed.length > 1 ? disagreement(typed.map((one) => one.type)) : undefined
+  if (disagrees) findings.push(disagrees)
   return {
     target,
     ...(listed ? { listed } : {}),

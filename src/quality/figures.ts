@@ -11,3 +11,8 @@ export function figure(value: number, digits = 3): string {
 export function percent(share: number): string {
   return `${figure(100 * share, 2)} %`
 }
+
+/** A small probability in words: two digits, or 'below 0.001'. */
+export function chance(probability: number): string {
+  return probability < 0.001 ? 'below 0.001' : figure(probability, 2)
+}
