@@ -2,15 +2,16 @@ import type { Column, Hdu } from '../fits/types.ts'
 import type { Axis, AxisAnswer, Refusal } from './axis.ts'
 import { listedAxis } from './columnAxis.ts'
 import { cellNumbers, cellText } from './columnCells.ts'
-import { isCount, isObjectName, isPartName, isStep } from './columnRoles.ts'
+import { isCount, isPartName, isStep } from './columnRoles.ts'
 import type { RoledColumn } from './columnRoles.ts'
 import { companionAxis } from './companion.ts'
-import { headersOf, placeWords } from './container.ts'
+import { headersOf, limitNotes, placeWords, room } from './container.ts'
 import type { Container, HduAnswer } from './container.ts'
 import { fluxUnitCard } from './fluxUnit.ts'
 import type { FoundSpectrum } from './found.ts'
 import { headerAxis } from './headerAxis.ts'
 import type { WavelengthLabel } from './medium.ts'
+import { rowFacts } from './rowFacts.ts'
 import { flagsOf, pickErrors } from './tablePlanes.ts'
 import type { Note } from '../findings/types.ts'
 
@@ -22,7 +23,10 @@ export function cellSpectra(
 ): HduAnswer {
   const spectra: FoundSpectrum[] = []
   const refusals: Refusal[] = []
-  for (let row = 0; row < hdu.rows && spectra.length < container.most; row++) {
+  const widest = Math.max(...fluxes.map(({ column }) => column.repeat))
+  const most = room(container, widest)
+  let row = 0
+  for (; row < hdu.rows && spectra.length < most; row++) {
     for (const flux of fluxes) {
       const answer = cellRow(container, hdu, {
         roled,
@@ -42,7 +46,7 @@ export function cellSpectra(
       isMany ? { ...found, row: hdu.rows === spectra.length ? (found.row ?? i) : i } : withoutRow(found),
     ),
     refusals,
-    notes: [],
+    notes: limitNotes(hdu, row, spectra.length >= most ? hdu.rows : row),
   }
 }
 
@@ -99,7 +103,7 @@ function cellRow(
   const flagValues = flags && read(flags.column)
   const skyValues = sky && read(sky.column)
   const shown = { ...axis, wavelength: axis.wavelength.subarray(0, length) }
-  const object = textOf(container, hdu, row, isObjectName)
+  const own = rowFacts(container, hdu, row)
   const part = textOf(container, hdu, row, isPartName)
   return {
     spectra: Array.from({ length: planes }, (_, plane): FoundSpectrum => ({
@@ -118,8 +122,9 @@ function cellRow(
         : {}),
       ...(skyValues && skyValues.length === values.length ? { sky: slice(skyValues, plane) } : {}),
       headers,
-      convention: `${placeWords(hdu)}, one spectrum a row, ${axis.words}, flux in ${flux.name}`,
-      ...(object === undefined ? {} : { object }),
+      convention: `${placeWords(hdu)}, one spectrum a row, ${axis.words}, flux in ${flux.name}${part === undefined ? '' : `, ${part}`}`,
+      own: own.facts,
+      ...(own.role ? { role: own.role } : {}),
       ...(part === undefined ? {} : { part }),
       notes:
         planes > 1

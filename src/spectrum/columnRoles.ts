@@ -72,7 +72,7 @@ export function isStep(column: Column): boolean {
 /** True for a column that names the object of its row. */
 export function isObjectName(column: Column): boolean {
   return (
-    column.letter === 'A' &&
+    (column.letter === 'A' || /^target_?id$/i.test(column.name)) &&
     /^(name|object|obj|objname|target|targname|star|source|id|obj_?id|target_?id)$/.test(plainName(column.name))
   )
 }

@@ -13,7 +13,8 @@ import type { PlaneRole } from './planeRole.ts'
 
 /** Wavelengths that stand apart from the flux, with what they are called; or why they cannot be used. */
 export type CompanionAnswer =
-  { readonly axis: Axis; readonly label: WavelengthLabel; readonly hdu: number } | { readonly refusal: Refusal }
+  | { readonly axis: Axis; readonly label: WavelengthLabel; readonly hdu: number; readonly perRow: boolean }
+  | { readonly refusal: Refusal }
 
 /**
  * The wavelengths of `length` samples from another extension of the file (an image or table column named so), or from
@@ -80,7 +81,7 @@ function imageAxis(
     keyword: 'BUNIT',
   })
   if ('refusal' in answer) return { refusal: { ...answer.refusal, hdu: hdu.index } }
-  return { axis: answer.axis, label: { name: hdu.name, ucd: '', utype: '' }, hdu: hdu.index }
+  return { axis: answer.axis, label: { name: hdu.name, ucd: '', utype: '' }, hdu: hdu.index, perRow: rows > 1 }
 }
 
 /** Unit of the wavelengths from a card that lists the units of all planes, such as `UNITS = {"wave": "Angstrom"}`. */
@@ -108,7 +109,12 @@ function tableAxis(
         keyword: `TUNIT${column.index + 1}`,
       })
       if ('refusal' in answer) return { refusal: { ...answer.refusal, hdu: hdu.index } }
-      return { axis: answer.axis, label: { name: column.name, ucd: column.ucd, utype: column.utype }, hdu: hdu.index }
+      return {
+        axis: answer.axis,
+        label: { name: column.name, ucd: column.ucd, utype: column.utype },
+        hdu: hdu.index,
+        perRow: false,
+      }
     }
   }
   return undefined

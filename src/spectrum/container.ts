@@ -11,6 +11,19 @@ export interface Container {
   readonly companion?: { readonly file: FitsFile; readonly source: ByteSource }
   /** Largest number of spectra that are wanted of the file. */
   readonly most: number
+  /** Largest number of samples of them all. */
+  readonly mostSamples: number
+}
+
+/** Number of spectra of so many samples that may still be read. */
+export function room({ most, mostSamples }: Container, samples: number): number {
+  return Math.min(most, Math.max(1, Math.floor(mostSamples / Math.max(samples, 1))))
+}
+
+/** The note that an HDU holds more spectra than were read. */
+export function limitNotes(hdu: Hdu, read: number, held: number): readonly Note[] {
+  if (held <= read) return []
+  return [{ code: 'spectra-limit', text: `HDU ${hdu.index} holds ${held} spectra, of which ${read} are read` }]
 }
 
 /** What one HDU gave: spectra, the reasons why there are none, and remarks on what was left aside. */

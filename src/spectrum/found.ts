@@ -2,7 +2,7 @@ import type { Axis } from './axis.ts'
 import type { Headers } from './cards.ts'
 import type { WavelengthLabel } from './medium.ts'
 import type { Note } from '../findings/types.ts'
-import type { Spectrum, UncertaintyKind } from './types.ts'
+import type { HeaderFacts, Spectrum, UncertaintyKind } from './types.ts'
 
 /** Values of one plane that go with a flux, and what they are. */
 export interface UncertaintyPlane {
@@ -31,10 +31,8 @@ export interface FoundSpectrum {
   readonly sky?: Float64Array
   readonly headers: Headers
   readonly convention: string
-  /** Name of the object where the row itself has one. */
-  readonly object?: string
-  /** Order, arm or segment where the file names it. */
-  readonly part?: string
+  /** What the row itself says of the object. */
+  readonly own?: Pick<HeaderFacts, 'object' | 'ra' | 'dec'>
   readonly role?: Spectrum['role']
   readonly notes: readonly Note[]
 }

@@ -5,14 +5,12 @@ import type { FlagPlane, UncertaintyPlane } from './found.ts'
 import { imageRole, namePrefix } from './imageRole.ts'
 import type { PlaneRole } from './planeRole.ts'
 import { uncertaintyKind } from './tablePlanes.ts'
-import type { Note } from '../findings/types.ts'
 
 /** The planes of the same shape that go with an image of fluxes, read by row on demand. */
 export interface ImagePlanes {
   uncertainty(row: number, samples: number, length: number): UncertaintyPlane | undefined
   flags(row: number, samples: number, length: number): FlagPlane | undefined
   sky(row: number, samples: number, length: number): Float64Array | undefined
-  readonly notes: readonly Note[]
 }
 
 const ERRORS: readonly PlaneRole[] = ['sigma', 'inverse variance', 'variance', 'relative']
@@ -42,7 +40,6 @@ export function imagePlanes({ file, source }: Container, owner: Hdu): ImagePlane
           }
         : undefined,
     sky: (row, samples, length) => sky && read(sky, row, samples, length),
-    notes: [],
   }
 }
 

@@ -6,7 +6,7 @@ import { cardNumber, cardText } from './cards.ts'
 import type { Headers } from './cards.ts'
 import { listedAxis } from './columnAxis.ts'
 import { companionAxis } from './companion.ts'
-import { headersOf, placeWords, refused } from './container.ts'
+import { headersOf, limitNotes, placeWords, refused, room } from './container.ts'
 import type { Container, HduAnswer } from './container.ts'
 import type { FoundSpectrum } from './found.ts'
 import { fluxUnitCard } from './fluxUnit.ts'
@@ -18,6 +18,7 @@ import type { WavelengthLabel } from './medium.ts'
 import { planeRole } from './planeRole.ts'
 import { isEvenlySampled } from './sampling.ts'
 import { guessedWavelengthUnit } from './unit.ts'
+import { fibreTable, rowFacts } from './rowFacts.ts'
 import { rowLayout } from './rowLayout.ts'
 import type { RowLayout } from './rowLayout.ts'
 import { tabulatedAxis } from './tabulatedAxis.ts'
@@ -179,7 +180,10 @@ function apertureRows(container: Container, hdu: Hdu, headers: Headers, shape: I
   const planes = imagePlanes(container, hdu)
   const solutions = isMultispec(hdu.header) ? apertureSolutions(hdu.header) : undefined
   let shared: FoundAxis | undefined
-  for (let row = 0; row < shape.rows && spectra.length < container.most; row++) {
+  const fibres = fibreTable(container, hdu, shape.rows)
+  const most = room(container, shape.samples)
+  let row = 0
+  for (; row < shape.rows && spectra.length < most; row++) {
     const answer: FoundAxis = solutions
       ? apertureAxis(hdu.header, row, solutions.get(row), shape.samples)
       : (shared ??= findAxis(container, hdu, headers, shape, row))
@@ -190,9 +194,9 @@ function apertureRows(container: Container, hdu: Hdu, headers: Headers, shape: I
     }
     if (answer.perRow) shared = undefined
     const label = answer.label ? { label: answer.label } : {}
-    spectra.push(apertureRow(container, hdu, { shape, planes, row, axis: answer.axis, why, ...label }))
+    spectra.push(apertureRow(container, hdu, { shape, planes, row, axis: answer.axis, why, fibres, ...label }))
   }
-  return { spectra, refusals, notes: planes.notes }
+  return { spectra, refusals, notes: limitNotes(hdu, row, shape.rows) }
 }
 
 type FoundAxis =
@@ -201,7 +205,9 @@ type FoundAxis =
 function findAxis(container: Container, hdu: Hdu, headers: Headers, shape: ImageShape, row: number): FoundAxis {
   const companion = companionAxis(container, hdu, shape.samples, row)
   if (companion)
-    return 'refusal' in companion ? companion : { axis: companion.axis, label: companion.label, perRow: shape.rows > 1 }
+    return 'refusal' in companion
+      ? companion
+      : { axis: companion.axis, label: companion.label, perRow: companion.perRow }
   const tabulated = tabulatedAxis(container, hdu, headers, shape.axis, shape.samples)
   if (tabulated) return tabulated
   const plain = headerAxis(headers, shape.axis, shape.samples)
@@ -211,9 +217,17 @@ function findAxis(container: Container, hdu: Hdu, headers: Headers, shape: Image
 function apertureRow(
   container: Container,
   hdu: Hdu,
-  given: { shape: ImageShape; planes: ImagePlanes; row: number; axis: Axis; label?: WavelengthLabel; why: string },
+  given: {
+    shape: ImageShape
+    planes: ImagePlanes
+    row: number
+    axis: Axis
+    label?: WavelengthLabel
+    why: string
+    fibres: Hdu | undefined
+  },
 ): FoundSpectrum {
-  const { shape, planes, row, axis, label, why } = given
+  const { shape, planes, row, axis, label, why, fibres } = given
   const headers = headersOf(container.file, hdu)
   const length = axis.wavelength.length
   const band = (number: number): number => number * shape.rows + row
@@ -228,7 +242,8 @@ function apertureRow(
   const sky =
     skyBand > 0 ? readRow(container, hdu, shape, band(skyBand), length) : planes.sky(row, shape.samples, length)
   const role = imageRole(hdu.name)
-  const part = cardText([hdu.header], `APID${row + 1}`)
+  const own = fibres ? rowFacts(container, fibres, row) : undefined
+  const title = shape.rows > 1 ? cardText([hdu.header], `APID${row + 1}`) : undefined
   const isSky = role === 'sky' || isBackgroundBand(hdu)
   const rows = shape.rows > 1 ? `, rows are spectra (${why})` : ''
   return {
@@ -244,8 +259,8 @@ function apertureRow(
     ...(sky ? { sky } : {}),
     headers,
     convention: `${placeWords(hdu)}${rows}${shape.bands > 1 ? ', bands' : ''}, ${axis.words}`,
-    ...(part === undefined ? {} : { part }),
-    ...(isSky ? { role: 'sky' as const } : {}),
+    ...(own ? { own: own.facts } : title === undefined ? {} : { own: { object: title } }),
+    ...(isSky ? { role: 'sky' as const } : own?.role ? { role: own.role } : {}),
     notes: why.startsWith('few rows')
       ? [
           {

@@ -12,6 +12,7 @@ import { imageSpectra } from './imageSpectra.ts'
 import { spectrumRole } from './role.ts'
 import { tableSpectra } from './tableSpectra.ts'
 import { velocityFrame } from './velocityFrame.ts'
+import type { FrameAnswer } from './velocityFrame.ts'
 import type { KeywordTable } from '../tables/types.ts'
 import type { Note } from '../findings/types.ts'
 import type { HeaderFacts, Spectrum } from './types.ts'
@@ -41,6 +42,8 @@ export interface ReadOptions {
 
 /** More spectra than any multi-object spectrograph gives in one exposure. */
 const MOST_SPECTRA = 5000
+/** Samples of all spectra together that fit in memory: five arrays of 8 bytes each, 320 MB. */
+const MOST_SAMPLES = 8_000_000
 /** Fewest samples of a spectrum: the five or so filters of a photometric catalogue are none. */
 const FEWEST_SAMPLES = 10
 
@@ -55,29 +58,41 @@ export function readSpectra(file: FitsFile, source: ByteSource, options: ReadOpt
   if (file.hdus.length === 0)
     throw new FormatError('empty-file', 'file requires at least one HDU, got none', placeOf(options))
   const { keywords, companion } = options
+  const most = options.maxSpectra ?? MOST_SPECTRA
   const container: Container = {
     file,
     source,
     ...(companion ? { companion } : {}),
-    most: options.maxSpectra ?? MOST_SPECTRA,
+    most,
+    mostSamples: MOST_SAMPLES,
   }
   const spectra: Spectrum[] = []
   const refusals: Refusal[] = []
   const notes: Note[] = []
-  let frame: Hdu | undefined
+  let frame2d: Hdu | undefined
+  let samples = 0
   for (const hdu of file.hdus) {
-    if (spectra.length >= container.most) {
-      notes.push({ code: 'spectra-limit', text: `reading stopped at ${container.most} spectra` })
+    const room = { most: most - spectra.length, mostSamples: MOST_SAMPLES - samples }
+    if (room.most <= 0 || room.mostSamples <= 0) {
+      notes.push({
+        code: 'spectra-limit',
+        text: `reading stopped at HDU ${hdu.index}, after ${spectra.length} spectra of ${samples} samples`,
+      })
       break
     }
-    const answer = withoutShort(hduSpectra(container, hdu))
-    if (answer.isFrame) frame ??= hdu
+    const answer = withoutShort(hduSpectra({ ...container, ...room }, hdu))
+    if (answer.isFrame) frame2d ??= hdu
     refusals.push(...answer.refusals)
     notes.push(...answer.notes)
+    if (answer.spectra.length === 0) continue
     const span = spanOf(answer.spectra)
-    for (const found of answer.spectra) spectra.push(finished(found, { hdu, file, keywords, span }))
+    const headers = headersOf(file, hdu)
+    const read = readHeaderFacts(headers, keywords)
+    const frame = velocityFrame(headers, keywords)
+    for (const found of answer.spectra) spectra.push(finished(found, { hdu, file, read, frame, span }))
+    samples += answer.spectra.reduce((sum, { flux }) => sum + flux.length, 0)
   }
-  const header = factHeaders(file, spectra[0]?.hdu ?? frame?.index ?? 0)
+  const header = factHeaders(file, spectra[0]?.hdu ?? frame2d?.index ?? 0)
   const whole = readHeaderFacts(header, keywords)
   const result = { spectra, facts: whole.facts, notes: [...file.notes, ...notes, ...whole.notes] }
   if (spectra.length > 0) return result
@@ -88,7 +103,7 @@ export function readSpectra(file: FitsFile, source: ByteSource, options: ReadOpt
   const error = worst
     ? { code: worst.code, message: worst.message, where: refusalPlace(worst, options) }
     : { code: 'no-data', message: 'file requires an image or a table with data, got none', where: placeOf(options) }
-  return { ...result, ...(frame ? { frame2d: { hdu: frame.index } } : {}), error }
+  return { ...result, ...(frame2d ? { frame2d: { hdu: frame2d.index } } : {}), error }
 }
 
 /** Leaves out what has too few samples to be a spectrum (the arrays of a catalogue), with the reason. */
@@ -173,16 +188,15 @@ function spanOf(spectra: readonly FoundSpectrum[]): readonly [number, number] {
 interface HduContext {
   readonly hdu: Hdu
   readonly file: FitsFile
-  readonly keywords: KeywordTable
+  readonly read: ReturnType<typeof readHeaderFacts>
+  readonly frame: FrameAnswer
   readonly span: readonly [number, number]
 }
 
-function finished(found: FoundSpectrum, { hdu, file, keywords, span }: HduContext): Spectrum {
-  const read = readHeaderFacts(found.headers, keywords)
-  const frame = velocityFrame(found.headers, keywords)
+function finished(found: FoundSpectrum, { hdu, file, read, frame, span }: HduContext): Spectrum {
   const facts: HeaderFacts = {
     ...read.facts,
-    ...(found.object === undefined ? {} : { object: found.object }),
+    ...found.own,
     ...(frame.applied === undefined ? {} : { velocityApplied: frame.applied }),
   }
   const hduNotes = [...file.notes, ...hdu.notes, ...(hdu.index === 0 ? [] : file.hdus[0].notes)]

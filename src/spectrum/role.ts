@@ -1,8 +1,9 @@
 import type { HeaderFacts, Spectrum } from './types.ts'
 
 const LAMP_FRAME = /\b(arcs?|comp|comparison|lamp|wave|wavecal|thar|arc_?lamp|calib_?lamp)\b/i
+// Element names stand alone or in pairs: 'HE 1234', 'AR Lac' and 'CD-38 245' are stars.
 const LAMP_OBJECT =
-  /^\s*(arc|arcs|comp|comparison|lamp|wave|calibration lamp)\b|^(arc|comp)[_ :\d]|\b(th-?ar|he-?ar|cu-?ar|cu-?he-?ar|hg-?ar(-?ne)?|fe-?ar|he-?ne|ne-?ar|hg-?ne|hg-?cd|cd-?he|u-?ne|th-?ne)\b|^(th-?ar|he-?ar|cu-?ar|cu-?he-?ar|hg-?ar|fe-?ar|hg-?ar-?ne|cu|ne|hg|xe|ar|kr|he|cd|cuhear_\w+)\d*\w*$|^thar/i
+  /^\s*(arcs?|comp|comparison|lamp|wave|calibration lamp)(\s*$|[_ :\d])|^(cu|ne|hg|xe|ar|kr|he|cd|th|fe)$|(^|[^a-z])(th-?ar|he-?ar|cu-?ar|cu-?he-?ar|hg-?ar|hg-?ar-?ne|fe-?ar|he-?ne|ne-?ar|hg-?ne|hg-?cd|cd-?he|u-?ne|th-?ne|he-?ne-?ar|he-?ar-?ne|ar-?ne)([^a-z]|$)/i
 const SKY = /^\s*(sky|night ?sky|blank ?sky|twilight|skyflat|background)\b|\bsky\b/i
 const CALIBRATION =
   /\b(bias|zero|dark|flat|dflat|domeflat|skyflat|lampflat|sens|sensitivity|response|extinction|throughput)\b/i

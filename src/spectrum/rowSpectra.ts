@@ -5,7 +5,7 @@ import { columnNumbers } from './columnCells.ts'
 import { isNumeric } from './columnRoles.ts'
 import type { RoledColumn } from './columnRoles.ts'
 import { companionAxis } from './companion.ts'
-import { headersOf, placeWords, refused } from './container.ts'
+import { headersOf, placeWords, refused, room } from './container.ts'
 import type { Container, HduAnswer } from './container.ts'
 import { fluxUnitCard } from './fluxUnit.ts'
 import type { FoundSpectrum } from './found.ts'
@@ -159,7 +159,7 @@ function readRows(container: Container, hdu: Hdu, given: RowTable): HduAnswer {
   const spectra = fluxes.flatMap(({ column, role }) =>
     transposed(read(column), column.repeat).map((flux) => found(column, role, flux)),
   )
-  return { spectra: numbered(spectra, fluxes).slice(0, container.most), refusals: [], notes: [] }
+  return { spectra: numbered(spectra, fluxes).slice(0, room(container, hdu.rows)), refusals: [], notes: [] }
 }
 
 /** The columns of a table of `repeat` values a row, each as one array. */
@@ -173,8 +173,7 @@ function numbered(spectra: readonly FoundSpectrum[], fluxes: readonly RoledColum
   const names = fluxes.map(({ column }) => column.name)
   return spectra.map((found, row) => {
     const text = `${spectra.length} fluxes (${names.join(', ')}) share one wavelength column; this is number ${row}`
-    const part = spectra.length === fluxes.length ? { part: names[row] } : {}
-    return { ...found, row, ...part, notes: [...found.notes, { code: 'many-flux-columns', text }] }
+    return { ...found, row, notes: [...found.notes, { code: 'many-flux-columns', text }] }
   })
 }
 
