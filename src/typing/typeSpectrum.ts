@@ -1,0 +1,103 @@
+import type { Calibration } from '../tables/types.ts'
+import { classicalRatios } from './classicalRatios.ts'
+import { type DecodedCalibration, decodeCalibration } from './decodedCalibration.ts'
+import { type BestCell, evidenceOf } from './evidence.ts'
+import { fitOf } from './fit.ts'
+import { interpolatedGrid } from './interpolatedGrid.ts'
+import { type FeatureVector, likelihoodGrid } from './likelihood.ts'
+import { luminosityName } from './luminosityName.ts'
+import { peculiarities } from './peculiarities.ts'
+import { posteriorFigures } from './posterior.ts'
+import { typeName } from './typeName.ts'
+import type { TypingInput } from './typingInput.ts'
+import type { TypePosterior } from './types.ts'
+
+/** Fewer features than this are nothing to type from. */
+const FEWEST_FEATURES = 3
+/** Fewer usable samples than this are nothing to type from. */
+const FEWEST_SAMPLES = 40
+/** A 68 % range beyond this many subclasses is `wide`. */
+const WIDE = 5
+/** A 95 % range beyond this many subclasses says nothing. */
+const SAYS_NOTHING = 45
+/** Share of ordinary stars that fit worse than the limit for `outside`. */
+const OUTSIDE = 0.004
+
+/**
+ * The type of a spectrum as a posterior over type and luminosity class, flat in type and with the calibration's stated
+ * weights over the classes; without figures and with a reason where there is nothing to type from (`none`).
+ */
+export function typeSpectrum(input: TypingInput, calibration: Calibration): TypePosterior {
+  const decoded = decodeCalibration(calibration)
+  const vector = featureVector(input, decoded)
+  const none = (reason: string): TypePosterior => ({
+    state: 'none',
+    reason,
+    peculiar: [],
+    evidence: [],
+    ratios: [],
+    featuresUsed: vector.index.length,
+  })
+  if (input.samples < FEWEST_SAMPLES) return none(`${input.samples} usable samples, fewer than ${FEWEST_SAMPLES}`)
+  if (vector.index.length < FEWEST_FEATURES)
+    return none(`${vector.index.length} features could be measured, fewer than ${FEWEST_FEATURES}`)
+  const { logLikelihood, distance } = likelihoodGrid(decoded, calibration.degreesOfFreedom, vector)
+  const grid = interpolatedGrid(decoded, logLikelihood, calibration.prior.classes)
+  const figures = posteriorFigures(grid)
+  if (figures.high95 - figures.low95 > SAYS_NOTHING)
+    return none(
+      `the features tell no type: its 95 % range spans ${(figures.high95 - figures.low95).toFixed(0)} subclasses`,
+    )
+  const best = bestCell(decoded, logLikelihood, distance)
+  const fit = fitOf(decoded, vector, best, distance[best.type * decoded.classes.length + best.luminosity])
+  const width68 = figures.high68 - figures.low68
+  const isOutside = fit.probability < OUTSIDE
+  const luminosityClass = luminosityName(figures)
+  return {
+    state: isOutside ? 'outside' : width68 > WIDE ? 'wide' : 'typed',
+    ...(isOutside ? { reason: `no ordinary O to M star fits: ${fit.text}` } : {}),
+    spectralType: typeName(figures.typeNumber),
+    ...(luminosityClass === undefined ? {} : { luminosityClass }),
+    typeNumber: figures.typeNumber,
+    low68: figures.low68,
+    high68: figures.high68,
+    low95: figures.low95,
+    high95: figures.high95,
+    luminosityNumber: figures.luminosityNumber,
+    probDwarf: figures.probDwarf,
+    probGiant: figures.probGiant,
+    probSupergiant: figures.probSupergiant,
+    typeNumberErr: width68 / 2,
+    peculiar: peculiarities({ input, calibration: decoded, vector, best }),
+    grid,
+    fitPull: fit.pull,
+    fitProbability: fit.probability,
+    evidence: evidenceOf(decoded, vector, best),
+    ratios: classicalRatios(input.measurements, figures.typeNumber),
+    featuresUsed: vector.index.length,
+  }
+}
+
+/** The measurements that the calibration knows, by its order. */
+export function featureVector(input: TypingInput, { features }: DecodedCalibration): FeatureVector {
+  const byName = new Map(input.measurements.map((one) => [one.feature, one]))
+  const index: number[] = []
+  const value: number[] = []
+  const error: number[] = []
+  features.forEach((name, k) => {
+    const one = byName.get(name)
+    if (one?.ew === undefined || one.ewErr === undefined || !Number.isFinite(one.ew) || !Number.isFinite(one.ewErr))
+      return
+    index.push(k)
+    value.push(one.ew)
+    error.push(one.ewErr)
+  })
+  return { index: Int32Array.from(index), value: Float64Array.from(value), error: Float64Array.from(error) }
+}
+
+function bestCell({ classes }: DecodedCalibration, logLikelihood: Float64Array, distance: Float64Array): BestCell {
+  let best = -1
+  for (let at = 0; at < logLikelihood.length; at++)
+    if (distance[at] === distance[at] && (best < 0 || logLikelihood[at] > logLikelihood[best])) best = at
+  return { type: Math.floor(best / classes.length), luminosity: best % classes.length }
+}

@@ -1,0 +1,159 @@
+import { createHash } from 'node:crypto'
+import { fitContinuum } from '../../../src/continuum/fitContinuum.ts'
+import { BANDS } from '../../../src/tables/bands.ts'
+import { PATTERNS } from '../../../src/tables/patterns.ts'
+import type { Calibration, CalibrationSpectra } from '../../../src/tables/types.ts'
+import { type TypingInput, typingInput } from '../../../src/typing/typingInput.ts'
+import { findRestFrame } from '../../../src/velocity/findRestFrame.ts'
+import { type Cell, type FittedMeans, type MeanModel, type TrainingStar, modelMeans } from './fitMeans.ts'
+import { fitScatter } from './fitScatter.ts'
+import { meanSpectra, normalisedBins } from './meanSpectra.ts'
+import { COMMON_FWHM, type SharedStar, readStar, sharedStars } from './sharedStars.ts'
+
+export const CALIBRATION_SETS = ['atlas', 'averages', 'pickles'] as const
+/** A row of `averages` is a mean of several stars; one of `pickles` shares its stars with the other two sets. */
+const WEIGHTS: Readonly<Record<string, number>> = { atlas: 1, averages: 2, pickles: 1 }
+const FIRST_TYPE = 2
+const TYPES = 68
+const CLASSES = [1, 2, 3, 4, 5]
+const ZONE_STEP = 4
+/** Weights of the classes in the prior: II and IV are rare among classified stars (common practice, no source). */
+const CLASS_PRIOR = [1, 0.5, 1, 0.5, 1]
+const DEGREES_OF_FREEDOM = 8
+
+/** A published star with its features as the program measures them. */
+export interface MeasuredStar {
+  readonly star: SharedStar
+  readonly input: TypingInput
+  /** shape (f) [unit]; NaN where not measured. */
+  readonly values: Float64Array
+  /** shape (bins): flux over continuum at rest. */
+  readonly bins: Float64Array
+}
+
+/** Reads and measures the published stars of some sets. */
+export function measureStars(sets: readonly string[] = CALIBRATION_SETS): MeasuredStar[] {
+  return sharedStars(sets).map((star) => {
+    const spectrum = readStar(star.file)
+    const continuum = fitContinuum(spectrum)
+    const frame = findRestFrame(spectrum, continuum, { patterns: PATTERNS })
+    const input = typingInput(spectrum, continuum, frame, { windows: BANDS, commonFwhm: COMMON_FWHM })
+    return {
+      star,
+      input,
+      values: Float64Array.from(input.measurements, ({ ew }) => ew ?? NaN),
+      bins: normalisedBins(spectrum, continuum, frame),
+    }
+  })
+}
+
+/** Everything a calibration is built from, ready to leave stars out. */
+export interface CalibrationModel {
+  readonly stars: readonly MeasuredStar[]
+  readonly training: readonly TrainingStar[]
+  readonly means: MeanModel
+  readonly spectra: CalibrationSpectra
+}
+
+/** The model of means on the stars with metals like the Sun's. */
+export function calibrationModel(measured: readonly MeasuredStar[]): CalibrationModel {
+  const stars = measured.filter(({ star }) => star.metals === 'solar' && !/E/.test(star.spectralType))
+  const training = stars.map(({ star, values }) => ({
+    type: star.typeNumber,
+    luminosity: star.luminosity ?? 5,
+    weight: WEIGHTS[star.set],
+    values,
+  }))
+  return { stars, training, means: modelMeans(training, gridCells()), spectra: meanSpectra(stars) }
+}
+
+function gridCells(): Cell[] {
+  return Array.from({ length: TYPES * CLASSES.length }, (_, i) => ({
+    type: FIRST_TYPE + Math.floor(i / CLASSES.length),
+    luminosity: CLASSES[i % CLASSES.length],
+  }))
+}
+
+/** Figures by zone that only cross-validation can give. */
+export interface ZoneFigures {
+  readonly tempering: number
+  readonly fitQuantiles: readonly number[]
+}
+
+/** Types of the zones. */
+export const ZONE_TYPES: readonly number[] = Array.from({ length: 17 }, (_, z) => 3 + ZONE_STEP * z)
+
+/** The calibration fitted on all stars of the model but those left out. */
+export function buildCalibration(
+  model: CalibrationModel,
+  left: readonly number[],
+  figures: (zone: number) => ZoneFigures,
+): Calibration {
+  const fitted = model.means.without(left)
+  const widths = Float64Array.from(BANDS, ({ band, unit }) => (unit === 'mag' ? 1 : band[1] - band[0]))
+  const inputs = inputsList(model.stars)
+  const stars = model.training.map((star, i) => (left.includes(i) ? { ...star, weight: 0 } : star))
+  return {
+    digest: inputs.sha256.slice(0, 12),
+    inputs: inputs.sets,
+    inputsSha256: inputs.sha256,
+    commonFwhm: COMMON_FWHM,
+    features: BANDS.map(({ feature }) => feature),
+    scale: Array.from(fitted.scale, (value) => Number(value.toPrecision(4))),
+    firstType: FIRST_TYPE,
+    types: TYPES,
+    classes: CLASSES,
+    mean: packedMeans(fitted),
+    meanVariance: Array.from(fitted.variance, (value) => Number(value.toFixed(4))),
+    zones: ZONE_TYPES.map((type, z) => {
+      const covariance = fitScatter(type, stars, fitted.residual, { widths })
+      return { type, covariance: packedTriangle(covariance, fitted.scale), ...figures(z), metalWeak: [] }
+    }),
+    degreesOfFreedom: DEGREES_OF_FREEDOM,
+    prior: { classes: CLASS_PRIOR },
+    spectra: model.spectra,
+  }
+}
+
+function packedMeans({ mean, scale }: FittedMeans): number[][] {
+  const f = scale.length
+  return Array.from({ length: mean.length / f }, (_, g) =>
+    Array.from({ length: f }, (_unused, k) => Math.round((1000 * mean[g * f + k]) / Number(scale[k].toPrecision(4)))),
+  )
+}
+
+function packedTriangle(covariance: Float64Array, scale: Float64Array): number[] {
+  const f = scale.length
+  const packed: number[] = []
+  for (let i = 0; i < f; i++)
+    for (let j = 0; j <= i; j++) packed.push(Math.round((1e6 * covariance[i * f + j]) / (scale[i] * scale[j])))
+  return packed
+}
+
+/** One line a file: path, SHA-256 of its bytes, published type. */
+export function inputsList(stars: readonly MeasuredStar[]): {
+  readonly sha256: string
+  readonly sets: Calibration['inputs']
+} {
+  const text = stars.map(({ star }) => `${star.file} ${star.sha256} ${star.spectralType}\n`).join('')
+  const sets = [...new Set(stars.map(({ star }) => star.set))].map((set) => {
+    const members = stars.filter(({ star }) => star.set === set)
+    return { set, stars: members.length, reference: [...new Set(members.map(({ star }) => star.reference))].join('; ') }
+  })
+  return { sha256: createHash('sha256').update(text).digest('hex'), sets }
+}
+
+/**
+ * Places of the stars to leave out when one is to be typed as unknown: itself and, since the rows of `pickles` hold some of
+ * the atlas stars, those of like type and class there.
+ */
+export function leftOutFor(model: CalibrationModel, one: SharedStar): number[] {
+  return model.stars.flatMap(({ star }, i) => {
+    const isSame = star.file === one.file
+    const isRelated =
+      star.set === 'pickles' &&
+      Math.abs(star.typeNumber - one.typeNumber) <= 0.75 &&
+      Math.abs((star.luminosity ?? 5) - (one.luminosity ?? 5)) <= 0.6
+    return isSame || isRelated ? [i] : []
+  })
+}
