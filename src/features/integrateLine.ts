@@ -1,4 +1,4 @@
-import { type Pixels, firstPixelAbove } from './pixels.ts'
+import { type Pixels, firstPixelAbove, partMean } from './pixels.ts'
 
 /** A line by direct summation over a window, observed frame [Å]. */
 export interface Integral {
@@ -35,8 +35,9 @@ export function integrateLine(pixels: Pixels, lo: number, hi: number): Integral 
     if (!(flux[i] === flux[i])) continue
     const off = 0.5 * (from + to) - middle
     const error = part * noise[i]
-    area += part * (1 - flux[i])
-    moment += part * (1 - flux[i]) * off
+    const depth = 1 - (from > lower[i] || to < upper[i] ? partMean(pixels, flux, i, [from, to]) : flux[i])
+    area += part * depth
+    moment += part * depth * off
     variance += error * error
     spread += error * error * off * off
     light += part * flux[i] * levelError[i]

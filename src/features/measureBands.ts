@@ -3,7 +3,7 @@ import { smoothToFwhm } from '../numeric/smoothToFwhm.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 import type { BandWindow } from '../tables/types.ts'
 import type { RestFrame } from '../velocity/types.ts'
-import { type Pixels, type WindowMean, firstPixelAbove, pixelsOf, windowMean } from './pixels.ts'
+import { type Pixels, type WindowMean, firstPixelAbove, partMean, pixelsOf, windowMean } from './pixels.ts'
 import type { Measurement } from './types.ts'
 
 export interface BandOptions {
@@ -100,7 +100,7 @@ function integrateBand(
     const part = to - from
     const place = 0.5 * (from + to) - blue.centre
     const level = start + slope * place
-    const ratio = (part * flux[i]) / level
+    const ratio = (part * (part < upper[i] - lower[i] ? partMean(pixels, flux, i, [from, to]) : flux[i])) / level
     const share = apart ? place / distance : 0.5
     light += ratio
     variance += ((part * noise[i]) / level) ** 2

@@ -69,6 +69,22 @@ export function firstPixelAbove({ upper }: Pixels, wavelength: number): number {
   return low
 }
 
+/**
+ * Mean flux over the part [from, to] of pixel i: the pixel's own for a whole one; for a part the line through its
+ * neighbours gives what that part has more or less than the whole. NaN where the pixel is not usable.
+ */
+export function partMean(
+  { wavelength, lower, upper }: Pixels,
+  flux: Float64Array,
+  i: number,
+  [from, to]: readonly [number, number],
+): number {
+  const off = 0.5 * (from + to) - 0.5 * (lower[i] + upper[i])
+  if (off === 0 || i === 0 || i + 1 === flux.length) return flux[i]
+  const slope = (flux[i + 1] - flux[i - 1]) / (wavelength[i + 1] - wavelength[i - 1])
+  return slope === slope ? flux[i] + slope * off : flux[i]
+}
+
 /** Mean over a window, counting of each pixel only the part inside. */
 export interface WindowMean {
   /** Mean of flux ÷ level; NaN when no pixel is usable. */
@@ -96,7 +112,7 @@ export function windowMean(pixels: Pixels, lo: number, hi: number, flux: Float64
     const part = to - from
     covered += part
     if (!(flux[i] === flux[i])) continue
-    sum += part * flux[i]
+    sum += part * (from > lower[i] || to < upper[i] ? partMean(pixels, flux, i, [from, to]) : flux[i])
     moment += part * (from + to)
     variance += part * noise[i] * (part * noise[i])
     width += part
