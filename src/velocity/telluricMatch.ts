@@ -28,6 +28,8 @@ const BEYOND = 800
 /** [km/s] what saturation and the weather do to the shape of a band. */
 const SHAPE_ERROR = 8
 
+const FWHM_PER_SIGMA = 2 * Math.sqrt(2 * Math.LN2)
+
 /** Step of the grid in ln wavelength. */
 const STEP = { smallest: 3e-5, largest: 2.5e-4 } as const
 
@@ -63,12 +65,16 @@ export function matchTelluric(spectrum: Spectrum, continuum: Continuum, band: Li
     return undefined
   if (deepest(grid.depth) - mean(grid.depth, grid.weight) < BELIEVED.depth) return undefined
   const offset = velocityOf(best, grid)
-  const ofPeak = ((3 / 8) * width * step * SPEED_OF_LIGHT) / (1 + ratio)
+  const trueWidth = vertex(widths, heights, at)
+  // Zucker 2003, MNRAS 342, 1291, equation 9, for a Gaussian peak; misfits go on for a width of the instrument
+  const sigma = (width * step * SPEED_OF_LIGHT) / FWHM_PER_SIGMA
+  const independent = (last - first) / trueWidth
+  const ofPeak = sigma * Math.sqrt((1 - height * height) / (height * height * independent))
   return {
     name: band.name,
     offset,
     error: Math.hypot(ofPeak, SHAPE_ERROR),
-    fwhm: vertex(widths, heights, at),
+    fwhm: trueWidth,
   }
 }
 
