@@ -12,7 +12,7 @@ import { rawCounts, starField } from './rawFrame.ts'
 import type { FrameLight } from './rawFrame.ts'
 import { DEMO_MJD } from './schedule.ts'
 import type { DemoExposure } from './schedule.ts'
-import { blackBody, starLight } from './starLight.ts'
+import { blackBody, starLight, withDisc } from './starLight.ts'
 
 const SECONDS_A_DAY = 86400
 /** Temperature of a tungsten lamp [K]. */
@@ -22,10 +22,13 @@ const FLAT_LEVEL = 32000
 const SKYFLAT_LEVEL = 14000
 const DARK_CURRENT = 0.004
 
+/** Light of a made star by its type and luminosity number, photons per Å on the fine grid, at rest. */
+export type LightOf = (type: number, luminosity: number) => Float64Array
+
 /** Everything an exposure leaves on disk: its raw frame, and for stars the quick-look spectrum. */
 export function* exposureFiles(
   exposure: DemoExposure,
-  given: { readonly clean: boolean; readonly seed: number },
+  given: { readonly clean: boolean; readonly seed: number; readonly lightOf: LightOf },
 ): Generator<DemoFile, void, undefined> {
   const { step, star, number, place } = exposure
   const trouble = given.clean ? undefined : step.trouble
@@ -42,7 +45,8 @@ export function* exposureFiles(
     return
   }
   const { type, luminosity } = trouble === 'wrong star' ? { ...star, ...DEMO_OFFSETS.wrongStar } : star
-  const light = starLight(type, luminosity, trouble === 'emission' ? 'emission' : undefined)
+  const plain = given.lightOf(type, luminosity)
+  const light = trouble === 'emission' ? withDisc(plain) : plain
   const electrons = starElectrons(light, setup, {
     mag:
       star.mag +

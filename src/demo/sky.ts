@@ -1,4 +1,7 @@
+import { OXYGEN_BANDS, TELLURIC_BANDS } from '../tables/sky.ts'
 import { fineGrid, FINE_FIRST, FINE_SAMPLES, FINE_STEP } from './grid.ts'
+import { withFeatures } from './profiles.ts'
+import type { PlacedFeature } from './profiles.ts'
 
 /** Night-sky emission: wavelength [Å, air] and photons relative to the 5577 line. Strengths are round, for a dark site. */
 const SKY_LINES: readonly (readonly [wavelength: number, strength: number])[] = [
@@ -41,33 +44,37 @@ export function nightSky(): Float64Array {
   return light
 }
 
-/**
- * Absorption of the air: first and last wavelength [Å], depth at airmass 1, length [Å] over which the band recovers.
- * Extents as the Fraunhofer bands are given in handbooks; depths are round figures for a dry site.
- */
-const AIR_BANDS: readonly (readonly [first: number, last: number, depth: number])[] = [
-  [6276, 6320, 0.05],
-  [6867, 6945, 0.22],
-  [7160, 7340, 0.07],
-  [7593, 7690, 0.5],
-  [8120, 8350, 0.06],
-  [8950, 9100, 0.12],
-]
+/** Equivalent width [Å] at airmass 1 of an oxygen line whose strength in the table is 1; round, for a high site. */
+const OXYGEN_STRENGTH: Readonly<Record<string, number>> = { 'O2 A band': 0.62, 'O2 B band': 0.17 }
+/** Mean depth of the other bands at airmass 1; round, for a dry night. */
+const OTHER_DEPTH: Readonly<Record<string, number>> = {
+  'γ band': 0.03,
+  'a band': 0.05,
+  'Z band': 0.04,
+  'ρστ bands': 0.1,
+}
 
-/** Share of the light that the bands of the air let through at an airmass, on the fine grid. */
+/** The bands of the air at airmass 1: oxygen line by line, the weaker bands as shallow troughs. */
+function airFeatures(): readonly PlacedFeature[] {
+  const oxygen = OXYGEN_BANDS.flatMap(({ name, lines }) =>
+    lines.map(([wavelength, strength]) => ({
+      shape: { form: 'line' } as const,
+      wavelength,
+      strength: strength * (OXYGEN_STRENGTH[name] ?? 0),
+    })),
+  )
+  const others = TELLURIC_BANDS.map(({ name, range: [from, to] }) => ({
+    shape: { form: 'trough', width: to - from } as const,
+    wavelength: (from + to) / 2,
+    strength: (OTHER_DEPTH[name] ?? 0) * (to - from),
+  }))
+  return [...oxygen, ...others]
+}
+
+/** Share of the light that the bands of the air let through at an airmass, on the fine grid. Saturated lines grow as its root. */
 export function airBands(airmass: number): Float64Array {
-  const out = new Float64Array(FINE_SAMPLES).fill(1)
-  for (const [first, last, depth] of AIR_BANDS) {
-    for (let i = 0; i < FINE_SAMPLES; i++) {
-      const along = (FINE_FIRST + FINE_STEP * i - first) / (last - first)
-      if (along < 0 || along > 1) continue
-      // a strong narrow head, then the teeth of the two branches fading to the red
-      const teeth = 0.75 + 0.25 * Math.cos(2 * Math.PI * along * 9)
-      const shape = along < 0.06 ? along / 0.06 : (1 - along) ** 0.6 * teeth
-      out[i] = (1 - depth * shape) ** Math.sqrt(airmass)
-    }
-  }
-  return out
+  const light = withFeatures(new Float64Array(FINE_SAMPLES).fill(1), airFeatures())
+  return light.map((share) => share ** Math.sqrt(airmass))
 }
 
 /** Share of the light that the air lets through besides its bands. Source: round figures for a high site. */

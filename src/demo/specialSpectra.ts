@@ -1,7 +1,7 @@
 import type { FeatureShape } from '../tables/demoStrengths.ts'
 import { FINE_SAMPLES } from './grid.ts'
 import { withFeatures } from './profiles.ts'
-import { blackBody, lineTransmission, starContinuum, starLight } from './starLight.ts'
+import { blackBody, lineTransmission, starContinuum, starLight, withDisc } from './starLight.ts'
 
 export const SPECIAL_KINDS = [
   'emission',
@@ -116,7 +116,7 @@ const clear = (): Float64Array => new Float64Array(FINE_SAMPLES).fill(1)
  * descriptions, with invented strengths. It proves that the criteria fire, not that real objects are told.
  */
 export function specialLight(kind: SpecialKind): Float64Array {
-  if (kind === 'emission') return starLight(12, 5, 'emission')
+  if (kind === 'emission') return withDisc(starLight(12, 5))
   if (kind === 'metal-weak') {
     const weak = 0.2
     const scale = {

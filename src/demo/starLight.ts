@@ -89,10 +89,13 @@ const DISC_LINES = (
   strength,
 }))
 
-/** Light of a made star in photons per Å on the fine grid, at rest, before air and instrument; 1 near 5500 Å. */
-export function starLight(type: number, luminosity: number, special?: 'emission'): Float64Array {
-  const continuum = starContinuum(type, luminosity)
-  const absorbed = lineTransmission(type, luminosity)
-  const lines = special === 'emission' ? withFeatures(absorbed, DISC_LINES) : absorbed
-  return continuum.map((level, i) => level * lines[i])
+/** Light with the emission of a disc put in; the unit is that of `light`. */
+export function withDisc(light: Float64Array): Float64Array {
+  return withFeatures(light, DISC_LINES)
+}
+
+/** Light of a star of the demo's own round strengths in photons per Å on the fine grid, at rest; 1 near 5500 Å. */
+export function starLight(type: number, luminosity: number): Float64Array {
+  const lines = lineTransmission(type, luminosity)
+  return starContinuum(type, luminosity).map((level, i) => level * lines[i])
 }

@@ -16,16 +16,17 @@ const EVERY = 2
  * @param light   shape (fine grid), share of the continuum let through
  * @param wanted  strength of each band in its own unit, Å or mag; undefined leaves the band alone
  * @param fwhm    Å, at which strengths are measured
+ * @param level   shape (fine grid): level that a continuum fit would find, in units of the true continuum
  */
 export function withStrengths(
   light: Float64Array,
   bands: readonly BandWindow[],
   wanted: readonly (number | undefined)[],
-  fwhm: number,
+  { fwhm, level }: { readonly fwhm: number; readonly level?: Float64Array },
 ): Float64Array {
   const out = light.slice()
   for (let sweep = 0; sweep < SWEEPS; sweep++) {
-    const seen = smoothed(out, fwhm)
+    const seen = smoothed(level ? out.map((share, i) => share / level[i]) : out, fwhm)
     for (const [k, band] of bands.entries()) {
       const goal = wanted[k]
       if (goal === undefined) continue
@@ -49,7 +50,8 @@ export function bandStrength(seen: Float64Array, { band, blue, red }: BandWindow
   if (!(left > 0) || !(right > 0)) return undefined
   const [from, to] = [(blue[0] + blue[1]) / 2, (red[0] + red[1]) / 2]
   const middle = (band[0] + band[1]) / 2
-  const level = left + ((right - left) * (middle - from)) / (to - from)
+  // one side band twice: a level instead of a line
+  const level = to === from ? left : left + ((right - left) * (middle - from)) / (to - from)
   return (band[1] - band[0]) * (1 - mean(seen, band) / level)
 }
 

@@ -21,7 +21,7 @@ describe('withStrengths', () => {
     const off = (light: Float64Array): number =>
       median(strengths(light).map((strength, k) => Math.abs((strength ?? NaN) - (strengths(goal)[k] ?? NaN))))
     const before = off(start)
-    const after = off(withStrengths(start, BANDS, wanted, FWHM))
+    const after = off(withStrengths(start, BANDS, wanted, { fwhm: FWHM }))
     expect(before).toBeGreaterThan(0.2)
     expect(after).toBeLessThan(before / 5)
   })
@@ -33,7 +33,7 @@ describe('withStrengths', () => {
         light,
         BANDS,
         BANDS.map(() => undefined),
-        FWHM,
+        { fwhm: FWHM },
       ),
     ).toEqual(light)
   })
