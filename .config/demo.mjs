@@ -7,9 +7,9 @@ import { fileURLToPath } from 'node:url'
 const at = (path) => fileURLToPath(new URL(`../${path}`, import.meta.url))
 const darkline = (...words) => spawnSync(process.execPath, [at('dist/cli/main.js'), ...words], { stdio: 'inherit', cwd: at('.') }).status
 
-const { DEMO_VERSION } = await import(new URL('../dist/src/demo/version.js', import.meta.url).href)
-const stamp = at('samples/night/demo-stamp.txt')
-if (!existsSync(stamp) || readFileSync(stamp, 'utf8').trim() !== DEMO_VERSION) {
+const { DEMO_STAMP, demoStamp } = await import(new URL('../dist/src/demo/demoNight.js', import.meta.url).href)
+const stamp = at(`samples/night/${DEMO_STAMP}`)
+if (!existsSync(stamp) || readFileSync(stamp, 'utf8') !== demoStamp({ clean: false })) {
   rmSync(at('samples/night'), { recursive: true, force: true })
   if (darkline('demo', 'samples/night', '--quiet') !== 0) process.exit(2)
 }

@@ -47,13 +47,30 @@ export const OPTION_HELP: Readonly<Record<string, OptionHelp>> = {
   quiet: { describe: 'No progress and no remarks; results and errors only', type: 'boolean' },
   config: { describe: 'TOML file with thresholds and options (see `darkline settings`)', type: 'string' },
   wavelengths: { describe: 'FITS file that holds the wavelengths of the spectra named', type: 'string' },
-  targets: { describe: 'Target list, CSV: object, ra, dec, mag, pm_ra_mas, pm_dec_mas, epoch, expected_type, wanted_snr, priority, note', type: 'string', for: ['night'] },
-  watch: { describe: 'Stay, handle files as they arrive, keep tables and pages current; ends on interrupt', type: 'boolean', for: ['night'] },
+  targets: {
+    describe:
+      'Target list, CSV: object, ra, dec, mag, pm_ra_mas, pm_dec_mas, epoch, expected_type, wanted_snr, priority, note',
+    type: 'string',
+    for: ['night'],
+  },
+  watch: {
+    describe: 'Stay, handle files as they arrive, keep tables and pages current; ends on interrupt',
+    type: 'boolean',
+    for: ['night'],
+  },
   pages: { describe: 'Write PDF and HTML pages (--no-pages for tables only)', type: 'boolean', for: ['night'] },
   paper: { describe: 'Paper of the PDF pages', type: 'string', choices: ['A4', 'Letter'], for: ['night'] },
-  'save-normalized': { describe: 'Also write each normalised rest-frame spectrum as FITS (needs --out)', type: 'boolean', for: ['night', 'classify', 'measure'] },
+  'save-normalized': {
+    describe: 'Also write each normalised rest-frame spectrum as FITS (needs --out)',
+    type: 'boolean',
+    for: ['night', 'classify', 'measure'],
+  },
   why: { describe: 'Print for each spectrum the features and ratios that decided', type: 'boolean', for: ['classify'] },
-  'all-lines': { describe: 'Find every significant line without being told where to look, and name candidates', type: 'boolean', for: ['measure'] },
+  'all-lines': {
+    describe: 'Find every significant line without being told where to look, and name candidates',
+    type: 'boolean',
+    for: ['measure'],
+  },
   hdus: { describe: 'One entry an HDU instead of one a spectrum', type: 'boolean', for: ['describe'] },
   verify: { describe: 'Check the checksums of every HDU', type: 'boolean', for: ['describe'] },
   clean: { describe: 'A night without planted troubles', type: 'boolean', for: ['demo'] },
@@ -108,7 +125,10 @@ export const COMMAND_HELP: Readonly<Record<CommandName, CommandHelp>> = {
   settings: {
     arguments: '',
     describe: 'Every threshold and option in force, and where it came from',
-    examples: [['darkline settings --format table', 'to read'], ['darkline settings > my.toml', 'a file to start from']],
+    examples: [
+      ['darkline settings --format table', 'to read'],
+      ['darkline settings > my.toml', 'a file to start from'],
+    ],
   },
   demo: {
     arguments: 'FOLDER',
@@ -130,8 +150,14 @@ export async function readArguments(words: readonly string[], version: string, w
   let failure: Error | undefined
   let parser = yargs([...words])
     .scriptName('darkline')
-    .parserConfiguration({ 'duplicate-arguments-array': false, 'strip-aliased': true, 'parse-positional-numbers': false, 'populate--': false })
-    .usage('darkline: what came off the night? Types, line strengths and checks of stellar spectra in FITS files.\n\n$0 COMMAND …')
+    .parserConfiguration({
+      'strip-aliased': true,
+      'parse-positional-numbers': false,
+      'populate--': false,
+    })
+    .usage(
+      'darkline: what came off the night? Types, line strengths and checks of stellar spectra in FITS files.\n\n$0 COMMAND …',
+    )
     .version(version)
     .help()
     .alias('help', 'h')
@@ -149,10 +175,20 @@ export async function readArguments(words: readonly string[], version: string, w
     const help = COMMAND_HELP[name]
     parser = parser.command(help.arguments ? `${name} [paths..]` : name, help.describe, (y) => {
       let command = y.usage(`$0 ${name} ${help.arguments}\n\n${help.describe}.`)
-      if (help.arguments) command = command.positional('paths', { describe: help.arguments === 'FOLDER' ? 'A folder' : 'Files and folders', type: 'string', array: true })
+      if (help.arguments)
+        command = command.positional('paths', {
+          describe: help.arguments === 'FOLDER' ? 'A folder' : 'Files and folders',
+          type: 'string',
+          array: true,
+        })
       for (const [option, about] of Object.entries(OPTION_HELP)) {
         if (about.for && !about.for.includes(name)) continue
-        command = command.option(option, { describe: about.describe, type: about.type, ...(about.choices ? { choices: about.choices } : {}), requiresArg: about.type !== 'boolean' })
+        command = command.option(option, {
+          describe: about.describe,
+          type: about.type,
+          ...(about.choices ? { choices: about.choices } : {}),
+          requiresArg: about.type !== 'boolean',
+        })
       }
       for (const [line, what] of help.examples) command = command.example(line, what)
       return command
@@ -166,7 +202,14 @@ export async function readArguments(words: readonly string[], version: string, w
   return { options: toOptions(argv as Record<string, unknown>) }
 }
 
-function toOptions(argv: Record<string, unknown>): Options {
+/** An option given twice counts as given last. */
+function lastOf(value: unknown): unknown {
+  return Array.isArray(value) ? value.at(-1) : value
+}
+
+function toOptions(given: Record<string, unknown>): Options {
+  const argv: Record<string, unknown> = { ...given }
+  for (const name of Object.keys(OPTION_HELP)) argv[name] = lastOf(given[name])
   const [command, ...rest] = (argv._ as (string | number)[]).map(String)
   const name = COMMANDS.find((known) => known === command)
   if (!name) throw new UsageError(`command requires one of ${COMMANDS.join(', ')}, got ${command ?? 'none'}`)
@@ -176,10 +219,16 @@ function toOptions(argv: Record<string, unknown>): Options {
     throw new UsageError(`--workers requires a whole number from 0 to 256, got ${String(workers)}`)
   }
   if (name === 'settings' ? paths.length > 0 : paths.length === 0) {
-    throw new UsageError(name === 'settings' ? `settings requires no path, got ${paths[0]}` : `${name} requires ${COMMAND_HELP[name].arguments}, got none (see: darkline ${name} --help)`)
+    throw new UsageError(
+      name === 'settings'
+        ? `settings requires no path, got ${paths[0]}`
+        : `${name} requires ${COMMAND_HELP[name].arguments}, got none (see: darkline ${name} --help)`,
+    )
   }
-  if ((name === 'night' || name === 'demo') && paths.length > 1) throw new UsageError(`${name} requires one folder, got ${paths.length}: ${paths.join(', ')}`)
-  for (const path of paths) if (path === '') throw new UsageError('path requires at least one character, got an empty text')
+  if ((name === 'night' || name === 'demo') && paths.length > 1)
+    throw new UsageError(`${name} requires one folder, got ${paths.length}: ${paths.join(', ')}`)
+  for (const path of paths)
+    if (path === '') throw new UsageError('path requires at least one character, got an empty text')
   const text = (key: string): string | undefined => (argv[key] === undefined ? undefined : String(argv[key]))
   return {
     command: name,

@@ -50,7 +50,10 @@ export function startCrew(workers: number | undefined): Crew {
         return await run<Outcome>('analyse', task)
       } catch (error) {
         // The thread died or was stopped over this file; the night goes on without it.
-        const message = error instanceof Error && error.name === 'AbortError' ? `file requires to be handled within ${LIMIT_MS / 1000} s, got no end` : `file requires a worker that survives it, got ${String(error)}`
+        const message =
+          error instanceof Error && error.name === 'AbortError'
+            ? `file requires to be handled within ${LIMIT_MS / 1000} s, got no end`
+            : `file requires a worker that survives it, got ${String(error)}`
         return { file: task.file, size: 0, spectra: [], notes: [], error: { code: 'gave-up', message } }
       }
     },

@@ -31,13 +31,21 @@ export function* findFiles(paths: readonly string[]): Generator<PathAnswer> {
     const file = given.replace(/^(\.\/+)+/, '') || '.'
     const status = statSync(given, { throwIfNoEntry: false })
     if (!status) {
-      yield { problem: { file, code: 'no-such-path', message: 'path requires a file or folder, got none of that name' } }
+      yield {
+        problem: { file, code: 'no-such-path', message: 'path requires a file or folder, got none of that name' },
+      }
     } else if (status.isDirectory()) {
       yield* walk(Buffer.from(given), Buffer.from(file), new Set())
     } else if (status.isFile()) {
       yield { found: { file, path: given, named: true } }
     } else {
-      yield { problem: { file, code: 'not-a-file', message: 'path requires a regular file or folder, got a device, pipe or socket' } }
+      yield {
+        problem: {
+          file,
+          code: 'not-a-file',
+          message: 'path requires a regular file or folder, got a device, pipe or socket',
+        },
+      }
     }
   }
 }
@@ -49,7 +57,13 @@ function* walk(folder: Buffer, shown: Buffer, above: ReadonlySet<string>): Gener
   try {
     real = realpathSync(folder)
     if (above.has(real)) {
-      yield { problem: { file, code: 'link-in-a-circle', message: `folder requires to lie outside itself, got a link back to ${real}` } }
+      yield {
+        problem: {
+          file,
+          code: 'link-in-a-circle',
+          message: `folder requires to lie outside itself, got a link back to ${real}`,
+        },
+      }
       return
     }
     entries = readdirSync(folder, { withFileTypes: true, encoding: 'buffer' })
@@ -65,7 +79,8 @@ function* walk(folder: Buffer, shown: Buffer, above: ReadonlySet<string>): Gener
     const isFolder = followed?.isDirectory() ?? false
     return {
       path,
-      shown: file === '.' ? entry.name : Buffer.concat([shown, shown.at(-1) === 47 ? Buffer.alloc(0) : slash, entry.name]),
+      shown:
+        file === '.' ? entry.name : Buffer.concat([shown, shown.at(-1) === 47 ? Buffer.alloc(0) : slash, entry.name]),
       isFolder,
       isFile: followed?.isFile() ?? false,
       key: isFolder ? Buffer.concat([entry.name, slash]) : entry.name,
@@ -76,7 +91,8 @@ function* walk(folder: Buffer, shown: Buffer, above: ReadonlySet<string>): Gener
     if (item.isFolder) yield* walk(item.path, item.shown, here)
     else if (item.isFile) {
       const name = item.shown.toString()
-      if (FITS_NAME.test(name) || beginsAsFits(item.path)) yield { found: { file: name, path: openable(item.path), named: false } }
+      if (FITS_NAME.test(name) || beginsAsFits(item.path))
+        yield { found: { file: name, path: openable(item.path), named: false } }
     }
   }
 }

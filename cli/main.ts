@@ -4,7 +4,14 @@ import { FormatError, placeAndMessage, UsageError } from '../src/errors.ts'
 import { readArguments } from './args.ts'
 import { runCommand } from './commands.ts'
 
-const version = (JSON.parse(readFileSync(new URL(import.meta.url.endsWith('.ts') ? '../package.json' : '../../package.json', import.meta.url), 'utf8')) as { version: string }).version
+const version = (
+  JSON.parse(
+    readFileSync(
+      new URL(import.meta.url.endsWith('.ts') ? '../package.json' : '../../package.json', import.meta.url),
+      'utf8',
+    ),
+  ) as { version: string }
+).version
 
 /** Exit status: 0 done, nothing unusable; 1 done, something unreadable or unusable; 2 the command could not run. */
 async function main(words: readonly string[]): Promise<number> {
@@ -28,8 +35,11 @@ try {
   process.exitCode = 2
   if (error instanceof UsageError) process.stderr.write(`darkline: ${error.message}\n`)
   else if (error instanceof FormatError) process.stderr.write(`darkline: ${placeAndMessage(error)}\n`)
-  else if (error instanceof Error && 'code' in error && 'path' in error) process.stderr.write(`darkline: ${String(error.path)}: the system answers ${String(error.code)}\n`)
+  else if (error instanceof Error && 'code' in error && 'path' in error)
+    process.stderr.write(`darkline: ${String(error.path)}: the system answers ${String(error.code)}\n`)
   else {
-    process.stderr.write(`darkline: this is a fault of the program itself; please report it with the file that caused it\n${error instanceof Error ? error.stack : String(error)}\n`)
+    process.stderr.write(
+      `darkline: this is a fault of the program itself; please report it with the file that caused it\n${error instanceof Error ? error.stack : String(error)}\n`,
+    )
   }
 }

@@ -9,7 +9,14 @@ import { encodeVotable } from '../src/report/votable.ts'
 import type { Format } from './args.ts'
 import { openWrite, type WriteStream } from './write.ts'
 
-const SUFFIX: Readonly<Record<Format, string>> = { table: 'txt', csv: 'csv', jsonl: 'jsonl', fits: 'fits', votable: 'vot', parquet: 'parquet' }
+const SUFFIX: Readonly<Record<Format, string>> = {
+  table: 'txt',
+  csv: 'csv',
+  jsonl: 'jsonl',
+  fits: 'fits',
+  votable: 'vot',
+  parquet: 'parquet',
+}
 
 /** Where rows go as they come. */
 export interface TableSink {
@@ -19,17 +26,29 @@ export interface TableSink {
 
 /** A sink that writes one table to standard output. CSV and JSON Lines flow; the other forms need all rows first. */
 export function standardOutput(name: TableName, format: Format): TableSink {
-  return sink(name, format, process.stdout.isTTY ? (process.stdout.columns ?? 100) : 160, process.stdout.isTTY === true, {
-    write: (piece) => void process.stdout.write(piece),
-    finish: () => undefined,
-    abandon: () => undefined,
-  })
+  return sink(
+    name,
+    format,
+    process.stdout.isTTY ? (process.stdout.columns ?? 100) : 160,
+    process.stdout.isTTY === true,
+    {
+      write: (piece) => void process.stdout.write(piece),
+      finish: () => undefined,
+      abandon: () => undefined,
+    },
+  )
 }
 
 /** Sinks that write the tables into a folder, one file a table and format. */
-export function folderOutput(folder: string, names: readonly TableName[], formats: readonly Format[]): Readonly<Record<TableName, TableSink>> {
+export function folderOutput(
+  folder: string,
+  names: readonly TableName[],
+  formats: readonly Format[],
+): Readonly<Record<TableName, TableSink>> {
   const sinks = names.map((name) => {
-    const each = formats.map((format) => sink(name, format, 160, false, openWrite(join(folder, `${name}.${SUFFIX[format]}`))))
+    const each = formats.map((format) =>
+      sink(name, format, 160, false, openWrite(join(folder, `${name}.${SUFFIX[format]}`))),
+    )
     const all: TableSink = {
       add: (rows) => each.forEach((one) => one.add(rows)),
       finish: async () => {

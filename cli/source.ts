@@ -28,7 +28,8 @@ export function openFile(path: PathLike): FileSource {
     let done = 0
     while (done < length) {
       const got = readSync(handle, bytes, done, length - done, offset + done)
-      if (got === 0) throw new RangeError(`file requires ${offset + length} bytes, got ${offset + done}: it shrank while being read`)
+      if (got === 0)
+        throw new RangeError(`file requires ${offset + length} bytes, got ${offset + done}: it shrank while being read`)
       done += got
     }
     return new Uint8Array(bytes.buffer, bytes.byteOffset, length)
@@ -53,7 +54,8 @@ export function openFile(path: PathLike): FileSource {
     },
     sha256() {
       const hash = createHash('sha256')
-      for (let offset = 0; offset < size; offset += PIECE_BYTES) hash.update(read(offset, Math.min(PIECE_BYTES, size - offset)))
+      for (let offset = 0; offset < size; offset += PIECE_BYTES)
+        hash.update(read(offset, Math.min(PIECE_BYTES, size - offset)))
       return hash.digest('hex')
     },
     close() {

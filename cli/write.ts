@@ -34,7 +34,7 @@ export function openWrite(path: string): WriteStream {
   return {
     write(piece) {
       const bytes = typeof piece === 'string' ? Buffer.from(piece) : piece
-      for (let done = 0; done < bytes.length; ) done += writeSync(handle, bytes, done, bytes.length - done)
+      for (let done = 0; done < bytes.length;) done += writeSync(handle, bytes, done, bytes.length - done)
     },
     finish() {
       fsyncSync(handle)

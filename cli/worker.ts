@@ -1,0 +1,2 @@
+export { analysePath as analyse } from './analyse.ts'
+export { drawTask as draw } from './draw.ts'

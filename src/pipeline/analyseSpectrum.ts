@@ -1,0 +1,143 @@
+import { fitContinuum } from '../continuum/fitContinuum.ts'
+import type { Continuum } from '../continuum/types.ts'
+import { barycentricCorrection } from '../ephemeris/barycentricCorrection.ts'
+import { findLines } from '../features/findLines.ts'
+import { measureLines } from '../features/measureLines.ts'
+import type { Measurement } from '../features/types.ts'
+import { checkSpectrum } from '../quality/checkSpectrum.ts'
+import { qualityOf } from '../quality/qualityOf.ts'
+import { setupName } from '../quality/setupName.ts'
+import type { SpectrumOutcome } from '../quality/types.ts'
+import type { Spectrum } from '../spectrum/types.ts'
+import { BANDS } from '../tables/bands.ts'
+import { CALIBRATION } from '../tables/calibration.ts'
+import { ALL_LINES, MEASURED_LINES } from '../tables/lines.ts'
+import { PATTERNS } from '../tables/patterns.ts'
+import { expectedSpectrum } from '../typing/expected.ts'
+import type { TypePosterior } from '../typing/types.ts'
+import { typeSpectrum } from '../typing/typeSpectrum.ts'
+import { type TypingInput, typingInput } from '../typing/typingInput.ts'
+import { OXYGEN_BANDS, SKY_LINES } from '../tables/sky.ts'
+import { checkMedium } from '../velocity/checkMedium.ts'
+import { findRestFrame } from '../velocity/findRestFrame.ts'
+import { measureResolution } from '../velocity/measureResolution.ts'
+import { measureZeroPoint } from '../velocity/measureZeroPoint.ts'
+import type { Resolution, RestFrame, ZeroPoint } from '../velocity/types.ts'
+import { thinnedCurves } from './curves.ts'
+import type { InForce } from './settingsInForce.ts'
+
+/** How one file's spectra are analysed. */
+export interface AnalyseOptions {
+  readonly inForce: InForce
+  /** Keep thinned curves for pages. */
+  readonly wantsCurves: boolean
+  /** Find every line without being told where to look. */
+  readonly wantsAllLines: boolean
+}
+
+const CLIGHT = 299792.458
+
+/** All that one spectrum says: continuum, velocity, lines, type, checks. */
+export function analyseSpectrum(spectrum: Spectrum, options: AnalyseOptions): SpectrumOutcome {
+  const star = measureStar(spectrum, options.inForce)
+  const { continuum, restFrame } = star
+  const resolution = measureResolution(spectrum, continuum, restFrame, { telluric: OXYGEN_BANDS, skyLines: SKY_LINES })
+  const type =
+    spectrum.role === 'star' || spectrum.role === 'unknown'
+      ? typeSpectrum(star.typing, CALIBRATION)
+      : untyped(`the header says this is no star but ${spectrum.role === 'lamp' ? 'a lamp' : spectrum.role}`)
+  const lines = measureLines(spectrum, continuum, restFrame, {
+    lines: MEASURED_LINES,
+    resolution: resolution.fwhm,
+  })
+  const measurements = [...star.typing.measurements, ...lines]
+  const zeroPoint = measureZeroPoint(spectrum, continuum, { telluric: OXYGEN_BANDS, skyLines: SKY_LINES })
+  return outcomeOf(spectrum, { ...star, resolution, measurements, type, ...(zeroPoint ? { zeroPoint } : {}) }, options)
+}
+
+/** What a spectrum is typed from, and what led there. */
+export interface StarMeasures {
+  readonly continuum: Continuum
+  readonly restFrame: RestFrame
+  readonly typing: TypingInput
+}
+
+/** Continuum, rest frame and side-band features of a spectrum: the same steps for a star and for the calibration. */
+export function measureStar(spectrum: Spectrum, { maximumVelocity }: Pick<InForce, 'maximumVelocity'>): StarMeasures {
+  const continuum = fitContinuum(spectrum)
+  const restFrame = findRestFrame(spectrum, continuum, { patterns: PATTERNS, maxVelocity: maximumVelocity })
+  const typing = typingInput(spectrum, continuum, restFrame, { windows: BANDS, commonFwhm: CALIBRATION.commonFwhm })
+  return { continuum, restFrame, typing }
+}
+
+function untyped(reason: string): TypePosterior {
+  return { state: 'none', reason, peculiar: [], evidence: [], ratios: [], featuresUsed: 0 }
+}
+
+interface Found extends StarMeasures {
+  readonly resolution: Resolution
+  readonly zeroPoint?: ZeroPoint
+  readonly measurements: readonly Measurement[]
+  readonly type: TypePosterior
+}
+
+function outcomeOf(spectrum: Spectrum, found: Found, options: AnalyseOptions): SpectrumOutcome {
+  const { continuum, restFrame, resolution, zeroPoint, measurements, type } = found
+  const { inForce } = options
+  const check = checkSpectrum(
+    { spectrum, continuum, restFrame, resolution, ...(zeroPoint ? { zeroPoint } : {}), measurements, type },
+    inForce.thresholds,
+  )
+  const medium = checkMedium(spectrum, restFrame, zeroPoint ? { zeroPoint } : {})
+  const { wavelength, facts } = spectrum
+  return {
+    hdu: spectrum.hdu,
+    ...(spectrum.row === undefined ? {} : { row: spectrum.row }),
+    facts,
+    setup: setupName(facts),
+    wavelengthMin: wavelength[0],
+    wavelengthMax: wavelength[wavelength.length - 1],
+    samples: wavelength.length,
+    medium: spectrum.medium,
+    mediumHow: spectrum.mediumHow,
+    fluxKind: spectrum.fluxKind,
+    fluxUnit: spectrum.fluxUnit,
+    uncertainty: spectrum.uncertainty,
+    convention: spectrum.convention,
+    snr: check.snr,
+    resolution,
+    ...(zeroPoint ? { zeroPoint } : {}),
+    restFrame,
+    ...barycentric(spectrum, restFrame),
+    measurements,
+    type,
+    quality: qualityOf([...check.findings, ...medium]),
+    findings: [...check.findings, ...medium],
+    typing: found.typing,
+    ...(options.wantsAllLines ? { lines: findLines(spectrum, continuum, restFrame, { lines: ALL_LINES }) } : {}),
+    ...(options.wantsCurves ? { curves: thinnedCurves(spectrum, continuum, restFrame, expectedOf(type)) } : {}),
+  }
+}
+
+function expectedOf({ typeNumber, luminosityNumber }: TypePosterior): ReturnType<typeof expectedSpectrum> {
+  return typeNumber === undefined ? undefined : expectedSpectrum(CALIBRATION, typeNumber, luminosityNumber ?? 5)
+}
+
+/** The correction applies only to wavelengths that still are as the telescope saw them. */
+function barycentric(
+  { facts, frame }: Spectrum,
+  restFrame: RestFrame,
+): Pick<SpectrumOutcome, 'barycentricCorrection' | 'barycentricVelocity'> {
+  if (frame === 'barycentric' || frame === 'heliocentric')
+    return restFrame.trusted ? { barycentricVelocity: restFrame.velocity } : {}
+  const { mjdMid, ra, dec, site } = facts
+  if (frame === 'star' || mjdMid === undefined || ra === undefined || dec === undefined || site === undefined) return {}
+  const correction = barycentricCorrection({ mjd: mjdMid, ra, dec, site })
+  if (!Number.isFinite(correction)) return {}
+  const { velocity, trusted } = restFrame
+  return {
+    barycentricCorrection: correction,
+    // Wright & Eastman 2014: the redshifts multiply, so the velocities do not simply add.
+    ...(trusted ? { barycentricVelocity: velocity + correction + (velocity * correction) / CLIGHT } : {}),
+  }
+}
