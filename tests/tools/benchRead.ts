@@ -18,7 +18,7 @@ import { runPython } from '../support/tools.ts'
 
 const FILES = 1000
 const SAMPLES = 2000
-const ROUNDS = 5
+const ROUNDS = 8
 
 const PROGRAM = `
 import sys, time, numpy as np
