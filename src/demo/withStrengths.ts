@@ -86,8 +86,8 @@ function deepen(light: Float64Array, [from, to]: readonly [number, number], shar
   const last = Math.floor((to - FINE_FIRST) / FINE_STEP)
   for (let i = first; i <= last; i++) {
     const along = (FINE_FIRST + FINE_STEP * i - from) / (to - from)
-    // a raised cosine of mean 1 would be sharp in wide bands: half of it is level
-    light[i] *= 1 - share * (1 - 0.5 * Math.cos(2 * Math.PI * along))
+    // a raised cosine of mean 1: no step at the edges of the band
+    light[i] *= 1 - share * (1 - Math.cos(2 * Math.PI * along))
     if (light[i] < 0.02) light[i] = 0.02
   }
 }
