@@ -9,7 +9,8 @@ export function featureRows(outcome: Outcome): Row[] {
   return outcome.spectra.flatMap((spectrum) => {
     const evidence = new Map(spectrum.type.evidence.map((e) => [e.feature, e]))
     return spectrum.measurements.map((m) => {
-      const e = evidence.get(m.feature)
+      // Lines measured otherwise share names with side-band features; the type was told from the side bands only.
+      const e = m.method === 'side bands' ? evidence.get(m.feature) : undefined
       return tidyRow(COLUMNS.features, {
         ...placeOf(outcome, spectrum),
         feature: m.feature,

@@ -64,6 +64,7 @@ function title(face: Typeface, area: Area, view: TargetView): Block {
 function facts(face: Typeface, area: Area, view: TargetView): Block {
   const { facts: header, setup, resolution } = view.exposures[view.best].spectrum
   const parts = [
+    view.exposures.length > 1 ? `best of ${view.exposures.length} exposures` : '',
     header.ra === undefined || header.dec === undefined
       ? ''
       : `RA ${header.ra.toFixed(4)}°, Dec ${header.dec.toFixed(4).replace(/^-/, '−')}°`,
@@ -72,7 +73,6 @@ function facts(face: Typeface, area: Area, view: TargetView): Block {
     header.airmass === undefined ? '' : `air mass ${header.airmass.toFixed(2)}`,
     setup,
     resolution === undefined ? '' : `FWHM ${resolution.fwhm.toFixed(1)} Å`,
-    view.exposures.length > 1 ? `best of ${view.exposures.length} exposures shown` : '',
   ].filter((part) => part !== '')
   const text = parts.length ? parts.join('  ·  ') : 'the header says nothing of when and how it was observed'
   return {

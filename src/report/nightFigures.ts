@@ -136,7 +136,8 @@ export function driftFigure(face: Typeface, area: Area, drift: Drift, times: rea
   for (let h = Math.ceil((xRange[0] * 24) / step) * step; h <= xRange[1] * 24 + 1e-9; h += step) {
     const x = atX(frame, h / 24)
     items.push(stroke([x, bottom], [x, bottom + 3], PALETTE.ink))
-    items.push(face.text(x, bottom + 10, clockTime(h / 24), { size: 6.5, anchor: 'middle' }))
+    const label = face.text(x, bottom + 10, clockTime(h / 24), { size: 6.5, anchor: 'middle' })
+    if (x + label.width / 2 <= area.x + area.width) items.push(label)
   }
   const inTime = [...drift.points].sort((a, b) => a.mjd - b.mjd)
   items.push(

@@ -56,7 +56,11 @@ function opening(night: NightSummary, { width, colour }: TerminalStyle): string[
 
 function again(night: NightSummary, { width, colour }: TerminalStyle): string[] {
   const rows = night.targets.filter((t) => t.observeAgain).sort((a, b) => (b.urgency ?? 0) - (a.urgency ?? 0))
-  if (rows.length === 0) return [strong('Observe again first', colour), '  nothing that was observed']
+  if (rows.length === 0)
+    return [
+      strong(cutToWidth('Observe again first', width), colour),
+      ...wrapToWidth('nothing that was observed', width - 2).map((line) => `  ${line}`),
+    ]
   const lines = rows.slice(0, MOST).flatMap((t) => {
     const needs = t.exposureNeeded === undefined ? '' : ` (needs ${t.exposureNeeded.toFixed(0)} s)`
     const name = plainText(t.target)
@@ -64,7 +68,11 @@ function again(night: NightSummary, { width, colour }: TerminalStyle): string[] 
     const urgency = padToWidth(t.urgency === undefined ? '' : t.urgency.toFixed(2), 4)
     return wrapToWidth(text, Math.max(10, width - 8)).map((line, i) => `  ${i === 0 ? urgency : '    '}  ${line}`)
   })
-  return [strong('Observe again first (urgency 1 is the highest)', colour), ...lines, ...rest(rows.length)]
+  return [
+    strong(cutToWidth('Observe again first (urgency 1 is the highest)', width), colour),
+    ...lines,
+    ...rest(rows.length),
+  ]
 }
 
 const rest = (n: number): string[] => (n > MOST ? [`  … and ${n - MOST} more`] : [])
@@ -76,7 +84,7 @@ function list(heading: string, lines: readonly string[], { width, colour }: Term
     .flatMap((line) =>
       wrapToWidth(plainText(line), Math.max(10, width - 4)).map((part, i) => (i === 0 ? '  ' : '    ') + part),
     )
-  return [strong(heading, colour), ...wrapped, ...rest(lines.length)]
+  return [strong(cutToWidth(heading, width), colour), ...wrapped, ...rest(lines.length)]
 }
 
 function findings(night: NightSummary, { width, colour }: TerminalStyle): string[] {
@@ -87,7 +95,7 @@ function findings(night: NightSummary, { width, colour }: TerminalStyle): string
       (line, i) => `  ${i === 0 ? tinted(padToWidth(f.level, 5), colour) : '     '}  ${line}`,
     ),
   )
-  return [strong('What holds for the whole night', colour), ...lines]
+  return [strong(cutToWidth('What holds for the whole night', width), colour), ...lines]
 }
 
 function targets(night: NightSummary, outcomes: readonly Outcome[], { width, colour }: TerminalStyle): string[] {
@@ -116,7 +124,7 @@ function targets(night: NightSummary, outcomes: readonly Outcome[], { width, col
     })
     return line.trimEnd()
   })
-  return [strong('Targets', colour), ...lines, ...rest(rows.length)]
+  return [strong(cutToWidth('Targets', width), colour), ...lines, ...rest(rows.length)]
 }
 
 function cover(night: NightSummary, style: TerminalStyle): string[] {

@@ -12,7 +12,7 @@ export interface TerminalStyle {
 /** Columns by importance; those that do not fit are left out from the end. */
 const IMPORTANCE: Readonly<Record<TableName, readonly string[]>> = {
   spectra: (
-    'object spectral_type luminosity_class type_state quality file type_number_err snr_visual velocity_kms peculiar ' +
+    'object spectral_type quality luminosity_class file type_number_err snr_visual type_state velocity_kms peculiar ' +
     'expected_type expected_probability findings velocity_err_kms target hdu row prob_dwarf prob_giant ' +
     'prob_supergiant setup exptime_s airmass date_obs resolution_fwhm type_low68 type_high68'
   ).split(' '),
@@ -33,7 +33,7 @@ const IMPORTANCE: Readonly<Record<TableName, readonly string[]>> = {
 }
 
 /** Least width of a text column that is cut, and most width of one that is not the last. */
-const LEAST = 8
+const LEAST = 12
 const MOST = 32
 const GAP = 2
 
@@ -78,11 +78,15 @@ export function terminalTable(name: TableName, rows: readonly Row[], style: Term
 
 const sideOf = (spec: ColumnSpec): 'left' | 'right' => (spec.kind === 'text' ? 'left' : 'right')
 
+/** A cell cut to its column: a path keeps its end, all else its beginning. */
+function cutCell({ spec, cells, width }: Chosen, i: number): string {
+  if (spec.name !== 'file' || columnWidth(cells[i]) <= width) return cutToWidth(cells[i], width)
+  return [...cutToWidth([...cells[i]].reverse().join(''), width)].reverse().join('')
+}
+
 function rowLines(columns: readonly Chosen[], i: number, colour: boolean): string[] {
   const wrapped = columns.map((c) =>
-    c.spec.name === 'text' || c.spec.name === 'reason'
-      ? wrapToWidth(c.cells[i], c.width)
-      : [cutToWidth(c.cells[i], c.width)],
+    c.spec.name === 'text' || c.spec.name === 'reason' ? wrapToWidth(c.cells[i], c.width) : [cutCell(c, i)],
   )
   const height = Math.max(...wrapped.map((w) => w.length))
   return Array.from({ length: height }, (_, k) =>
@@ -99,7 +103,8 @@ function chooseColumns(name: TableName, rows: readonly Row[], width: number): Ch
     const spec = specs.find((s) => s.name === key)
     if (!spec) return []
     const cells = rows.map((row) => plainText(String(row[key] ?? '')))
-    return cells.every((cell) => cell === '') ? [] : [{ spec, cells, full: widest([spec.name, ...cells]) }]
+    const isPlace = (key === 'hdu' || key === 'row') && cells.every((cell) => cell === cells[0])
+    return isPlace || cells.every((cell) => cell === '') ? [] : [{ spec, cells, full: widest([spec.name, ...cells]) }]
   })
   let used = -GAP
   const kept: (Chosen & { readonly full: number })[] = []
