@@ -40,7 +40,7 @@ export function smoothToFwhm(
   let kernel: Float64Array = new Float64Array(1)
   let half = 0
   for (let i = 0; i < n; i++) {
-    const step = i + 1 < n ? wavelength[i + 1] - wavelength[i] : wavelength[i] - wavelength[i - 1]
+    const step = stepAt(wavelength, i)
     if (!(Math.abs(step - kernelStep) <= STEP_TOLERANCE * kernelStep)) {
       kernel = gaussianKernel(sigma / step)
       half = (kernel.length - 1) / 2
@@ -64,6 +64,19 @@ export function smoothToFwhm(
     out[i] = weight > 1e-3 ? sum / weight : NaN
   }
   return out
+}
+
+/** Samples on either side that a step which is far too small for its place is judged by. */
+const NEIGHBOURS = 4
+
+/** Step to the next sample; where two samples all but coincide (a join of two arms), the mean step about them. */
+function stepAt(wavelength: Float64Array, i: number): number {
+  const n = wavelength.length
+  const step = i + 1 < n ? wavelength[i + 1] - wavelength[i] : wavelength[i] - wavelength[i - 1]
+  const first = Math.max(0, i - NEIGHBOURS)
+  const last = Math.min(n - 1, i + NEIGHBOURS)
+  const around = (wavelength[last] - wavelength[first]) / (last - first)
+  return step < 0.3 * around ? around : step
 }
 
 /** Kernel of unit area; `sigma` in samples. */

@@ -9,6 +9,7 @@ import { qualityOf } from '../quality/qualityOf.ts'
 import { setupName } from '../quality/setupName.ts'
 import type { SpectrumOutcome } from '../quality/types.ts'
 import type { Spectrum } from '../spectrum/types.ts'
+import { withinRange } from '../spectrum/withinRange.ts'
 import { BANDS } from '../tables/bands.ts'
 import { CALIBRATION } from '../tables/calibration.ts'
 import { ALL_LINES, MEASURED_LINES } from '../tables/lines.ts'
@@ -37,22 +38,31 @@ export interface AnalyseOptions {
 
 const CLIGHT = 299792.458
 
+/** Å: the range this program knows lines, bands and continua of; what lies beyond is listed but not measured. */
+const OPTICAL = [3000, 11000] as const
+const FEWEST_SAMPLES = 8
+
 /** All that one spectrum says: continuum, velocity, lines, type, checks. */
-export function analyseSpectrum(spectrum: Spectrum, options: AnalyseOptions): SpectrumOutcome {
+export function analyseSpectrum(whole: Spectrum, options: AnalyseOptions): SpectrumOutcome {
+  const optical = withinRange(whole, OPTICAL[0], OPTICAL[1])
+  const isOptical = optical.wavelength.length >= FEWEST_SAMPLES
+  const spectrum = isOptical ? optical : whole
   const star = measureStar(spectrum, options.inForce)
   const { continuum, restFrame } = star
   const resolution = measureResolution(spectrum, continuum, restFrame, { telluric: OXYGEN_BANDS, skyLines: SKY_LINES })
-  const type =
-    spectrum.role === 'star' || spectrum.role === 'unknown'
+  const type = !isOptical
+    ? untyped(`${optical.wavelength.length} samples lie between ${OPTICAL[0]} and ${OPTICAL[1]} Å`)
+    : spectrum.role === 'star' || spectrum.role === 'unknown'
       ? typeSpectrum(star.typing, CALIBRATION)
       : untyped(`the header says this is no star but ${spectrum.role === 'lamp' ? 'a lamp' : spectrum.role}`)
-  const lines = measureLines(spectrum, continuum, restFrame, {
-    lines: MEASURED_LINES,
-    resolution: resolution.fwhm,
-  })
+  const lines = measureLines(spectrum, continuum, restFrame, { lines: MEASURED_LINES, resolution: resolution.fwhm })
   const measurements = [...star.typing.measurements, ...lines]
   const zeroPoint = measureZeroPoint(spectrum, continuum, { telluric: OXYGEN_BANDS, skyLines: SKY_LINES })
-  return outcomeOf(spectrum, { ...star, resolution, measurements, type, ...(zeroPoint ? { zeroPoint } : {}) }, options)
+  return outcomeOf(
+    spectrum,
+    { ...star, whole, resolution, measurements, type, ...(zeroPoint ? { zeroPoint } : {}) },
+    options,
+  )
 }
 
 /** What a spectrum is typed from, and what led there. */
@@ -75,6 +85,8 @@ function untyped(reason: string): TypePosterior {
 }
 
 interface Found extends StarMeasures {
+  /** As the file has it, beyond the optical range too. */
+  readonly whole: Spectrum
   readonly resolution: Resolution
   readonly zeroPoint?: ZeroPoint
   readonly measurements: readonly Measurement[]
@@ -89,7 +101,8 @@ function outcomeOf(spectrum: Spectrum, found: Found, options: AnalyseOptions): S
     inForce.thresholds,
   )
   const medium = checkMedium(spectrum, restFrame, zeroPoint ? { zeroPoint } : {})
-  const { wavelength, facts } = spectrum
+  const { facts } = spectrum
+  const { wavelength } = found.whole
   return {
     hdu: spectrum.hdu,
     ...(spectrum.row === undefined ? {} : { row: spectrum.row }),
