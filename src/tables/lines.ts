@@ -1125,10 +1125,10 @@ export const METAL_LINES: readonly SpectralLine[] = [
   { feature: 'FeI4143', species: 'Fe I', wavelength: 4143.414, levels: '', source: 'nistIron', strength: 0.5 },
   { feature: 'FeI4202', species: 'Fe I', wavelength: 4202.029, levels: '', source: 'nistIron', strength: 0.5 },
   { feature: 'FeI4250', species: 'Fe I', wavelength: 4250.119, levels: '', source: 'nistIron', strength: 0.45 },
-  { feature: 'FeI4250', species: 'Fe I', wavelength: 4250.787, levels: '', source: 'nistIron', strength: 0.45 },
+  { feature: 'FeI4250b', species: 'Fe I', wavelength: 4250.787, levels: '', source: 'nistIron', strength: 0.45 },
   { feature: 'FeI4260', species: 'Fe I', wavelength: 4260.474, levels: '', source: 'nistIron', strength: 0.5 },
   { feature: 'FeI4271', species: 'Fe I', wavelength: 4271.153, levels: '', source: 'nistIron', strength: 0.5 },
-  { feature: 'FeI4271', species: 'Fe I', wavelength: 4271.76, levels: '', source: 'nistIron', strength: 0.6 },
+  { feature: 'FeI4271b', species: 'Fe I', wavelength: 4271.76, levels: '', source: 'nistIron', strength: 0.6 },
   { feature: 'FeI4307', species: 'Fe I', wavelength: 4307.902, levels: '', source: 'nistIron', strength: 0.6 },
   { feature: 'FeI4325', species: 'Fe I', wavelength: 4325.762, levels: '', source: 'nistIron', strength: 0.6 },
   { feature: 'FeI4383', species: 'Fe I', wavelength: 4383.545, levels: '', source: 'nistIron', strength: 0.7 },
@@ -1137,7 +1137,7 @@ export const METAL_LINES: readonly SpectralLine[] = [
   { feature: 'FeI4528', species: 'Fe I', wavelength: 4528.614, levels: '', source: 'nistIron', strength: 0.35 },
   { feature: 'FeI4920', species: 'Fe I', wavelength: 4920.503, levels: '', source: 'nistIron', strength: 0.35 },
   { feature: 'FeI4957', species: 'Fe I', wavelength: 4957.298, levels: '', source: 'nistIron', strength: 0.2 },
-  { feature: 'FeI4957', species: 'Fe I', wavelength: 4957.596, levels: '', source: 'nistIron', strength: 0.35 },
+  { feature: 'FeI4957b', species: 'Fe I', wavelength: 4957.596, levels: '', source: 'nistIron', strength: 0.35 },
   { feature: 'FeI5167', species: 'Fe I', wavelength: 5167.488, levels: '', source: 'nistIron', strength: 0.35 },
   { feature: 'FeI5227', species: 'Fe I', wavelength: 5227.189, levels: '', source: 'nistIron', strength: 0.35 },
   { feature: 'FeI5269', species: 'Fe I', wavelength: 5269.537, levels: '', source: 'nistIron', strength: 0.4 },
@@ -1665,15 +1665,3 @@ const MEASURED = new Set(
 
 /** The lines measured in every spectrum by integration and by fitted profiles. */
 export const MEASURED_LINES: readonly SpectralLine[] = ALL_LINES.filter(({ feature }) => MEASURED.has(feature))
-
-/** Parts of the spectrum that the Earth's atmosphere absorbs [Å, air, observer's frame]. */
-export const TELLURIC_BANDS: readonly { readonly species: string; readonly range: readonly [number, number] }[] = [
-  { species: 'H2O', range: [5880, 5990] },
-  { species: 'O2', range: [6274, 6320] },
-  { species: 'H2O', range: [6460, 6600] },
-  { species: 'O2', range: [6860, 6950] },
-  { species: 'H2O', range: [7160, 7340] },
-  { species: 'O2', range: [7590, 7700] },
-  { species: 'H2O', range: [8100, 8350] },
-  { species: 'H2O', range: [8940, 9850] },
-]
