@@ -12,8 +12,8 @@ export interface InflateLimits {
   readonly mostBytes: number
 }
 
-/** 512 MiB, the memory that one file may cost. */
-const LIMITS: InflateLimits = { mostBytes: 2 ** 29 }
+/** 256 MiB: while the output grows half as much again is held, and one file may cost 512 MiB in all. */
+const LIMITS: InflateLimits = { mostBytes: 2 ** 28 }
 
 /**
  * What the last four bytes of a gzip file claim of its size is believed up to this many bytes and this many times the
@@ -21,16 +21,20 @@ const LIMITS: InflateLimits = { mostBytes: 2 ** 29 }
  */
 const TRUSTED_SIZE = 64 << 20
 const TRUSTED_RATIO = 100
+
+/** Packed bytes that are held at once; a larger gzip file is read in steps, other forms are refused. */
+const MOST_PACKED = 2 ** 27
 const STEP = 16_384
 
 /**
  * The source itself, or the inflated bytes when it holds gzip (by its first bytes, whatever the file's name; several
  * members as well), Unix compress, or a zip archive with one deflated file. Inflating stops where the FITS headers say
  * that the last HDU ends, so that the output is bounded by what they announce, and by `mostBytes`.
- * A stream that ends early or whose check value is wrong keeps what came out, with a note.
+ * A stream that ends early, goes on beyond `mostBytes` or whose check value is wrong (looked at up to 64 MiB of output)
+ * keeps what came out, with a note.
  *
- * @throws FormatError 'inflate' when the stream is damaged before anything came out, 'too-large' when the headers
- *   announce more than `mostBytes`
+ * @throws FormatError 'inflate' when the stream is damaged before anything came out, 'too-large' when the packed bytes
+ *   of another form than gzip are more than can be held
  */
 export function inflateSource(source: ByteSource, limits: InflateLimits = LIMITS): ByteSource {
   if (source.size < 3) return source
@@ -39,18 +43,23 @@ export function inflateSource(source: ByteSource, limits: InflateLimits = LIMITS
   const lzw = magic[0] === 0x1f && magic[1] === 0x9d
   const zip = magic[0] === 0x50 && magic[1] === 0x4b && magic[2] === 3 && magic[3] === 4
   if (!gzip && !lzw && !zip) return source
+  if (gzip) return inflateGzip(source, limits)
+  if (source.size > MOST_PACKED) {
+    throw new FormatError('too-large', `packed file requires at most ${MOST_PACKED} bytes, got ${source.size}`)
+  }
   const packed = source.read(0, source.size)
-  if (gzip) return inflateGzip(packed, limits)
   const sink = growingSink(limits)
   if (lzw) expandLzw(packed, sink.push)
   else inflateZip(packed, sink)
   return sink.source([])
 }
 
-function inflateGzip(packed: Uint8Array, limits: InflateLimits): ByteSource {
-  const n = packed.length
-  const claimed = new DataView(packed.buffer, packed.byteOffset, n).getUint32(Math.max(0, n - 4), true)
-  if (claimed <= Math.min(TRUSTED_SIZE, limits.mostBytes, n * TRUSTED_RATIO)) {
+function inflateGzip(source: ByteSource, limits: InflateLimits): ByteSource {
+  const n = source.size
+  const tail = source.read(Math.max(0, n - 4), Math.min(4, n))
+  const claimed = Buffer.from(tail).readUIntLE(0, tail.length)
+  const packed = n <= MOST_PACKED ? source.read(0, n) : undefined
+  if (packed && claimed <= Math.min(TRUSTED_SIZE, limits.mostBytes, n * TRUSTED_RATIO)) {
     try {
       return memorySource(gunzipSync(packed, { maxOutputLength: Math.max(1, claimed) }))
     } catch {
@@ -61,11 +70,14 @@ function inflateGzip(packed: Uint8Array, limits: InflateLimits): ByteSource {
   const notes: FitsNote[] = []
   const stream = new Gunzip((chunk) => void sink.push(chunk))
   try {
-    for (let at = 0; at < n && !sink.full(); at += STEP) stream.push(packed.subarray(at, at + STEP), at + STEP >= n)
-    if (!sink.full()) notes.push(...remark(packed, sink.size()))
+    for (let at = 0; at < n && !sink.full(); at += STEP) {
+      stream.push(source.read(at, Math.min(STEP, n - at)), at + STEP >= n)
+    }
+    if (packed && !sink.full() && sink.size() <= TRUSTED_SIZE) notes.push(...remark(packed, sink.size()))
   } catch (error) {
-    if (sink.size() === 0)
+    if (sink.size() === 0) {
       throw new FormatError('inflate', 'gzip stream requires whole data, got none', {}, { cause: error })
+    }
     notes.push(cutNote(sink.size()))
   }
   return sink.source(notes)
@@ -140,6 +152,9 @@ function growingSink({ mostBytes }: InflateLimits): Sink {
     },
     full,
     size: () => size,
-    source: (notes) => memorySource(held.subarray(0, size), notes),
+    source(notes) {
+      const stopped = { code: 'inflate-cut', text: `inflating stops after ${mostBytes} bytes` }
+      return memorySource(held.subarray(0, size), size >= mostBytes ? [...notes, stopped] : notes)
+    },
   }
 }

@@ -45,6 +45,10 @@ export function tileForm(hdu: Hdu): TileForm {
     const message = `ZTILE${i + 1} requires a length of 1 or more, got ${size}`
     throw new FormatError('compression', message, { hdu: hdu.index, keyword: `ZTILE${i + 1}` })
   })
+  if (stored.columns.some((column) => column.name.toUpperCase() === 'NULL_PIXEL_MASK')) {
+    const message = 'NULL_PIXEL_MASK requires to be absent, since masks of undefined pixels are not read, got one'
+    throw new FormatError('compression', message, { hdu: hdu.index, keyword: 'ZMASKCMP' })
+  }
   const parameters = new Map<string, number>()
   for (let n = 1; header.get(`ZNAME${n}`); n++) {
     parameters.set((textValue(header, `ZNAME${n}`) ?? '').trim(), numberValue(header, `ZVAL${n}`) ?? 0)

@@ -83,7 +83,7 @@ const starts: readonly (readonly [string, Uint8Array])[] = [
 const DIGITS = '0123456789-TFPQJ '
 
 /** Trials a file and kind of damage; DARKLINE_DAMAGE asks for more. */
-const TRIALS = Number(process.env.DARKLINE_DAMAGE ?? 25)
+const TRIALS = Number(process.env.DARKLINE_DAMAGE ?? 12)
 
 describe.each(starts)('damage to %s', (_name, good) => {
   it('ends in data or in a FormatError when bytes are flipped anywhere', () => {

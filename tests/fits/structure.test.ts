@@ -161,9 +161,14 @@ function sameImage(row: Row, source: ByteSource, hdu: Hdu): boolean {
   if (hdu.kind === 'unknown' || hdu.fault) return false
   const values = readImage(source, hdu)
   const wanted = new Map(row.values.split(' ').map((part) => part.split('=') as [string, string]))
-  const finite = values.filter(Number.isFinite)
-  const sum = finite.reduce((total, value) => total + value, 0)
-  if (Number(wanted.get('n')) !== values.length || Number(wanted.get('finite')) !== finite.length) return false
+  let finite = 0
+  let sum = 0
+  for (const value of values) {
+    if (!Number.isFinite(value)) continue
+    finite++
+    sum += value
+  }
+  if (Number(wanted.get('n')) !== values.length || Number(wanted.get('finite')) !== finite) return false
   if (values.length === 0) return true
   const ends = [values[0], values[values.length >> 1], values.at(-1), sum]
   return ['first', 'mid', 'last', 'sum'].every((name, i) => near(ends[i] as number, Number(wanted.get(name))))
