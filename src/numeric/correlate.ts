@@ -38,3 +38,43 @@ export function correlate(
   }
   return result
 }
+
+/**
+ * As `correlate`, with the weighted means of data and pattern under the overlap taken out at every shift: Pearson's
+ * coefficient, for short stretches whose level is not known.
+ */
+export function correlateCentred(
+  data: Float64Array,
+  weight: Float64Array,
+  pattern: Float64Array,
+  reach: number,
+): Float64Array {
+  const n = data.length
+  const margin = (pattern.length - n) / 2
+  if (!(reach <= margin)) throw new RangeError(`correlateCentred requires a reach of at most ${margin}, got ${reach}`)
+  let weights = 0
+  let sum = 0
+  for (let i = 0; i < n; i++) {
+    weights += weight[i]
+    sum += weight[i] * data[i]
+  }
+  const result = new Float64Array(2 * reach + 1)
+  if (!(weights > 0)) return result
+  const mean = sum / weights
+  let power = 0
+  for (let i = 0; i < n; i++) power += weight[i] * (data[i] - mean) ** 2
+  for (let k = -reach; k <= reach; k++) {
+    let product = 0
+    let square = 0
+    let level = 0
+    for (let i = 0; i < n; i++) {
+      const t = pattern[i + margin - k]
+      product += weight[i] * (data[i] - mean) * t
+      square += weight[i] * t * t
+      level += weight[i] * t
+    }
+    const spread = square - (level * level) / weights
+    if (spread > 1e-12 * square && power > 0) result[k + reach] = product / Math.sqrt(spread * power)
+  }
+  return result
+}

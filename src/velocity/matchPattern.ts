@@ -1,4 +1,4 @@
-import { correlate } from '../numeric/correlate.ts'
+import { correlate, correlateCentred } from '../numeric/correlate.ts'
 import { subtractRunningMean } from '../numeric/runningMean.ts'
 import type { LinePattern } from '../tables/types.ts'
 import type { LogGrid } from './logGrid.ts'
@@ -31,13 +31,15 @@ export interface MatchOptions {
   readonly beyond?: number
   /** [km/s] that the search is centred on, default 0. */
   readonly around?: number
+  /** Takes out a single level instead of slopes, for stretches shorter than the running mean; default false. */
+  readonly isShort?: boolean
 }
 
 /** The best place of a pattern on a spectrum's grid; undefined when they share too few cells. */
 export function matchPattern(
   grid: LogGrid,
   pattern: LinePattern,
-  { fwhm, maxVelocity, beyond = 0, around = 0 }: MatchOptions,
+  { fwhm, maxVelocity, beyond = 0, around = 0, isShort = false }: MatchOptions,
 ): Match | undefined {
   const { step, start } = grid
   const weight = coveredWeight(grid, pattern)
@@ -47,11 +49,18 @@ export function matchPattern(
   const search = Math.ceil(maxVelocity / SPEED_OF_LIGHT / step)
   const reach = Math.ceil((maxVelocity + beyond) / SPEED_OF_LIGHT / step)
   const before = Math.round(around / SPEED_OF_LIGHT / step)
-  const data = subtractRunningMean(grid.depth, weight, half)
-  const count = weight.length + 2 * (reach + half)
-  const depth = patternDepth(pattern, { start: start - (reach + half + before) * step, step, count }, fwhm)
-  const shape = subtractRunningMean(depth, undefined, half)
-  const correlation = correlate(data, weight, shape.subarray(half, count - half), reach)
+  // the pattern is known beyond the spectrum's ends, so its running mean needs a margin; a level needs none
+  const margin = reach + (isShort ? 0 : half)
+  const count = weight.length + 2 * margin
+  const depth = patternDepth(pattern, { start: start - (margin + before) * step, step, count }, fwhm)
+  const correlation = isShort
+    ? correlateCentred(grid.depth, weight, depth, reach)
+    : correlate(
+        subtractRunningMean(grid.depth, weight, half),
+        weight,
+        subtractRunningMean(depth, undefined, half).subarray(half, count - half),
+        reach,
+      )
   return { pattern, peak: findPeak(correlation, search), before, cells }
 }
 

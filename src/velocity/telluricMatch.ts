@@ -16,10 +16,10 @@ export interface TelluricMatch {
 }
 
 /** Widths [Å] the band is tried with, each by this ratio more than the last. */
-const WIDTHS = { first: 1, ratio: 1.3, count: 13 } as const
+const WIDTHS = { first: 1, ratio: 1.15, count: 22 } as const
 
-/** A band is believed when its shape fits this well (stellar bands do not) and is this deep [fraction]. */
-const BELIEVED = { height: 0.85, ratio: 3, depth: 0.04 } as const
+/** A band is believed when its shape fits this well (stellar bands do not), is this deep [fraction], and placed this well [km/s]. */
+const BELIEVED = { height: 0.88, ratio: 3, depth: 0.04, error: 80 } as const
 
 /** [km/s] range searched, and how much farther the correlation goes on. */
 const SEARCH = 300
@@ -52,7 +52,9 @@ export function matchTelluric(spectrum: Spectrum, continuum: Continuum, band: Li
   for (let i = 0; i < WIDTHS.count; i++) {
     const fwhm = WIDTHS.first * WIDTHS.ratio ** i
     const match =
-      fwhm < 1.5 * sampling ? undefined : matchPattern(grid, band, { fwhm, maxVelocity: SEARCH, beyond: BEYOND })
+      fwhm < 1.5 * sampling
+        ? undefined
+        : matchPattern(grid, band, { fwhm, maxVelocity: SEARCH, beyond: BEYOND, isShort: true })
     if (match === undefined) continue
     widths.push(fwhm)
     heights.push(match.peak.height)
@@ -70,11 +72,14 @@ export function matchTelluric(spectrum: Spectrum, continuum: Continuum, band: Li
   const sigma = (width * step * SPEED_OF_LIGHT) / FWHM_PER_SIGMA
   const independent = (last - first) / trueWidth
   const ofPeak = sigma * Math.sqrt((1 - height * height) / (height * height * independent))
+  const error = Math.hypot(ofPeak, SHAPE_ERROR)
+  if (!(error < BELIEVED.error)) return undefined
   return {
     name: band.name,
     offset,
-    error: Math.hypot(ofPeak, SHAPE_ERROR),
-    fwhm: trueWidth,
+    error,
+    // each sample is shared out over its own width, a box of variance sampling² / 12
+    fwhm: Math.sqrt(Math.max(0, trueWidth ** 2 - (FWHM_PER_SIGMA * sampling) ** 2 / 12)),
   }
 }
 
