@@ -1,3 +1,4 @@
+import type { FormatError } from '../errors.ts'
 import type { Note } from '../findings/types.ts'
 import type { Medium } from './types.ts'
 
@@ -30,6 +31,20 @@ export type AxisAnswer = { readonly axis: Axis } | { readonly refusal: Refusal }
 /** Wraps a refusal. */
 export function refuse(code: string, message: string, weight: number, keyword?: string): { readonly refusal: Refusal } {
   return { refusal: { code, message, weight, ...(keyword === undefined ? {} : { keyword }) } }
+}
+
+/** The refusal that a fault of the file means. */
+export function refusalOf(error: FormatError, hdu: number): Refusal {
+  const { keyword, byte, row } = error.where
+  return {
+    code: error.code,
+    message: error.message,
+    weight: 10,
+    hdu,
+    ...(keyword === undefined ? {} : { keyword }),
+    ...(byte === undefined ? {} : { byte }),
+    ...(row === undefined ? {} : { row }),
+  }
 }
 
 /** Wavelengths [Å] within which a spectrum is taken for one: 1 Å (X rays) to 1 cm, where radio begins. */

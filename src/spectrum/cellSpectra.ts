@@ -1,4 +1,6 @@
+import { FormatError } from '../errors.ts'
 import type { Column, Hdu } from '../fits/types.ts'
+import { refusalOf } from './axis.ts'
 import type { Axis, AxisAnswer, Refusal } from './axis.ts'
 import { listedAxis } from './columnAxis.ts'
 import { cellNumbers, cellText } from './columnCells.ts'
@@ -23,30 +25,34 @@ export function cellSpectra(
 ): HduAnswer {
   const spectra: FoundSpectrum[] = []
   const refusals: Refusal[] = []
+  const notes: Note[] = []
   const widest = Math.max(...fluxes.map(({ column }) => column.repeat))
   const most = room(container, widest)
   let row = 0
   for (; row < hdu.rows && spectra.length < most; row++) {
     for (const flux of fluxes) {
-      const answer = cellRow(container, hdu, {
+      const answer = guarded(container, hdu, {
         roled,
         flux: flux.column,
         isNormalised: flux.role === 'normalised',
         row,
       })
-      if ('refusal' in answer) refusals.push({ ...answer.refusal, hdu: hdu.index, row })
-      else spectra.push(...answer.spectra)
+      if ('refusal' in answer) {
+        refusals.push({ ...answer.refusal, hdu: hdu.index, row })
+        if (answer.refusal.weight >= 10)
+          notes.push({ code: answer.refusal.code, text: `row ${row}: ${answer.refusal.message}` })
+      } else spectra.push(...answer.spectra)
     }
     // A column that cannot be wavelengths in one row will not be in ten thousand.
     if (spectra.length === 0 && refusals.length > 8) break
   }
-  const isMany = spectra.length > 1
+  const isMany = spectra.length > 1 || hdu.rows > 1
   return {
     spectra: spectra.map((found, i) =>
-      isMany ? { ...found, row: hdu.rows === spectra.length ? (found.row ?? i) : i } : withoutRow(found),
+      isMany ? { ...found, row: fluxes.length === 1 ? (found.row ?? i) : i } : withoutRow(found),
     ),
     refusals,
-    notes: limitNotes(hdu, row, spectra.length >= most ? hdu.rows : row),
+    notes: [...notes, ...limitNotes(hdu, row, spectra.length >= most ? hdu.rows : row)],
   }
 }
 
@@ -54,18 +60,26 @@ function withoutRow({ row: _row, ...found }: FoundSpectrum): FoundSpectrum {
   return found
 }
 
+/** A row with a fault does not keep the others from being read. */
+function guarded(container: Container, hdu: Hdu, given: RowInput): CellAnswer {
+  try {
+    return cellRow(container, hdu, given)
+  } catch (error) {
+    if (!(error instanceof FormatError)) throw error
+    return { refusal: refusalOf(error, hdu.index) }
+  }
+}
+
+interface RowInput {
+  readonly roled: readonly RoledColumn[]
+  readonly flux: Column
+  readonly isNormalised: boolean
+  readonly row: number
+}
+
 type CellAnswer = { readonly spectra: readonly FoundSpectrum[] } | { readonly refusal: Refusal }
 
-function cellRow(
-  container: Container,
-  hdu: Hdu,
-  {
-    roled,
-    flux,
-    isNormalised,
-    row,
-  }: { roled: readonly RoledColumn[]; flux: Column; isNormalised: boolean; row: number },
-): CellAnswer {
+function cellRow(container: Container, hdu: Hdu, { roled, flux, isNormalised, row }: RowInput): CellAnswer {
   const { source, file } = container
   const headers = headersOf(file, hdu)
   const read = (column: Column): Float64Array => cellNumbers(source, hdu, column, row)

@@ -2,6 +2,7 @@ import { FormatError } from '../errors.ts'
 import type { Place } from '../errors.ts'
 import type { ByteSource, FitsFile, Hdu } from '../fits/types.ts'
 import { assemble } from './assemble.ts'
+import { refusalOf } from './axis.ts'
 import type { Refusal } from './axis.ts'
 import type { Container, HduAnswer } from './container.ts'
 import { headersOf } from './container.ts'
@@ -83,17 +84,22 @@ export function readSpectra(file: FitsFile, source: ByteSource, options: ReadOpt
     const answer = withoutShort(hduSpectra({ ...container, ...room }, hdu))
     if (answer.isFrame) frame2d ??= hdu
     refusals.push(...answer.refusals)
-    notes.push(...answer.notes)
-    if (answer.spectra.length === 0) continue
+    if (answer.spectra.length === 0) {
+      notes.push(...answer.notes)
+      continue
+    }
     const span = spanOf(answer.spectra)
     const headers = headersOf(file, hdu)
     const read = readHeaderFacts(headers, keywords)
     const frame = velocityFrame(headers, keywords)
-    for (const found of answer.spectra) spectra.push(finished(found, { hdu, file, read, frame, span }))
+    for (const found of answer.spectra)
+      spectra.push(finished(found, { hdu, file, read, frame, span, notes: answer.notes }))
     samples += answer.spectra.reduce((sum, { flux }) => sum + flux.length, 0)
   }
   const header = factHeaders(file, spectra[0]?.hdu ?? frame2d?.index ?? 0)
   const whole = readHeaderFacts(header, keywords)
+  // What was noticed in the other HDUs is kept with the first spectrum, so that nothing is lost on the way.
+  if (spectra.length > 0 && notes.length > 0) spectra[0] = { ...spectra[0], notes: [...spectra[0].notes, ...notes] }
   const result = { spectra, facts: whole.facts, notes: [...file.notes, ...notes, ...whole.notes] }
   if (spectra.length > 0) return result
   const worst = refusals.reduce<Refusal | undefined>(
@@ -142,35 +148,29 @@ function factHeaders(file: FitsFile, hdu: number): ReturnType<typeof headersOf> 
 
 function hduSpectra(container: Container, hdu: Hdu): HduAnswer & { readonly isFrame?: boolean } {
   try {
+    if (hdu.fault) throw new FormatError(hdu.fault.code, hdu.fault.message, faultPlace(hdu.fault))
     if (hdu.kind === 'image' || hdu.kind === 'compressed image') {
-      if (hdu.dimensions.length === 0 && !hdu.fault) return { spectra: [], refusals: [], notes: [] }
+      if (hdu.dimensions.length === 0) return { spectra: [], refusals: [], notes: [] }
       const role = imageRole(hdu.name)
       // Planes that belong to another HDU are read with it; a name that says nothing may still be a spectrum.
       if (role !== undefined && role !== 'flux' && role !== 'normalised')
         return { spectra: [], refusals: [], notes: [] }
       return imageSpectra(container, hdu)
     }
-    return hdu.columns.length === 0 && !hdu.fault
-      ? { spectra: [], refusals: [], notes: [] }
-      : tableSpectra(container, hdu)
+    return hdu.columns.length === 0 ? { spectra: [], refusals: [], notes: [] } : tableSpectra(container, hdu)
   } catch (error) {
     if (!(error instanceof FormatError)) throw error
-    const { keyword, byte, row } = error.where
-    const refusal: Refusal = {
-      code: error.code,
-      message: error.message,
-      weight: 10,
-      hdu: hdu.index,
-      ...(keyword === undefined ? {} : { keyword }),
-      ...(byte === undefined ? {} : { byte }),
-      ...(row === undefined ? {} : { row }),
-    }
+    const refusal = refusalOf(error, hdu.index)
     return {
       spectra: [],
       refusals: [refusal],
       notes: [{ code: error.code, text: `HDU ${hdu.index}: ${error.message}` }],
     }
   }
+}
+
+function faultPlace({ keyword }: { readonly keyword?: string }): Place {
+  return keyword === undefined ? {} : { keyword }
 }
 
 function spanOf(spectra: readonly FoundSpectrum[]): readonly [number, number] {
@@ -191,9 +191,10 @@ interface HduContext {
   readonly read: ReturnType<typeof readHeaderFacts>
   readonly frame: FrameAnswer
   readonly span: readonly [number, number]
+  readonly notes: readonly Note[]
 }
 
-function finished(found: FoundSpectrum, { hdu, file, read, frame, span }: HduContext): Spectrum {
+function finished(found: FoundSpectrum, { hdu, file, read, frame, span, notes }: HduContext): Spectrum {
   const facts: HeaderFacts = {
     ...read.facts,
     ...found.own,
@@ -202,7 +203,7 @@ function finished(found: FoundSpectrum, { hdu, file, read, frame, span }: HduCon
   const hduNotes = [...file.notes, ...hdu.notes, ...(hdu.index === 0 ? [] : file.hdus[0].notes)]
   return assemble(found, {
     facts,
-    factNotes: [...hduNotes, ...frame.notes, ...read.notes],
+    factNotes: [...notes, ...hduNotes, ...frame.notes, ...read.notes],
     frame: frame.frame,
     role: found.role ?? spectrumRole(facts),
     span,

@@ -61,18 +61,21 @@ export function spectralUnit(text: string): SpectralUnit | undefined {
   return row && { quantity: row[1], scale: row[2] }
 }
 
-/** Range of values (low, high) for which a wavelength unit is taken when a file names none [that unit]. */
-const PLAUSIBLE: readonly (readonly [string, number, number])[] = [
-  // 900 Å is the Lyman limit less a little; what lies below as "Å" no grating spectrograph reaches.
-  ['Angstrom', 900, 300_000],
-  ['nm', 90, 6_000],
-  ['um', 0.09, 30],
-  ['m', 0.9e-7, 3e-5],
+/**
+ * Ranges for which a wavelength unit is taken when a file names none: least and most value, and the least that the
+ * highest value must reach [that unit]. As Å a range must reach 3000, since the air is opaque below: what ends sooner
+ * is in nm.
+ */
+const PLAUSIBLE: readonly (readonly [string, number, number, number])[] = [
+  ['Angstrom', 900, 300_000, 3000],
+  ['nm', 90, 6_000, 0],
+  ['um', 0.09, 30, 0],
+  ['m', 0.9e-7, 3e-5, 0],
 ]
 
 /** The wavelength unit that values from `low` to `high` can stand for, the likeliest first; undefined when none fits. */
 export function guessedWavelengthUnit(low: number, high: number): string | undefined {
-  return PLAUSIBLE.find(([, least, most]) => low >= least && high <= most)?.[0]
+  return PLAUSIBLE.find(([, least, most, reach]) => low >= least && high <= most && high >= reach)?.[0]
 }
 
 /** Speed of light [km/s], exact (SI). */
