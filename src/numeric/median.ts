@@ -1,3 +1,5 @@
+import { selectInPlace } from './select.ts'
+
 /**
  * Median of the finite values, the mean of the middle two for an even count; NaN when there is none.
  * The input is not changed.
@@ -16,7 +18,15 @@ export function quantile(values: ArrayLike<number>, fraction: number): number {
   const kept = new Float64Array(values.length)
   let n = 0
   for (let i = 0; i < values.length; i++) if (Number.isFinite(values[i])) kept[n++] = values[i]
-  return quantileSorted(kept.subarray(0, n).sort(), fraction)
+  if (n === 0) return NaN
+  const position = (n - 1) * fraction
+  const k = Math.floor(position)
+  const lower = selectInPlace(kept, n, k)
+  if (position === k) return lower
+  // what stands behind the k-th after the selection is not smaller
+  let upper = Infinity
+  for (let i = k + 1; i < n; i++) if (kept[i] < upper) upper = kept[i]
+  return lower + (upper - lower) * (position - k)
 }
 
 /** As `quantile`, for values that are finite and sorted already. */
