@@ -45,6 +45,11 @@ export function scanPixels(source: ByteSource, hdu: Hdu): PixelScan {
   return isPlain16 ? scanShorts(source, hdu, width, height) : scanFloats(source, hdu, width, height)
 }
 
+/** Rows between those that make up the mean profile along a row: a quarter of a frame is plenty for a mean. */
+const COLUMN_ROW_STEP = 4
+/** Frames with fewer rows give all of them to the profile. */
+const FEW_ROWS = 256
+
 /** 16-bit integers: every value has its own bin, so the histogram holds all. */
 function scanShorts(source: ByteSource, hdu: Hdu, width: number, height: number): PixelScan {
   const { scale } = hdu
@@ -55,37 +60,61 @@ function scanShorts(source: ByteSource, hdu: Hdu, width: number, height: number)
   const rows = new Float64Array(height)
   const rowBytes = width * 2
   const atOnce = Math.max(1, Math.floor(262_144 / rowBytes))
+  const stride = height < FEW_ROWS ? 1 : COLUMN_ROW_STEP
+  let columnRows = 0
   for (let first = 0; first < height; first += atOnce) {
     const taken = Math.min(atOnce, height - first)
     const bytes = readData(source, hdu, hdu.dataByte + first * rowBytes, taken * rowBytes)
     for (let row = 0; row < taken; row++) {
-      rows[first + row] = addRow(bytes, row * rowBytes, counts, columns) / width
-      if ((first + row) % NOISE_ROW_STEP === 0) addSteps(bytes, row * rowBytes, width, steps)
+      const start = row * rowBytes
+      const y = first + row
+      if (y % stride === 0) {
+        rows[y] = addRow(bytes, start, counts, columns) / width
+        columnRows++
+      } else rows[y] = countRow(bytes, start, start + rowBytes, counts) / width
+      if (y % NOISE_ROW_STEP === 0) addSteps(bytes, start, width, steps)
     }
   }
-  // bin b holds the stored value b − 32768
+  return shortScan(counts, steps, { scale, zero, columns, columnRows, rows })
+}
+
+interface ShortSums {
+  readonly scale: number
+  readonly zero: number
+  readonly columns: Float64Array
+  readonly columnRows: number
+  readonly rows: Float64Array
+}
+
+/** Figures from the histograms of 16-bit data; bin b holds the stored value b − 32768. */
+function shortScan(
+  counts: Uint32Array,
+  steps: Uint32Array,
+  { scale, zero, columns, columnRows, rows }: ShortSums,
+): PixelScan {
   const physical = (bin: number): number => zero + scale * (bin - 32768)
+  const [width, height] = [columns.length, rows.length]
   const total = width * height
-  const order = scale >= 0 ? (fraction: number) => fraction : (fraction: number) => 1 - fraction
+  const isRising = scale >= 0
   let top = 65535
   while (top > 0 && counts[top] === 0) top--
   let bottom = 0
   while (bottom < 65535 && counts[bottom] === 0) bottom++
-  const stepTotal = steps.reduce((sum, n) => sum + n, 0)
+  const stepTotal = (width - 1) * Math.ceil(height / NOISE_ROW_STEP)
   return {
     width,
     height,
     median: physical(binQuantile(counts, total, 0.5)),
-    p99: physical(binQuantile(counts, total, order(0.99))),
-    max: physical(scale >= 0 ? top : bottom),
+    p99: physical(binQuantile(counts, total, isRising ? 0.99 : 0.01)),
+    max: physical(isRising ? top : bottom),
     neighbourDifference: stepTotal ? Math.abs(scale) * binQuantile(steps, stepTotal, 0.5) : NaN,
     countAbove: (level) => {
       let above = 0
-      for (let bin = 0; bin < 65536; bin++) if (counts[bin] && physical(bin) >= level) above += counts[bin]
+      for (let bin = bottom; bin <= top; bin++) if (counts[bin] && physical(bin) >= level) above += counts[bin]
       return above
     },
     nonfinite: 0,
-    columnMeans: columns.map((sum) => physical(sum / height)),
+    columnMeans: columns.map((sum) => physical(sum / columnRows)),
     rowMeans: rows.map(physical),
     ...(scale === 1 ? { rangeEnd: physical(65535) } : {}),
   }
@@ -103,11 +132,22 @@ function addRow(bytes: Uint8Array, start: number, counts: Uint32Array, columns: 
   return sum
 }
 
+/** As `addRow`, without the columns. */
+function countRow(bytes: Uint8Array, start: number, end: number, counts: Uint32Array): number {
+  let sum = 0
+  for (let at = start; at < end; at += 2) {
+    const bin = ((bytes[at] << 8) | bytes[at + 1]) ^ 0x8000
+    counts[bin]++
+    sum += bin
+  }
+  return sum
+}
+
 function addSteps(bytes: Uint8Array, start: number, width: number, steps: Uint32Array): void {
   let before = ((bytes[start] << 8) | bytes[start + 1]) ^ 0x8000
   for (let x = 1, at = start + 2; x < width; x++, at += 2) {
     const bin = ((bytes[at] << 8) | bytes[at + 1]) ^ 0x8000
-    steps[Math.abs(bin - before)]++
+    steps[bin > before ? bin - before : before - bin]++
     before = bin
   }
 }
