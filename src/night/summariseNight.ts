@@ -154,8 +154,8 @@ function withFindings(night: SpectrumNight, { spectrum }: NightSpectrum, added: 
 function countsOf(outcomes: readonly Outcome[], nights: readonly SpectrumNight[]): NightSummary['counts'] {
   const counts = { usable: 0, doubtful: 0, unusable: 0, unreadable: 0 }
   for (const { quality } of nights) counts[quality]++
-  for (const { error, spectra, frame } of outcomes) {
-    if (error && !frame && !spectra.length) counts.unreadable++
+  for (const { error, spectra } of outcomes) {
+    if (error && spectra.length === 0) counts.unreadable++
   }
   return counts
 }
