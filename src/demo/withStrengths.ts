@@ -86,8 +86,9 @@ function deepen(light: Float64Array, [from, to]: readonly [number, number], shar
   const last = Math.floor((to - FINE_FIRST) / FINE_STEP)
   for (let i = first; i <= last; i++) {
     const along = (FINE_FIRST + FINE_STEP * i - from) / (to - from)
-    // a raised cosine of mean 1: no step at the edges of the band
-    light[i] *= 1 - share * (1 - Math.cos(2 * Math.PI * along))
+    // level in the middle half, falling to nothing at the edges; 4/3 makes its mean 1
+    const edge = Math.min(1, Math.min(along, 1 - along) / 0.25)
+    light[i] *= 1 - ((share * 4) / 3) * 0.5 * (1 - Math.cos(Math.PI * edge))
     if (light[i] < 0.02) light[i] = 0.02
   }
 }

@@ -194,7 +194,7 @@ export const DEMO_DATE = '2026-05-16'
 export const DEMO_OVERHEAD = { readout: 14, pointing: 150, grating: 45 } as const
 
 /** From this time (UTC, hours from the start of DEMO_DATE) the red scale of the troubled night is off by so many Å. */
-export const DEMO_JUMP = { hour: 31, setup: 'red', shift: 5 } as const
+export const DEMO_JUMP = { hour: 31.7, setup: 'red', shift: 5 } as const
 
 /** Figures of the planted troubles. */
 export const DEMO_OFFSETS = {
