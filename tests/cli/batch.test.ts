@@ -33,7 +33,8 @@ describe('inOrder', () => {
       for await (const r of inOrder([1, 2, 3], 3, async (i) => {
         if (i === 2) throw new Error('two')
         return i
-      })) seen.push(r)
+      }))
+        seen.push(r)
     }).rejects.toThrow('two')
     expect(seen).toEqual([1])
   })

@@ -7,13 +7,25 @@ import { findFiles } from '../../cli/files.ts'
 const root = mkdtempSync(join(tmpdir(), 'darkline-files-'))
 afterAll(() => rmSync(root, { recursive: true, force: true }))
 for (const folder of ['a', 'b', 'b/deep', 'odd']) mkdirSync(join(root, folder))
-for (const name of ['a.fits', 'a/2.fit', 'a/10.FITS.GZ', 'a/notes.txt', 'b/deep/x.fts', 'b/old.fits.Z', 'b.fits', 'odd/=cmd.fits']) writeFileSync(join(root, name), 'x')
+for (const name of [
+  'a.fits',
+  'a/2.fit',
+  'a/10.FITS.GZ',
+  'a/notes.txt',
+  'b/deep/x.fts',
+  'b/old.fits.Z',
+  'b.fits',
+  'odd/=cmd.fits',
+])
+  writeFileSync(join(root, name), 'x')
 writeFileSync(join(root, 'a/frame0001'), 'SIMPLE  =                    T')
 symlinkSync(root, join(root, 'b/circle'))
 symlinkSync(join(root, 'nowhere'), join(root, 'b/dangling.fits'))
 
 const names = (paths: string[]): string[] =>
-  [...findFiles(paths)].map((answer) => ('found' in answer ? answer.found.file : `${answer.problem.code}: ${answer.problem.file}`).replaceAll(root, 'ROOT'))
+  [...findFiles(paths)].map((answer) =>
+    ('found' in answer ? answer.found.file : `${answer.problem.code}: ${answer.problem.file}`).replaceAll(root, 'ROOT'),
+  )
 
 describe('findFiles', () => {
   it('goes through a folder in byte order of the path and takes what looks like FITS by name or first bytes', () => {
