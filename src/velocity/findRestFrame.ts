@@ -27,6 +27,9 @@ const TRUST = { ratio: 3, height: 0.2, overNoise: 5.5, second: 0.9, fast: 700, f
 /** [km/s] how well the patterns themselves are at rest, from known velocities of stars they were not made from. */
 const PATTERN_ZERO = 5
 
+/** Fewest samples where the patterns have lines. */
+const FEWEST_SAMPLES = 16
+
 export interface RestFrameOptions {
   readonly patterns: readonly LinePattern[]
   /** Name of the pattern to use; the others are tried only when it is not among the patterns. */
@@ -48,19 +51,26 @@ export function findRestFrame(spectrum: Spectrum, continuum: Continuum, options:
   const { patterns, preferred, maxVelocity = 1000 } = options
   if (patterns.length === 0) throw new RangeError('findRestFrame requires a line pattern, got none')
   const { wavelength } = spectrum
-  const n = wavelength.length
-  if (n < 16) return untrusted(`only ${n} samples`)
-  const middle = wavelength[n >> 1]
-  const sampling = (wavelength[n - 1] - wavelength[0]) / (n - 1) / middle
-  const fwhm = options.fwhm ?? 2.5 * sampling * middle
   const chosen = patterns.filter((pattern) => pattern.name === preferred)
   const candidates = chosen.length > 0 ? chosen : patterns
+  const range: [number, number] = wavelength.length > 0 ? rangeOf(wavelength, candidates) : [0, 0]
+  const samples = countWithin(wavelength, range)
+  if (samples < FEWEST_SAMPLES) return untrusted(`only ${samples} samples where lines are known`)
+  const middle = (range[0] + range[1]) / 2
+  const sampling = (range[1] - range[0]) / samples / middle
+  const fwhm = options.fwhm ?? 2.5 * sampling * middle
 
-  const grid = toLogGrid(spectrum, continuum, rangeOf(wavelength, candidates), Math.max(STEP, sampling))
+  const grid = toLogGrid(spectrum, continuum, range, Math.max(STEP, sampling))
   const pattern = candidates.length === 1 ? candidates[0] : bestPattern(grid, candidates, { fwhm, maxVelocity })
   const match = pattern && matchPattern(grid, pattern, { fwhm, maxVelocity, beyond: BEYOND })
   if (match === undefined) return untrusted('the line patterns cover too little of the spectrum')
   return judge(match, centred(spectrum, continuum, match, { grid, fwhm, sampling }), grid.step)
+}
+
+function countWithin(wavelength: Float64Array, [first, last]: readonly [number, number]): number {
+  let count = 0
+  for (let i = 0; i < wavelength.length; i++) if (wavelength[i] >= first && wavelength[i] <= last) count++
+  return count
 }
 
 /** The pattern with the highest peak, which is the likeliest for noise of one strength; on cells twice as wide. */

@@ -16,6 +16,9 @@ export interface ResolutionOptions {
 /** Å: where a resolving power of the header is turned into a width, kept within the spectrum. */
 const MIDDLE = 5500
 
+/** Å. */
+const VISUAL = [3800, 6800] as const
+
 /** The header is not believed where the star's own lines are this many times narrower than it says. */
 const NARROWER = 0.7
 
@@ -31,11 +34,7 @@ export function measureResolution(
   { telluric, skyLines }: ResolutionOptions,
 ): Resolution {
   const { wavelength, flux, role } = spectrum
-  const sampling: Resolution = {
-    fwhm: 2 * median(Float64Array.from({ length: wavelength.length - 1 }, (_, i) => wavelength[i + 1] - wavelength[i])),
-    how: 'sampling (lower limit)',
-    isUpperLimit: false,
-  }
+  const sampling: Resolution = { fwhm: 2 * visualStep(wavelength), how: 'sampling (lower limit)', isUpperLimit: false }
   if (role === 'lamp') return arcResolution(wavelength, flux) ?? ofHeader(spectrum) ?? sampling
   const sky = ofSky(spectrum, skyLines)
   if (sky) return sky
@@ -45,6 +44,18 @@ export function measureResolution(
   const width = role === 'sky' ? undefined : stellarWidth(spectrum, continuum)
   if (header && !(width && width.fwhm < NARROWER * header.fwhm)) return header
   return width ? { ...width, how: 'stellar lines (upper limit)', isUpperLimit: true } : sampling
+}
+
+/** Distance of samples [Å] in the range of light the features lie in, or of the whole spectrum where there is none. */
+function visualStep(wavelength: Float64Array): number {
+  const steps: number[] = []
+  const all: number[] = []
+  for (let i = 1; i < wavelength.length; i++) {
+    const step = wavelength[i] - wavelength[i - 1]
+    all.push(step)
+    if (wavelength[i] > VISUAL[0] && wavelength[i] < VISUAL[1]) steps.push(step)
+  }
+  return median(steps.length > 1 ? steps : all)
 }
 
 function ofHeader({ facts, wavelength }: Spectrum): Resolution | undefined {
