@@ -22,8 +22,9 @@ export interface DemoOptions {
 export const DEMO_STAMP = 'demo-stamp.txt'
 
 /** Text of the stamp: a night whose stamp differs was made otherwise and is to be made anew. */
-export function demoStamp(options: DemoOptions): string {
-  return `darkline demo night, version ${DEMO_VERSION}, ${options.clean ? 'clean' : 'with planted troubles'}, seed ${options.seed ?? 1}\n`
+export function demoStamp({ clean, seed = 1 }: DemoOptions): string {
+  const kind = clean ? 'clean' : 'with planted troubles'
+  return `darkline demo night, version ${DEMO_VERSION}, calibration ${CALIBRATION.digest}, ${kind}, seed ${seed}\n`
 }
 
 const ABOUT = `An invented night, made by "darkline demo".

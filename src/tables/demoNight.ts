@@ -3,8 +3,8 @@
  * Only the place, the date and the sky above it are possible ones.
  */
 
-/** Raised whenever the bytes of the night change, so that a night made by an older version is made anew. */
-export const DEMO_VERSION = '1'
+/** Raised whenever the night changes (its stamp holds the calibration's name besides), so that a night made by an older version is made anew. */
+export const DEMO_VERSION = '2'
 
 export const DEMO_SITE = {
   observatory: 'Cerro Velanes Observatory',

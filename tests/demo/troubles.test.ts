@@ -93,7 +93,7 @@ describe('the troubled night', () => {
   let seen: Seen
   beforeAll(() => {
     seen = seeNight(false)
-  }, 120_000)
+  }, 300_000)
 
   it.each(PLANTED)('shows: $trouble', ({ file, object, code, level }) => {
     expect(about(seen, file, object)).toContainEqual(expect.objectContaining({ code, level }))
@@ -146,7 +146,7 @@ describe('the clean night', () => {
   let seen: Seen
   beforeAll(() => {
     seen = seeNight(true)
-  }, 120_000)
+  }, 300_000)
 
   it('stays below 12 MB', () => {
     expect(seen.size).toBeLessThan(12e6)
@@ -174,10 +174,10 @@ describe('the clean night', () => {
       const { type: truth, luminosity } = starNamed(target)
       return { target, type: (type.typeNumber ?? NaN) - truth, luminosity: (type.luminosityNumber ?? NaN) - luminosity }
     })
-    // measured on version 1 of the night: see the bounds, just above the largest seen
+    // measured on version 2 of the night: 1.4 subclasses (Pellandor) and 0.55 of a class (Rastivel) at most
     for (const { target, type, luminosity } of off) {
-      expect(Math.abs(type), `${target} type`).toBeLessThan(3)
-      expect(Math.abs(luminosity), `${target} class`).toBeLessThan(2)
+      expect(Math.abs(type), `${target} type`).toBeLessThan(2)
+      expect(Math.abs(luminosity), `${target} class`).toBeLessThan(1)
     }
   })
 })
