@@ -1,5 +1,6 @@
 import { FormatError } from '../../src/errors.ts'
 import { verifyChecksums } from '../../src/fits/checksum.ts'
+import type { Column } from '../../src/fits/types.ts'
 import { openBytes, spectraOf, type OpenedFile } from '../../src/pipeline/analyseFile.ts'
 import { describeSpectrum } from '../../src/spectrum/describe.ts'
 import type { Options } from '../args.ts'
@@ -79,27 +80,28 @@ function describeFile({ file, path }: FoundFile, options: Options): Entry[] {
 }
 
 function describeHdus(file: string, { file: fits, source }: OpenedFile, wantsChecksums: boolean): Entry[] {
-  return fits.hdus.map((hdu) => ({
-    file,
-    hdu: hdu.index,
-    type: hdu.kind,
-    name: hdu.name,
-    cards: hdu.header.cards.length,
-    bitpix: hdu.bitpix,
-    dimensions: hdu.dimensions,
-    rows: hdu.kind.includes('table') ? hdu.rows : undefined,
-    columns: hdu.columns.length
-      ? hdu.columns.map((c) => ({
-          name: c.name,
-          letter: c.letter,
-          repeat: c.repeat,
-          unit: c.unit,
-          shape: c.shape.length ? c.shape : undefined,
-        }))
-      : undefined,
-    checksums: wantsChecksums ? verifyChecksums(source, hdu) : undefined,
-    notes: [...hdu.notes, ...(hdu.index === 0 ? fits.notes : [])],
-  }))
+  return fits.hdus.map((hdu) => {
+    // A compressed table is shown as it lies in the file; a compressed image as the image it holds.
+    const shown = hdu.kind === 'compressed table' && hdu.stored ? { ...hdu, ...hdu.stored } : hdu
+    return {
+      file,
+      hdu: hdu.index,
+      type: hdu.kind,
+      name: hdu.name,
+      cards: shown.header.cards.length,
+      bitpix: hdu.bitpix,
+      dimensions: shown.dimensions,
+      rows: hdu.kind.includes('table') ? shown.rows : undefined,
+      columns: shown.columns.length ? shown.columns.map(columnEntry) : undefined,
+      checksums: wantsChecksums ? verifyChecksums(source, hdu) : undefined,
+      fault: hdu.fault,
+      notes: [...hdu.notes, ...(hdu.index === 0 ? fits.notes : [])],
+    }
+  })
+}
+
+function columnEntry({ name, form, unit, shape }: Column): Entry {
+  return { name, form, unit: unit || undefined, shape: shape.length ? shape : undefined }
 }
 
 /** An entry as a few indented lines for a person. */
@@ -152,7 +154,7 @@ function valueInWords(value: unknown): string {
   if (typeof value === 'object' && value !== null) {
     return Object.entries(value)
       .filter(([, v]) => v !== undefined && v !== '')
-      .map(([k, v]) => `${k} ${String(v)}`)
+      .map(([k, v]) => `${k} ${typeof v === 'object' && v !== null && 'state' in v ? String(v.state) : String(v)}`)
       .join(', ')
   }
   return String(value)
