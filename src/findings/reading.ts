@@ -87,6 +87,7 @@ export const READING_RULES = {
   'empty-table': fault('the table has no rows'),
   'empty-cell': fault('the cell has no values'),
   'lengths-differ': fault('flux and wavelengths differ in number'),
+  'too-large': fault('the file announces more data than one spectrum can have'),
   'too-few-samples': fault('there are too few samples for a spectrum'),
   cube: fault('the image is a data cube'),
   'two-dimensional': fault('the image is a two-dimensional frame, not a spectrum'),

@@ -16,6 +16,21 @@ export type CompanionAnswer =
   | { readonly axis: Axis; readonly label: WavelengthLabel; readonly hdu: number; readonly perRow: boolean }
   | { readonly refusal: Refusal }
 
+/** The wavelengths of `length` samples from an image extension of the file that its name says to hold them, if any. */
+export function siblingAxis(
+  container: Container,
+  owner: Hdu,
+  length: number,
+  row: number,
+): CompanionAnswer | undefined {
+  const prefix = namePrefix(owner.name)
+  const images = container.file.hdus.filter((hdu) => hdu !== owner && isWavelengthImage(hdu, length))
+  const own =
+    images.find((hdu) => namePrefix(hdu.name) === prefix) ??
+    (prefix === '' ? images[0] : images.find((hdu) => namePrefix(hdu.name) === ''))
+  return own && imageAxis(container, own, length, row)
+}
+
 /**
  * The wavelengths of `length` samples from another extension of the file (an image or table column named so), or from
  * the companion file; undefined when there are none of that length.
@@ -28,12 +43,8 @@ export function companionAxis(
   length: number,
   row: number,
 ): CompanionAnswer | undefined {
-  const prefix = namePrefix(owner.name)
-  const images = container.file.hdus.filter((hdu) => hdu !== owner && isWavelengthImage(hdu, length))
-  const own =
-    images.find((hdu) => namePrefix(hdu.name) === prefix) ??
-    (prefix === '' ? images[0] : images.find((hdu) => namePrefix(hdu.name) === ''))
-  if (own) return imageAxis(container, own, length, row)
+  const sibling = siblingAxis(container, owner, length, row)
+  if (sibling) return sibling
   const inTable = tableAxis(container.file, container.source, owner, length)
   if (inTable) return inTable
   const { companion } = container

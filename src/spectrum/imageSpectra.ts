@@ -1,11 +1,12 @@
 import { readImage } from '../fits/image.ts'
+import { requireData } from '../fits/source.ts'
 import type { Hdu } from '../fits/types.ts'
 import { apertureAxis, apertureSolutions, isMultispec } from './apertures.ts'
 import type { Axis, AxisAnswer, Refusal } from './axis.ts'
 import { cardNumber, cardText } from './cards.ts'
 import type { Headers } from './cards.ts'
 import { listedAxis } from './columnAxis.ts'
-import { companionAxis } from './companion.ts'
+import { companionAxis, siblingAxis } from './companion.ts'
 import { headersOf, limitNotes, placeWords, refused, room } from './container.ts'
 import type { Container, HduAnswer } from './container.ts'
 import type { FoundSpectrum } from './found.ts'
@@ -26,6 +27,9 @@ import { uncertaintyKind } from './tablePlanes.ts'
 
 /** Most rows of an image that are taken for spectra when only its wavelength axis speaks for it. */
 const FEW_ROWS = 8
+
+/** Most samples of one spectrum: ten times those of the largest Fourier-transform spectrum met. */
+const MOST_SAMPLES = 8_000_000
 
 /** How an image lies in the file: `samples` along the spectrum, then rows, then bands, all the rest 1. */
 interface ImageShape {
@@ -51,6 +55,12 @@ export function imageSpectra(container: Container, hdu: Hdu): HduAnswer & { read
     }
     return { ...refused(refusal), isFrame: false }
   }
+  if (shape.samples > MOST_SAMPLES) {
+    const message = `image requires at most ${MOST_SAMPLES} samples a spectrum, got ${shape.samples}`
+    return { ...refused({ code: 'too-large', message, weight: 9, hdu: hdu.index }), isFrame: false }
+  }
+  // Nothing is allocated for data that are not there.
+  if (hdu.kind === 'image') requireData(container.source, hdu, hdu.dataByte, (Math.abs(hdu.bitpix) / 8) * shape.samples)
   const layout =
     shape.rows > 1 ? (rowLayout(headers, shape.rows) ?? unnamedLayout(container, hdu, headers, shape)) : undefined
   const why = shape.rows === 1 ? 'one row' : rowsEvidence(container, hdu, headers, shape, layout)
@@ -202,16 +212,18 @@ function apertureRows(container: Container, hdu: Hdu, headers: Headers, shape: I
 type FoundAxis =
   { readonly axis: Axis; readonly label?: WavelengthLabel; readonly perRow?: boolean } | { readonly refusal: Refusal }
 
+/** An extension named for it comes first, then the image's own axis, then tables and the companion file. */
 function findAxis(container: Container, hdu: Hdu, headers: Headers, shape: ImageShape, row: number): FoundAxis {
-  const companion = companionAxis(container, hdu, shape.samples, row)
-  if (companion)
-    return 'refusal' in companion
-      ? companion
-      : { axis: companion.axis, label: companion.label, perRow: companion.perRow }
-  const tabulated = tabulatedAxis(container, hdu, headers, shape.axis, shape.samples)
-  if (tabulated) return tabulated
-  const plain = headerAxis(headers, shape.axis, shape.samples)
-  return 'axis' in plain ? plain : (alternateAxis(headers, shape.axis, shape.samples) ?? plain)
+  const sibling = siblingAxis(container, hdu, shape.samples, row)
+  if (sibling) return sibling
+  const own = tabulatedAxis(container, hdu, headers, shape.axis, shape.samples) ?? ownAxis(headers, shape)
+  if ('axis' in own) return own
+  return companionAxis(container, hdu, shape.samples, row) ?? own
+}
+
+function ownAxis(headers: Headers, { axis, samples }: ImageShape): AxisAnswer {
+  const plain = headerAxis(headers, axis, samples)
+  return 'axis' in plain ? plain : (alternateAxis(headers, axis, samples) ?? plain)
 }
 
 function apertureRow(
