@@ -1,4 +1,5 @@
-import { quantile, quantileSorted } from '../numeric/median.ts'
+import { SIGMA_PER_MAD, quantile, quantileSorted } from '../numeric/median.ts'
+import { medianInPlace } from '../numeric/select.ts'
 import { stiffnessOfPeriod, thirdDifferencePenalty, whittaker, whittakerVariance } from '../numeric/whittaker.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 import { type Bins, binSpectrum } from './bins.ts'
@@ -102,7 +103,9 @@ function fitBins(bins: Bins, options: ContinuumOptions): BinFit | undefined {
       residual[k] = y[k] - curve[k]
       const s = Math.sqrt(variance[k] + scatter * scatter)
       const r = residual[k] / s
-      const keep = r > 0 ? 1 / (1 + (r / CLIP_ABOVE) ** 6) : 1 / (1 + (-r / below) ** 4)
+      const ratio = r > 0 ? r / CLIP_ABOVE : r / below
+      const square = ratio * ratio
+      const keep = 1 / (1 + square * square * (r > 0 ? square : 1))
       weight[k] = prior[k] * keep * (1e-4 / (1e-4 + variance[k] + scatter * scatter))
     }
     curve = whittaker(y, weight, penalty)
@@ -172,10 +175,11 @@ function firstGuess(
 
 /** Spread of the bins above the curve: what noise alone does, since lines only take away. */
 function scatterAbove(y: Float64Array, prior: Float64Array, curve: Float64Array): number {
-  const above: number[] = []
-  for (let k = 0; k < y.length; k++) if (prior[k] > 0.5 && y[k] > curve[k]) above.push(y[k] - curve[k])
-  if (above.length < 4) return 0.005
-  return Math.max(0.001, Math.min(0.1, 1.4826 * quantileSorted(Float64Array.from(above).sort(), 0.5)))
+  const above = new Float64Array(y.length)
+  let count = 0
+  for (let k = 0; k < y.length; k++) if (prior[k] > 0.5 && y[k] > curve[k]) above[count++] = y[k] - curve[k]
+  if (count < 4) return 0.005
+  return Math.max(0.001, Math.min(0.1, SIGMA_PER_MAD * medianInPlace(above, count)))
 }
 
 /** The first curve raised by what weak lines take from its highest stretches too. */
@@ -196,14 +200,17 @@ function raise(
   const { place, rise, error } = weakLines(wavelength, ratio, relative)
   const level = new Float64Array(n)
   const total = new Float64Array(n)
+  const middle = place.map((value) => Math.exp(value))
+  const last = place.length - 1
   let b = 0
   for (let i = 0; i < n; i++) {
-    const at = Math.log(wavelength[i])
-    while (b + 2 < place.length && at > place[b + 1]) b++
-    const next = Math.min(place.length - 1, b + 1)
-    const t = next === b ? 0 : Math.min(1, Math.max(0, (at - place[b]) / (place[next] - place[b])))
+    const at = wavelength[i]
+    while (b + 1 < last && at > middle[b + 1]) b++
+    const next = Math.min(last, b + 1)
+    const t = next === b ? 0 : Math.min(1, Math.max(0, (at - middle[b]) / (middle[next] - middle[b])))
     level[i] = first.level[i] * (1 + rise[b] + t * (rise[next] - rise[b]))
-    total[i] = Math.hypot(first.error[i], level[i] * (error[b] + t * (error[next] - error[b])))
+    const placing = level[i] * (error[b] + t * (error[next] - error[b]))
+    total[i] = Math.sqrt(first.error[i] * first.error[i] + placing * placing)
   }
   return { level, error: total }
 }
@@ -212,19 +219,21 @@ function raise(
 function spread(wavelength: Float64Array, bins: Bins, curve: Float64Array, error: Float64Array) {
   const n = wavelength.length
   const last = curve.length - 1
+  const middle = curve.map((_, k) => Math.exp(bins.start + (k + 0.5) * bins.step))
+  const height = curve.map((value) => Math.exp(value))
   const level = new Float64Array(n)
   const spreadError = new Float64Array(n)
+  let k = 0
   for (let i = 0; i < n; i++) {
-    const at = Math.min(Math.max((Math.log(wavelength[i]) - bins.start) / bins.step - 0.5, 0), last)
-    const k = Math.min(Math.floor(at), Math.max(0, last - 1))
-    const t = at - k
-    const p1 = curve[k]
-    const p2 = curve[Math.min(last, k + 1)]
-    const p0 = k > 0 ? curve[k - 1] : 2 * p1 - p2
-    const p3 = k + 2 <= last ? curve[k + 2] : 2 * p2 - p1
-    const value = p1 + 0.5 * t * (p2 - p0 + t * (2 * p0 - 5 * p1 + 4 * p2 - p3 + t * (3 * (p1 - p2) + p3 - p0)))
-    level[i] = Math.exp(value)
-    spreadError[i] = level[i] * (error[k] + t * (error[Math.min(last, k + 1)] - error[k]))
+    while (k + 2 <= last && wavelength[i] >= middle[k + 1]) k++
+    const next = Math.min(last, k + 1)
+    const t = next === k ? 0 : Math.min(1, Math.max(0, (wavelength[i] - middle[k]) / (middle[next] - middle[k])))
+    const p1 = height[k]
+    const p2 = height[next]
+    const p0 = k > 0 ? height[k - 1] : 2 * p1 - p2
+    const p3 = k + 2 <= last ? height[k + 2] : 2 * p2 - p1
+    level[i] = p1 + 0.5 * t * (p2 - p0 + t * (2 * p0 - 5 * p1 + 4 * p2 - p3 + t * (3 * (p1 - p2) + p3 - p0)))
+    spreadError[i] = level[i] * (error[k] + t * (error[next] - error[k]))
   }
   return { level, error: spreadError }
 }

@@ -1,4 +1,4 @@
-import { quantileSorted } from '../numeric/median.ts'
+import { selectInPlace } from '../numeric/select.ts'
 
 /**
  * Unresolved weak lines lower every stretch of a spectrum, the highest ones too. How much is told by how much they make
@@ -60,30 +60,32 @@ export function weakLines(wavelength: Float64Array, ratio: Float64Array, noise: 
   }
   const step = (data.wavelength[n - 1] - data.wavelength[0]) / Math.max(1, n - 1)
   const lags = Math.max(2, Math.min(40, Math.ceil(LONGEST / step)))
-  const covariance: Float64Array[] = []
   const mean = new Float64Array(blocks)
   const place = new Float64Array(blocks)
-  const noiseVariance = new Float64Array(blocks)
-  const total = new Float64Array(lags + 1)
+  const parts: Block[] = []
+  const sums = new Float64Array(blocks)
   for (let b = 0; b < blocks; b++) {
-    const block = blockCovariance(data, edges[b], edges[b + 1], lags)
-    mean[b] = block.mean
     place[b] = first + (span * (b + 0.5)) / blocks
-    covariance.push(block.covariance)
-    noiseVariance[b] = block.noiseVariance
-    for (let k = 0; k <= lags; k++) if (Number.isFinite(block.covariance[k])) total[k] += block.covariance[k]
+    parts.push(blockOf(data, edges[b], edges[b + 1]))
+    mean[b] = parts[b].mean
+    sums[b] = autocovariance(parts[b], 0) - parts[b].noiseVariance
   }
-  let reach = 1
-  while (reach < lags && total[reach + 1] > 0.05 * total[1]) reach++
+  let reach = 0
+  for (let strongest = 0; reach < lags; reach++) {
+    const next = parts.map((part) => autocovariance(part, reach + 1))
+    const total = next.reduce((sum, value) => sum + (value === value ? value : 0), 0)
+    if (reach === 0) strongest = total
+    else if (!(total > 0.05 * strongest)) break
+    for (let b = 0; b < blocks; b++) sums[b] += 2 * next[b]
+  }
   const integral = new Float64Array(blocks)
   const variance = new Float64Array(blocks)
   for (let b = 0; b < blocks; b++) {
-    let sum = covariance[b][0]
-    for (let k = 1; k <= reach; k++) sum += 2 * covariance[b][k]
     const steep = Math.exp(STEEPNESS * (place[b] - STEEPNESS_AT))
     const size = Math.max(1, edges[b + 1] - edges[b])
-    integral[b] = (sum * step * steep) / KEPT
-    variance[b] = (noiseVariance[b] * step * steep) ** 2 * ((2 + 4 * reach) / size)
+    const noisy = parts[b].noiseVariance * step * steep
+    integral[b] = (sums[b] * step * steep) / KEPT
+    variance[b] = noisy * noisy * ((2 + 4 * reach) / size)
   }
   const smooth = smoothIntegrals(integral, variance)
   const rise = new Float64Array(blocks)
@@ -94,10 +96,22 @@ export function weakLines(wavelength: Float64Array, ratio: Float64Array, noise: 
     taken[b] = shareTaken(Math.max(0, smooth.value[b] / steep))
     const high = shareTaken(Math.max(0, smooth.value[b] + smooth.error[b]) / steep)
     const wanted = (1 + mean[b]) / (1 - taken[b]) - 1
-    rise[b] = Number.isFinite(wanted) ? Math.min(GREATEST_RISE, Math.max(-GREATEST_RISE / 4, wanted)) : NaN
+    rise[b] = Math.min(GREATEST_RISE, Math.max(-GREATEST_RISE / 4, wanted))
     error[b] = Math.hypot(high - taken[b], UNCERTAIN * taken[b])
   }
+  fillFromNeighbours(rise)
   return { place, rise, error, taken }
+}
+
+/** Blocks without samples (gaps, hydrogen alone) take what the nearest block has; zero where there is none. */
+function fillFromNeighbours(values: Float64Array): void {
+  const known = [...values.keys()].filter((k) => values[k] === values[k])
+  for (let b = 0; b < values.length; b++) {
+    if (values[b] === values[b]) continue
+    let nearest = -1
+    for (const k of known) if (nearest < 0 || Math.abs(k - b) < Math.abs(nearest - b)) nearest = k
+    values[b] = nearest < 0 ? 0 : values[nearest]
+  }
 }
 
 /** Crowding falls about as λ⁻⁶ in the visual; taken out before neighbouring blocks are averaged. */
@@ -179,18 +193,30 @@ function coarser(wavelength: Float64Array, ratio: Float64Array, noise: Float64Ar
   return out
 }
 
-/** Mean of ratio − 1 and its autocovariance at lags 0 … `lags`, noise taken off at lag zero; strong lines left out. */
-function blockCovariance({ ratio, noise }: Samples, start: number, end: number, lags: number) {
-  const covariance = new Float64Array(lags + 1).fill(NaN)
-  const kept = new Float64Array(Math.max(0, end - start))
+interface Block {
+  /** Mean of ratio − 1 without strong lines; NaN when there are too few samples. */
+  readonly mean: number
+  /** Ratio less its mean, 0 where a sample has no part. */
+  readonly off: Float64Array
+  readonly good: Uint8Array
+  readonly used: number
+  readonly noiseVariance: number
+}
+
+/** Fewest samples of a block. */
+const FEWEST = 20
+
+function blockOf({ ratio, noise }: Samples, start: number, end: number): Block {
+  const size = Math.max(0, end - start)
+  const off = new Float64Array(size)
+  const good = new Uint8Array(size)
+  const kept = new Float64Array(size)
   let count = 0
   for (let i = start; i < end; i++) if (ratio[i] === ratio[i]) kept[count++] = ratio[i]
-  if (count < 20) return { mean: NaN, covariance, noiseVariance: NaN }
-  const sorted = kept.subarray(0, count).sort()
-  const middle = quantileSorted(sorted, 0.5)
-  const low = middle - STRONG * (middle - quantileSorted(sorted, 0.16))
-  const high = middle + STRONG * (quantileSorted(sorted, 0.84) - middle)
-  const off = new Float64Array(end - start).fill(NaN)
+  if (count < FEWEST) return { mean: NaN, off, good, used: 0, noiseVariance: NaN }
+  const middle = selectInPlace(kept, count, count >> 1)
+  const low = middle - STRONG * (middle - selectInPlace(kept, count, Math.floor(0.16 * count)))
+  const high = middle + STRONG * (selectInPlace(kept, count, Math.floor(0.84 * count)) - middle)
   let sum = 0
   let used = 0
   for (let i = start; i < end; i++)
@@ -203,22 +229,23 @@ function blockCovariance({ ratio, noise }: Samples, start: number, end: number, 
   for (let i = start; i < end; i++)
     if (ratio[i] > low && ratio[i] < high) {
       off[i - start] = ratio[i] - mean
+      good[i - start] = 1
       variance += noise[i] * noise[i]
     }
-  for (let k = 0; k <= lags; k++) {
-    let product = 0
-    let pairs = 0
-    for (let i = 0; i + k < off.length; i++) {
-      const value = off[i] * off[i + k]
-      if (value === value) {
-        product += value
-        pairs++
-      }
-    }
-    covariance[k] = product / Math.max(1, pairs)
+  return { mean: mean - 1, off, good, used, noiseVariance: variance / used }
+}
+
+/** Mean product of samples `lag` apart; NaN when there are none. */
+function autocovariance({ off, good, used }: Block, lag: number): number {
+  if (used === 0) return NaN
+  let product = 0
+  let pairs = off.length - lag
+  for (let i = 0; i + lag < off.length; i++) product += off[i] * off[i + lag]
+  if (used < off.length) {
+    pairs = 0
+    for (let i = 0; i + lag < off.length; i++) pairs += good[i] & good[i + lag]
   }
-  covariance[0] -= variance / used
-  return { mean: mean - 1, covariance, noiseVariance: variance / used }
+  return pairs > 0 ? product / pairs : NaN
 }
 
 /** D from D·(FAINTEST + GROWTH·√D) = `integral`, by Newton's method in √D. */

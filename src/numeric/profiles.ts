@@ -36,13 +36,21 @@ const wing = new Float64Array(2)
 const core = new Float64Array(2)
 const TWO_PER_ROOT_PI = 2 / Math.sqrt(Math.PI)
 
+/** w(iy) into `core`, computed anew only where y has changed: every sample of a line asks for the same. */
+function coreAt(y: number): void {
+  if (y === coreOf) return
+  faddeeva(0, y, core)
+  coreOf = y
+}
+let coreOf = NaN
+
 /** As `profile`: Re w(z) / Re w(z₀) with z = (off + iγ)/(σ√2), z₀ = iγ/(σ√2), and w′ = −2zw + 2i/√π. */
 function voigt(depth: number, off: number, sigma: number, gamma: number, out: Float64Array): void {
   const scale = 1 / (sigma * Math.SQRT2)
   const x = off * scale
   const y = gamma * scale
   faddeeva(x, y, wing)
-  faddeeva(0, y, core)
+  coreAt(y)
   const value = wing[0] / core[0]
   // w′ = re + i·im at z, and at z₀ (purely imaginary argument: w′(z₀) = i·coreIm)
   const re = -2 * (x * wing[0] - y * wing[1])
@@ -63,7 +71,7 @@ export function profileArea(shape: ProfileShape, parameters: ArrayLike<number>, 
   const width = Math.abs(parameters[at + 2])
   if (shape === 'gaussian') return depth * width * Math.sqrt(2 * Math.PI)
   if (shape === 'lorentzian') return depth * width * Math.PI
-  faddeeva(0, parameters[at + 3] / (width * Math.SQRT2), core)
+  coreAt(parameters[at + 3] / (width * Math.SQRT2))
   return (depth * width * Math.sqrt(2 * Math.PI)) / core[0]
 }
 

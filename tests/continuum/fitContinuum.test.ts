@@ -90,6 +90,13 @@ describe('fitContinuum', () => {
     expect(rms(clean.map((value, i) => dirty[i] - value))).toBeLessThan(0.004)
   })
 
+  it('sets a level everywhere, beside gaps of hundreds of Å and in a short piece around one hydrogen line', () => {
+    const gap = madeSpectrum({ kind: 'A0', gaps: [[5200, 6100]] })
+    expect(fitContinuum(gap.spectrum).level.every((value) => value > 0)).toBe(true)
+    const piece = madeSpectrum({ kind: 'A0', from: 4790, to: 4940, step: 0.5 })
+    expect(fitContinuum(piece.spectrum).level.every((value) => value > 0)).toBe(true)
+  })
+
   it('says where its level is a pseudo-continuum', () => {
     expect(fitContinuum(madeSpectrum({ kind: 'A0' }).spectrum).isPseudo).toBe(false)
     expect(fitContinuum(madeSpectrum({ kind: 'M4' }).spectrum).isPseudo).toBe(true)
