@@ -1,6 +1,16 @@
 import type { LinePattern } from './types.ts'
 
-/** Line patterns for the velocity. */
+/**
+ * Line patterns for the velocity, one for each stretch of types: [wavelength Å air, equivalent width Å, own FWHM Å].
+ *
+ * How they were made. The normalised spectra of a stretch of types (5 to 30 stars of 4.5 Å resolution; from 7400 Å on,
+ * and for M7, means of type averages of 10 Å) were shifted to one another by cross-correlation and averaged, the
+ * highest and lowest value at every wavelength left out. Lines at their laboratory wavelengths were fitted to the mean
+ * by non-negative least squares, hydrogen with cores and wings; what they leave stands in `bins`, its mean in steps of
+ * 8 Å. The zero point of O, B and A is that of the laboratory lines. From F on, where every line is a blend, it is set
+ * so that the median star of a stretch is at −33 km/s, as the A stars of the same instrument are by their lines.
+ * Known velocities of stars that had no part in this come out within 15 km/s.
+ */
 export const PATTERNS: readonly LinePattern[] = [
   {
     name: 'hot O',

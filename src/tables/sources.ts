@@ -10,7 +10,7 @@ export const SOURCES = {
   ciddor1996: { citation: 'Ciddor 1996, Applied Optics 35, 1566', doi: '10.1364/AO.35.001566' },
   jacoby1984: {
     citation: 'Jacoby, Hunter & Christian 1984, ApJS 56, 257 (CDS III/92)',
-    changed: 'means of three or more stars of a type, at rest',
+    changed: 'means of three or more stars of a type at rest; from 7400 Å on of the type averages of Pickles 1998',
   },
   memory: { citation: 'written down from memory', fromMemory: true },
   dirac: {
