@@ -33,7 +33,9 @@ function checkOrder(timed: readonly Exposure[], tolerance: number, findings: Fil
     const name = baseName(exposure.file)
     if (CATALOGUE.test(name) || !/\d/.test(name)) continue
     const pattern = name.replace(/\d+/g, '#')
-    groups.set(pattern, [...(groups.get(pattern) ?? []), exposure])
+    const group = groups.get(pattern)
+    if (group) group.push(exposure)
+    else groups.set(pattern, [exposure])
   }
   for (const group of groups.values()) {
     if (group.length < FEWEST_NUMBERED) continue
@@ -90,20 +92,29 @@ function checkOverlap(timed: readonly Exposure[], tolerance: number, findings: F
   const sorted = timed
     .filter(({ facts }) => facts.exposure !== undefined && facts.exposure > 0 && facts.instrument !== undefined)
     .sort((a, b) => startOf(a) - startOf(b))
-  for (let i = 0; i < sorted.length; i++) {
-    const end = startOf(sorted[i]) + (sorted[i].facts.exposure ?? 0) / DAY
-    for (let j = i + 1; j < sorted.length; j++) {
-      const gap = (startOf(sorted[j]) - end) * DAY
-      if (gap > -tolerance) break
-      if (sorted[j].isFrame !== sorted[i].isFrame) continue
-      if ((startOf(sorted[j]) - startOf(sorted[i])) * DAY < SAME_START) continue
-      if (setupDifferences(sorted[i].facts, sorted[j].facts, 'all').length) continue
-      const text = `Begins ${Math.abs(gap).toFixed(0)} s before the exposure of ${baseName(sorted[i].file)} with the same detector ended`
-      addFinding(
-        findings,
-        sorted[j].outcome,
-        finding(NIGHT_RULES, 'exposures-overlap', text, { value: -gap, limit: tolerance }),
-      )
+  // of each set-up the exposure that ends last so far: one that begins before that end overlaps it
+  const latest: { exposure: Exposure; end: number }[] = []
+  for (const exposure of sorted) {
+    const end = startOf(exposure) + (exposure.facts.exposure ?? 0) / DAY
+    const before = latest.find(
+      (one) =>
+        one.exposure.isFrame === exposure.isFrame &&
+        setupDifferences(one.exposure.facts, exposure.facts, 'all').length === 0,
+    )
+    if (!before) {
+      latest.push({ exposure, end })
+      continue
+    }
+    const gap = (startOf(exposure) - before.end) * DAY
+    const isSame = (startOf(exposure) - startOf(before.exposure)) * DAY < SAME_START
+    if (gap <= -tolerance && !isSame) {
+      const text = `Begins ${Math.abs(gap).toFixed(0)} s before the exposure of ${baseName(before.exposure.file)} with the same detector ended`
+      const found = finding(NIGHT_RULES, 'exposures-overlap', text, { value: -gap, limit: tolerance })
+      addFinding(findings, exposure.outcome, found)
+    }
+    if (end > before.end) {
+      before.exposure = exposure
+      before.end = end
     }
   }
 }

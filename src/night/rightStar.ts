@@ -101,7 +101,9 @@ function checkPlaces(onSky: readonly Exposure[], thresholds: Thresholds, finding
   const byName = new Map<string, typeof placed>()
   for (const one of placed) {
     if (one.name === '') continue
-    byName.set(one.name, [...(byName.get(one.name) ?? []), one])
+    const group = byName.get(one.name)
+    if (group) group.push(one)
+    else byName.set(one.name, [one])
   }
   for (const [first, ...rest] of byName.values()) {
     const far = rest
@@ -120,11 +122,17 @@ function checkPlaces(onSky: readonly Exposure[], thresholds: Thresholds, finding
       addFinding(findings, one.exposure.outcome, found)
     }
   }
-  const sorted = [...placed].sort((a, b) => a.place.dec - b.place.dec)
+  // one of each name at each place is enough
+  const unique = new Map(
+    placed.map((one) => [`${one.name} ${one.place.ra.toFixed(3)} ${one.place.dec.toFixed(3)}`, one]),
+  )
+  const sorted = [...unique.values()].sort((a, b) => a.place.dec - b.place.dec)
   const near = 5 / 3600
   for (let i = 0; i < sorted.length; i++) {
     for (let j = i + 1; j < sorted.length && sorted[j].place.dec - sorted[i].place.dec <= near; j++) {
       if (sorted[i].name === sorted[j].name || sorted[i].name === '' || sorted[j].name === '') continue
+      const across = Math.abs(sorted[i].place.ra - sorted[j].place.ra) * Math.cos((sorted[i].place.dec * Math.PI) / 180)
+      if (across > 2 * near && across < 359) continue
       if (angularSeparation(sorted[i].place, sorted[j].place) > near) continue
       const text = `Two names for one place: ${sorted[i].exposure.facts.object ?? ''} (${baseName(sorted[i].exposure.file)}) and ${sorted[j].exposure.facts.object ?? ''} (${baseName(sorted[j].exposure.file)})`
       addFinding(findings, sorted[j].exposure.outcome, finding(NIGHT_RULES, 'one-position-two-names', text))

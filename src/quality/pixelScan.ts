@@ -47,6 +47,8 @@ export function scanPixels(source: ByteSource, hdu: Hdu): PixelScan {
 
 /** Rows between those that make up the mean profile along a row: a quarter of a frame is plenty for a mean. */
 const COLUMN_ROW_STEP = 4
+/** Differences of neighbours are counted up to here; a noise beyond it is given as this. */
+const MOST_STEP = 16383
 /** Frames with fewer rows give all of them to the profile. */
 const FEW_ROWS = 256
 
@@ -55,7 +57,7 @@ function scanShorts(source: ByteSource, hdu: Hdu, width: number, height: number)
   const { scale } = hdu
   const zero = Number(hdu.zero)
   const counts = new Uint32Array(65536)
-  const steps = new Uint32Array(65536)
+  const steps = new Uint32Array(MOST_STEP + 1)
   const columns = new Float64Array(width)
   const rows = new Float64Array(height)
   const rowBytes = width * 2
@@ -147,7 +149,8 @@ function addSteps(bytes: Uint8Array, start: number, width: number, steps: Uint32
   let before = ((bytes[start] << 8) | bytes[start + 1]) ^ 0x8000
   for (let x = 1, at = start + 2; x < width; x++, at += 2) {
     const bin = ((bytes[at] << 8) | bytes[at + 1]) ^ 0x8000
-    steps[bin > before ? bin - before : before - bin]++
+    const step = bin > before ? bin - before : before - bin
+    steps[step < MOST_STEP ? step : MOST_STEP]++
     before = bin
   }
 }
