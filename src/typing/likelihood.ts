@@ -1,5 +1,5 @@
-import { choleskyFactor, forwardSolve, logDeterminant } from '../numeric/cholesky.ts'
-import type { DecodedCalibration, DecodedZone } from './decodedCalibration.ts'
+import { choleskyFactor, forwardSolve } from '../numeric/cholesky.ts'
+import type { DecodedCalibration } from './decodedCalibration.ts'
 
 /** Measured features by their place in the calibration. */
 export interface FeatureVector {
@@ -14,17 +14,25 @@ export interface FeatureVector {
 export interface LikelihoodGrid {
   /** shape (t × c): tempered log likelihood. */
   readonly logLikelihood: Float64Array
-  /** shape (t × c): squared Mahalanobis distance from the expected values; NaN where it was not needed. */
+  /** shape (t × c): squared Mahalanobis distance from the expected values. */
   readonly distance: Float64Array
+  /** Type number whose scatter was used. */
+  readonly scatterType: number
+  /** Exponent on the likelihood at that type. */
+  readonly tempering: number
 }
 
-/** Cells whose log likelihood lies this far below the best are told by interpolation between zones alone. */
-const NEGLIGIBLE = 14
+/** The scatter is taken anew at the type found until that moves by less than this many subclasses, so often at most. */
+const SETTLED = 2
+const ROUNDS = 4
+/** Step in the grid's types while the scatter is settled. */
+const COARSE = 3
 
 /**
- * Log likelihood of the measured features over type and class: Student's t about the expected values with the zone's
- * covariance and the measurement's own errors, raised to the zone's tempering exponent. Between the types of two zones it
- * is interpolated.
+ * Log likelihood of the measured features over type and class: Student's t about the expected values, raised to the
+ * tempering exponent. One covariance, that of the stars near the type found plus the measurement's own errors, serves
+ * for all cells: with a covariance of each cell's own, its determinant pulls towards types whose features scatter little
+ * (found by cross-validation: 68 % of the atlas within 1.5 subclasses so, 1.3 with one).
  */
 export function likelihoodGrid(
   calibration: DecodedCalibration,
@@ -32,68 +40,101 @@ export function likelihoodGrid(
   vector: FeatureVector,
 ): LikelihoodGrid {
   const { types, classes, zones } = calibration
-  const c = classes.length
-  const logLikelihood = new Float64Array(types.length * c)
-  const distance = new Float64Array(types.length * c).fill(NaN)
-  const solvers = zones.map((zone) => zoneSolver(calibration, zone, vector, degreesOfFreedom))
-  const coarse = zones.map((zone, z) => {
-    const i = nearest(types, zone.type)
-    return Array.from(classes, (_, j) => solvers[z](i, j).logLikelihood)
-  })
-  const top = Math.max(...coarse.flat())
-  for (let i = 0; i < types.length; i++) {
-    const { z, share } = zoneAt(zones, types[i])
-    const next = Math.min(z + 1, zones.length - 1)
-    const isNear = Math.max(...coarse[z], ...coarse[next]) > top - NEGLIGIBLE
-    for (let j = 0; j < c; j++) {
-      const at = i * c + j
-      if (!isNear) {
-        logLikelihood[at] = (1 - share) * coarse[z][j] + share * coarse[next][j]
-        continue
-      }
-      const low = solvers[z](i, j)
-      const high = share > 0 ? solvers[next](i, j) : low
-      logLikelihood[at] = (1 - share) * low.logLikelihood + share * high.logLikelihood
-      distance[at] = (1 - share) * low.distance + share * high.distance
-    }
+  let scatterType = firstGuess(calibration, vector)
+  for (let round = 0; round < ROUNDS; round++) {
+    const lower = scatterFactor(calibration, vector, scatterType)
+    const found = types[Math.floor(lowest(distances(calibration, vector, lower, COARSE)) / classes.length)]
+    if (Math.abs(found - scatterType) < SETTLED) break
+    scatterType = found
   }
-  return { logLikelihood, distance }
+  const { z, share } = zoneAt(zones, scatterType)
+  const tempering = (1 - share) * zones[z].tempering + share * zones[Math.min(z + 1, zones.length - 1)].tempering
+  const distance = distances(calibration, vector, scatterFactor(calibration, vector, scatterType), 1)
+  const half = 0.5 * (degreesOfFreedom + vector.index.length)
+  const logLikelihood = distance.map((d) => -tempering * half * Math.log1p(d / degreesOfFreedom))
+  return { logLikelihood, distance, scatterType, tempering }
 }
 
-interface CellLikelihood {
-  readonly logLikelihood: number
-  readonly distance: number
-}
-
-function zoneSolver(
+/** Cholesky factor of the features' covariance for a star near a type. */
+function scatterFactor(
   calibration: DecodedCalibration,
-  zone: DecodedZone,
-  { index, value, error }: FeatureVector,
-  degreesOfFreedom: number,
-): (type: number, luminosity: number) => CellLikelihood {
-  const { features, mean, classes } = calibration
+  { index, error }: FeatureVector,
+  scatterType: number,
+): Float64Array {
+  const { features, types, classes, zones } = calibration
   const f = features.length
   const p = index.length
-  const i0 = nearest(calibration.types, zone.type)
+  const { z, share } = zoneAt(zones, scatterType)
+  const low = zones[z].covariance
+  const high = zones[Math.min(z + 1, zones.length - 1)].covariance
+  const at = Math.min(types.length - 1, Math.max(0, Math.round(scatterType - types[0])))
   const matrix = new Float64Array(p * p)
   for (let a = 0; a < p; a++) {
-    for (let b = 0; b <= a; b++) matrix[a * p + b] = zone.covariance[index[a] * f + index[b]]
+    const row = index[a] * f
+    for (let b = 0; b <= a; b++) matrix[a * p + b] = (1 - share) * low[row + index[b]] + share * high[row + index[b]]
     let uncertain = 0
-    for (let j = 0; j < classes.length; j++) uncertain += calibration.meanVariance(i0, j, index[a]) / classes.length
+    for (let j = 0; j < classes.length; j++) uncertain += calibration.meanVariance(at, j, index[a]) / classes.length
     matrix[a * p + a] += error[a] * error[a] + uncertain
   }
-  const lower = choleskyFactor(matrix, p)
-  const constant = -0.5 * logDeterminant(lower, p)
+  return choleskyFactor(matrix, p)
+}
+
+/** Squared Mahalanobis distances of all cells, or of every `step`-th type's; Infinity for the others. shape (t × c). */
+function distances(
+  { features, types, classes, mean }: DecodedCalibration,
+  { index, value }: FeatureVector,
+  lower: Float64Array,
+  step: number,
+): Float64Array {
+  const f = features.length
+  const c = classes.length
+  const p = index.length
+  const distance = new Float64Array(types.length * c).fill(Infinity)
   const residual = new Float64Array(p)
-  return (type, luminosity) => {
-    const row = (type * classes.length + luminosity) * f
-    for (let a = 0; a < p; a++) residual[a] = value[a] - mean[row + index[a]]
-    forwardSolve(lower, p, residual, residual)
-    let distance = 0
-    for (let a = 0; a < p; a++) distance += residual[a] * residual[a]
-    const tail = 0.5 * (degreesOfFreedom + p) * Math.log1p(distance / degreesOfFreedom)
-    return { logLikelihood: zone.tempering * (constant - tail), distance }
+  for (let i = 0; i < types.length; i += step)
+    for (let j = 0; j < c; j++) {
+      const row = (i * c + j) * f
+      for (let a = 0; a < p; a++) residual[a] = value[a] - mean[row + index[a]]
+      forwardSolve(lower, p, residual, residual)
+      let sum = 0
+      for (let a = 0; a < p; a++) sum += residual[a] * residual[a]
+      distance[i * c + j] = sum
+    }
+  return distance
+}
+
+/** A residual counts for no more than this many σ in the first guess. */
+const HELD = 4
+
+/** The zone's type that fits best with features taken one by one, each zone with its own scatter. */
+function firstGuess({ features, types, classes, mean, zones }: DecodedCalibration, vector: FeatureVector): number {
+  const f = features.length
+  const { index, value, error } = vector
+  let best = Infinity
+  let guess = zones[0].type
+  for (const { type, covariance } of zones) {
+    const i = Math.min(types.length - 1, Math.max(0, Math.round(type - types[0])))
+    for (let j = 0; j < classes.length; j++) {
+      let sum = 0
+      for (let a = 0; a < index.length; a++) {
+        const k = index[a]
+        const variance = covariance[k * f + k] + error[a] * error[a]
+        const off = value[a] - mean[(i * classes.length + j) * f + k]
+        sum += Math.min(HELD * HELD, (off * off) / variance) + Math.log(variance)
+      }
+      if (sum < best) {
+        best = sum
+        guess = type
+      }
+    }
   }
+  return guess
+}
+
+function lowest(values: Float64Array): number {
+  let best = 0
+  for (let i = 1; i < values.length; i++) if (values[i] < values[best]) best = i
+  return best
 }
 
 /** The zone at or below a type, and how far the type lies towards the next, 0 to 1. */
@@ -105,10 +146,4 @@ export function zoneAt(
   while (z + 1 < zones.length && zones[z + 1].type <= type) z++
   if (z + 1 === zones.length || type <= zones[z].type) return { z, share: 0 }
   return { z, share: (type - zones[z].type) / (zones[z + 1].type - zones[z].type) }
-}
-
-function nearest(values: Float64Array, wanted: number): number {
-  let best = 0
-  for (let i = 1; i < values.length; i++) if (Math.abs(values[i] - wanted) < Math.abs(values[best] - wanted)) best = i
-  return best
 }

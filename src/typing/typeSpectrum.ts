@@ -48,7 +48,7 @@ export function typeSpectrum(input: TypingInput, calibration: Calibration): Type
     return none(
       `the features tell no type: its 95 % range spans ${(figures.high95 - figures.low95).toFixed(0)} subclasses`,
     )
-  const best = bestCell(decoded, logLikelihood, distance)
+  const best = bestCell(decoded, distance)
   const fit = fitOf(decoded, vector, best, distance[best.type * decoded.classes.length + best.luminosity])
   const width68 = figures.high68 - figures.low68
   const isOutside = fit.probability < OUTSIDE
@@ -95,9 +95,8 @@ export function featureVector(input: TypingInput, { features }: DecodedCalibrati
   return { index: Int32Array.from(index), value: Float64Array.from(value), error: Float64Array.from(error) }
 }
 
-function bestCell({ classes }: DecodedCalibration, logLikelihood: Float64Array, distance: Float64Array): BestCell {
+function bestCell({ classes }: DecodedCalibration, distance: Float64Array): BestCell {
   let best = -1
-  for (let at = 0; at < logLikelihood.length; at++)
-    if (distance[at] === distance[at] && (best < 0 || logLikelihood[at] > logLikelihood[best])) best = at
+  for (let at = 0; at < distance.length; at++) if (best < 0 || distance[at] < distance[best]) best = at
   return { type: Math.floor(best / classes.length), luminosity: best % classes.length }
 }

@@ -1,25 +1,22 @@
 import { createHash } from 'node:crypto'
-import { fitContinuum } from '../../../src/continuum/fitContinuum.ts'
 import { BANDS } from '../../../src/tables/bands.ts'
-import { PATTERNS } from '../../../src/tables/patterns.ts'
 import type { Calibration, CalibrationSpectra } from '../../../src/tables/types.ts'
-import { type TypingInput, typingInput } from '../../../src/typing/typingInput.ts'
-import { findRestFrame } from '../../../src/velocity/findRestFrame.ts'
+import type { TypingInput } from '../../../src/typing/typingInput.ts'
 import { type Cell, type FittedMeans, type MeanModel, type TrainingStar, modelMeans } from './fitMeans.ts'
 import { fitScatter } from './fitScatter.ts'
 import { meanSpectra, normalisedBins } from './meanSpectra.ts'
-import { COMMON_FWHM, type SharedStar, readStar, sharedStars } from './sharedStars.ts'
+import { COMMON_FWHM, type SharedStar, measuredInput, sharedStars } from './sharedStars.ts'
 
 export const CALIBRATION_SETS = ['atlas', 'averages', 'pickles'] as const
-/** A row of `averages` is a mean of several stars; one of `pickles` shares its stars with the other two sets. */
-const WEIGHTS: Readonly<Record<string, number>> = { atlas: 1, averages: 2, pickles: 1 }
+/** A row of `pickles` shares its stars with the other two sets. */
+const WEIGHTS: Readonly<Record<string, number>> = { atlas: 1, averages: 1, pickles: 0.5 }
 const FIRST_TYPE = 2
 const TYPES = 68
 const CLASSES = [1, 2, 3, 4, 5]
 const ZONE_STEP = 4
 /** Weights of the classes in the prior: II and IV are rare among classified stars (common practice, no source). */
 const CLASS_PRIOR = [1, 0.5, 1, 0.5, 1]
-const DEGREES_OF_FREEDOM = 8
+const DEGREES_OF_FREEDOM = 20
 
 /** A published star with its features as the program measures them. */
 export interface MeasuredStar {
@@ -34,15 +31,12 @@ export interface MeasuredStar {
 /** Reads and measures the published stars of some sets. */
 export function measureStars(sets: readonly string[] = CALIBRATION_SETS): MeasuredStar[] {
   return sharedStars(sets).map((star) => {
-    const spectrum = readStar(star.file)
-    const continuum = fitContinuum(spectrum)
-    const frame = findRestFrame(spectrum, continuum, { patterns: PATTERNS })
-    const input = typingInput(spectrum, continuum, frame, { windows: BANDS, commonFwhm: COMMON_FWHM })
+    const { input, parts } = measuredInput(star)
     return {
       star,
       input,
       values: Float64Array.from(input.measurements, ({ ew }) => ew ?? NaN),
-      bins: normalisedBins(spectrum, continuum, frame),
+      bins: normalisedBins(parts.spectrum, parts.continuum, parts.frame),
     }
   })
 }
@@ -83,11 +77,18 @@ export interface ZoneFigures {
 /** Types of the zones. */
 export const ZONE_TYPES: readonly number[] = Array.from({ length: 17 }, (_, z) => 3 + ZONE_STEP * z)
 
-/** The calibration fitted on all stars of the model but those left out. */
+/** Subclasses from a zone at which a star left out has no part in its scatter worth a new sum. */
+const FAR = 20
+
+/**
+ * The calibration fitted on all stars of the model but those left out; zones far from all of these are taken from the
+ * `whole` calibration where one is given.
+ */
 export function buildCalibration(
   model: CalibrationModel,
   left: readonly number[],
   figures: (zone: number) => ZoneFigures,
+  whole?: Calibration,
 ): Calibration {
   const fitted = model.means.without(left)
   const widths = Float64Array.from(BANDS, ({ band, unit }) => (unit === 'mag' ? 1 : band[1] - band[0]))
@@ -106,8 +107,13 @@ export function buildCalibration(
     mean: packedMeans(fitted),
     meanVariance: Array.from(fitted.variance, (value) => Number(value.toFixed(4))),
     zones: ZONE_TYPES.map((type, z) => {
-      const covariance = fitScatter(type, stars, fitted.residual, { widths })
-      return { type, covariance: packedTriangle(covariance, fitted.scale), ...figures(z), metalWeak: [] }
+      const known = whole?.zones[z]
+      const isFar = left.every((i) => Math.abs(model.training[i].type - type) > FAR)
+      const covariance =
+        known && isFar
+          ? known.covariance
+          : packedTriangle(fitScatter(type, stars, fitted.residual, { widths }), fitted.scale)
+      return { type, covariance, ...figures(z), metalWeak: [] }
     }),
     degreesOfFreedom: DEGREES_OF_FREEDOM,
     prior: { classes: CLASS_PRIOR },

@@ -23,9 +23,10 @@ export function* crossValidate(
   figures: (zone: number) => ZoneFigures,
   { inputs = ({ input }) => input }: { readonly inputs?: (measured: MeasuredStar) => TypingInput } = {},
 ): Generator<Validated> {
+  const whole = buildCalibration(model, [], figures)
   for (const measured of model.stars) {
     if (measured.star.set !== 'atlas') continue
-    const calibration = buildCalibration(model, leftOutFor(model, measured.star), figures)
+    const calibration = buildCalibration(model, leftOutFor(model, measured.star), figures, whole)
     yield { measured, calibration, posterior: typeSpectrum(inputs(measured), calibration) }
   }
 }

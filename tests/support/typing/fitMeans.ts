@@ -97,7 +97,7 @@ export function modelMeans(
   const scaled = standardise(stars, f)
   const pulled = pullIn(stars, scaled, inverse, s)
   const toGrid = grid.map((cell) => Float64Array.from(stars, (star) => kernel(cell, star, s)))
-  const self = kernel(grid[0], grid[0], s)
+  const variance = gridVariance(toGrid, inverse, kernel(grid[0], grid[0], s))
   return {
     without: (left) => {
       const reduced = downdate(inverse, n, left)
@@ -115,21 +115,27 @@ export function modelMeans(
         }
       }
       const mean = new Float64Array(grid.length * f)
-      const variance = new Float64Array(grid.length)
       toGrid.forEach((row, g) => {
         for (let i = 0; i < n; i++) for (let k = 0; k < f; k++) mean[g * f + k] += row[i] * weights[i * f + k]
         for (let k = 0; k < f; k++) mean[g * f + k] = scaled.middle[k] + scaled.scale[k] * mean[g * f + k]
-        let explained = 0
-        for (let i = 0; i < n; i++) {
-          let sum = 0
-          for (let j = 0; j < n; j++) sum += reduced[i * n + j] * row[j]
-          explained += row[i] * sum
-        }
-        variance[g] = Math.max(0, self - explained)
       })
       return { scale: scaled.scale, mean, variance, residual }
     },
   }
+}
+
+/** Variance of the process at each cell, all stars known; it changes little when a few are left out. */
+function gridVariance(toGrid: readonly Float64Array[], inverse: Float64Array, self: number): Float64Array {
+  return Float64Array.from(toGrid, (row) => {
+    const n = row.length
+    let explained = 0
+    for (let i = 0; i < n; i++) {
+      let sum = 0
+      for (let j = 0; j < n; j++) sum += inverse[i * n + j] * row[j]
+      explained += row[i] * sum
+    }
+    return Math.max(0, self - explained)
+  })
 }
 
 interface Standardised {

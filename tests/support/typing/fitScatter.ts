@@ -11,7 +11,7 @@ export interface ScatterOptions {
 }
 
 /** Chosen by cross-validation on the atlas. */
-export const SCATTER: ScatterOptions = { reach: 8, shrinkage: 0.5, floor: 0.008, clip: 3 }
+export const SCATTER: ScatterOptions = { reach: 8, shrinkage: 0.3, floor: 0.008, clip: 3 }
 
 export interface ScatterStar {
   readonly type: number

@@ -11,11 +11,13 @@ import { PATTERNS } from '../../../src/tables/patterns.ts'
 import { BANDS } from '../../../src/tables/bands.ts'
 import { type TypingInput, typingInput } from '../../../src/typing/typingInput.ts'
 import { parseType } from '../../../src/typing/typeName.ts'
+import type { Continuum } from '../../../src/continuum/types.ts'
+import type { Resolution, RestFrame } from '../../../src/velocity/types.ts'
 import { findRestFrame } from '../../../src/velocity/findRestFrame.ts'
 import { sharedPath } from '../shared.ts'
 
 /** FWHM [Å] that all spectra are brought to before they are measured for a type. */
-export const COMMON_FWHM = 10
+export const COMMON_FWHM = 13
 
 /** One row of the manifest of published stars. */
 export interface SharedStar {
@@ -82,9 +84,41 @@ export function readStar(file: string): Spectrum {
   return spectrum
 }
 
+/**
+ * Å, FWHM of a set's spectra: the atlas as published; of the other two as they were found here, by smoothing the atlas
+ * until narrow features agreed on the average (they are stated as R = 500 and 11 Å).
+ */
+const SET_FWHM: Readonly<Record<SharedStar['set'], number | undefined>> = {
+  atlas: 4.5,
+  averages: 12.5,
+  pickles: 13.5,
+  standards: undefined,
+}
+
+/** The typing input of a published star by the program's own stages, at its set's resolution. */
+export function measuredInput(star: SharedStar): { readonly input: TypingInput; readonly parts: StarParts } {
+  const spectrum = readStar(star.file)
+  const fwhm = SET_FWHM[star.set]
+  return inputOf(spectrum, fwhm === undefined ? undefined : { fwhm, how: 'header', isUpperLimit: false })
+}
+
+export interface StarParts {
+  readonly spectrum: Spectrum
+  readonly continuum: Continuum
+  readonly frame: RestFrame
+}
+
 /** The typing input of a spectrum by the program's own stages. */
-export function inputOf(spectrum: Spectrum): TypingInput {
+export function inputOf(
+  spectrum: Spectrum,
+  resolution?: Resolution,
+): { readonly input: TypingInput; readonly parts: StarParts } {
   const continuum = fitContinuum(spectrum)
   const frame = findRestFrame(spectrum, continuum, { patterns: PATTERNS })
-  return typingInput(spectrum, continuum, frame, { windows: BANDS, commonFwhm: COMMON_FWHM })
+  const input = typingInput(spectrum, continuum, frame, {
+    windows: BANDS,
+    commonFwhm: COMMON_FWHM,
+    ...(resolution ? { resolution } : {}),
+  })
+  return { input, parts: { spectrum, continuum, frame } }
 }

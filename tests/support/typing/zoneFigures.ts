@@ -13,13 +13,11 @@ import {
   leftOutFor,
 } from './buildCalibration.ts'
 
-/** Exponent that the raw likelihoods are computed with; near the final one, so that no cell that matters is skipped. */
-const TRIAL = 0.15
-const EXPONENTS = Array.from({ length: 40 }, (_, i) => Number((0.05 * 1.08 ** i).toPrecision(3)))
+const EXPONENTS = Array.from({ length: 24 }, (_, i) => Number((0.12 * 1.06 ** i).toPrecision(3)))
 /** Share of stars that the 68 % range shall hold. */
 const WANTED = 0.68
 /** Subclasses: width of the Gaussian that weights the stars about a zone. */
-const REACH = 9
+const REACH = 14
 
 interface LeftOut {
   readonly type: number
@@ -49,12 +47,11 @@ export function zoneFigures(model: CalibrationModel): ZoneFigures[] {
 }
 
 function leaveOneOut(model: CalibrationModel): LeftOut[] {
+  const figures = (): ZoneFigures => ({ tempering: 1, fitQuantiles: FIT_SHARES.map((_, i) => i + 1) })
+  const whole = buildCalibration(model, [], figures)
   return model.stars.flatMap(({ star, input }): LeftOut[] => {
     if (star.set !== 'atlas') return []
-    const calibration = buildCalibration(model, leftOutFor(model, star), () => ({
-      tempering: TRIAL,
-      fitQuantiles: FIT_SHARES.map((_, i) => i + 1),
-    }))
+    const calibration = buildCalibration(model, leftOutFor(model, star), figures, whole)
     const decoded = decodeCalibration(calibration)
     const vector = featureVector(input, decoded)
     const { logLikelihood, distance } = likelihoodGrid(decoded, calibration.degreesOfFreedom, vector)
@@ -63,7 +60,7 @@ function leaveOneOut(model: CalibrationModel): LeftOut[] {
       if (value > logLikelihood[best]) best = at
     })
     const held = EXPONENTS.map((exponent) => {
-      const scaled = logLikelihood.map((value) => (value * exponent) / TRIAL)
+      const scaled = logLikelihood.map((value) => value * exponent)
       const { low68, high68 } = posteriorFigures(interpolatedGrid(decoded, scaled, calibration.prior.classes))
       return star.typeNumber >= low68 && star.typeNumber <= high68
     })
