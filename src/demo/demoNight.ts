@@ -2,9 +2,8 @@ import { BANDS } from '../tables/bands.ts'
 import { CALIBRATION } from '../tables/calibration.ts'
 import { DEMO_VERSION } from '../tables/demoNight.ts'
 import type { DemoStep } from '../tables/demoNight.ts'
-import { expectedLight } from './expectedLight.ts'
+import { expectedLightOf } from './expectedLight.ts'
 import { exposureFiles } from './exposure.ts'
-import type { LightOf } from './exposure.ts'
 import type { DemoFile } from './exposureFiles.ts'
 import { schedule } from './schedule.ts'
 import { targetList } from './targetList.ts'
@@ -34,19 +33,6 @@ positions and airmasses agree. Spectra are built from the program's own tables, 
 not accuracy. raw/ holds 2-D frames, quicklook/ 1-D spectra, targets.csv the observer's list.
 `
 
-/** Made stars by type and luminosity number, each made once. */
-function rememberedLight(): LightOf {
-  const made = new Map<string, Float64Array>()
-  return (type, luminosity) => {
-    const key = `${type} ${luminosity}`
-    const known = made.get(key)
-    if (known) return known
-    const light = expectedLight(type, luminosity, { calibration: CALIBRATION, bands: BANDS })
-    made.set(key, light)
-    return light
-  }
-}
-
 /** Steps that leave no file on the troubled night. */
 const LEAVES_NOTHING: readonly DemoStep['trouble'][] = ['missing arc', 'not observed']
 
@@ -56,7 +42,7 @@ export function* demoNight(options: DemoOptions): Generator<DemoFile, void, unde
   yield { path: 'README.txt', bytes: encoder.encode(ABOUT) }
   yield { path: 'targets.csv', bytes: encoder.encode(targetList()) }
   const { clean, seed = 1 } = options
-  const lightOf = rememberedLight()
+  const lightOf = expectedLightOf({ calibration: CALIBRATION, bands: BANDS })
   for (const exposure of schedule((step) => clean || !LEAVES_NOTHING.includes(step.trouble))) {
     yield* exposureFiles(exposure, { clean, seed, lightOf })
   }

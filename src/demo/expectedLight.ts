@@ -5,6 +5,7 @@ import { FINE_FIRST, FINE_STEP } from './grid.ts'
 import { likeMean } from './likeMean.ts'
 import { madeSpectrum } from './madeSpectrum.ts'
 import { lineTransmission, starContinuum } from './starLight.ts'
+import type { LightOf } from './starLight.ts'
 import { withStrengths } from './withStrengths.ts'
 
 /** Rounds of fitting the continuum and meeting the strengths against it. */
@@ -42,6 +43,17 @@ export function expectedLight(type: number, luminosity: number, { calibration, b
     light = withStrengths(light, bands, wanted, { fwhm: calibration.commonFwhm, level })
   }
   return continuum.map((level, i) => level * light[i])
+}
+
+/** Made stars as the program expects them, each made once and then remembered. */
+export function expectedLightOf(expectation: Expectation): LightOf {
+  const made = new Map<string, Float64Array>()
+  return (type, luminosity) => {
+    const key = `${type} ${luminosity}`
+    const light = made.get(key) ?? expectedLight(type, luminosity, expectation)
+    made.set(key, light)
+    return light
+  }
 }
 
 /** The level that the program's own continuum fit finds, in units of the true continuum, on the fine grid. */

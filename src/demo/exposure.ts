@@ -13,6 +13,7 @@ import type { FrameLight } from './rawFrame.ts'
 import { DEMO_MJD } from './schedule.ts'
 import type { DemoExposure } from './schedule.ts'
 import { blackBody, starLight, withDisc } from './starLight.ts'
+import type { LightOf } from './starLight.ts'
 
 const SECONDS_A_DAY = 86400
 /** Temperature of a tungsten lamp [K]. */
@@ -21,9 +22,6 @@ const TUNGSTEN = 3000
 const FLAT_LEVEL = 32000
 const SKYFLAT_LEVEL = 14000
 const DARK_CURRENT = 0.004
-
-/** Light of a made star by its type and luminosity number, photons per Å on the fine grid, at rest. */
-export type LightOf = (type: number, luminosity: number) => Float64Array
 
 /** Everything an exposure leaves on disk: its raw frame, and for stars the quick-look spectrum. */
 export function* exposureFiles(

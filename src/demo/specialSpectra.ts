@@ -1,7 +1,8 @@
 import type { FeatureShape } from '../tables/demoStrengths.ts'
 import { FINE_SAMPLES } from './grid.ts'
 import { withFeatures } from './profiles.ts'
-import { blackBody, lineTransmission, starContinuum, starLight, withDisc } from './starLight.ts'
+import { blackBody, lineTransmission, starLight, withDisc } from './starLight.ts'
+import type { LightOf } from './starLight.ts'
 
 export const SPECIAL_KINDS = [
   'emission',
@@ -50,6 +51,18 @@ const NEBULAR: Places = [
   [6716.44, 14],
   [6730.82, 13],
   [7135.79, 12],
+]
+/** Gas in a galaxy with some star formation, in Å. */
+const GALAXY_GAS: Places = [
+  [3727.4, 14],
+  [4861.32, 4],
+  [4958.91, 2],
+  [5006.84, 6],
+  [6548.05, 5],
+  [6562.79, 22],
+  [6583.45, 15],
+  [6716.44, 6],
+  [6730.82, 5],
 ]
 /** Hydrogen of a white dwarf: strengths in Å; the higher lines drown in the pressure of the gas. */
 const WHITE_DWARF: Places = [
@@ -110,42 +123,69 @@ function product(a: Float64Array, b: Float64Array): Float64Array {
 
 const clear = (): Float64Array => new Float64Array(FINE_SAMPLES).fill(1)
 
+/** Metals of a star poor in them: factors on the strengths of the demo's features. */
+const METALS_WEAK = {
+  'Fe I and Cr I': 0.2,
+  'Fe II and Ti II': 0.2,
+  'Ca II H and K': 0.35,
+  'Ca II infrared': 0.5,
+  'Sr II': 0.2,
+  'Ca I 4227': 0.2,
+  'Ca I red': 0.2,
+  'G band': 0.4,
+  'CN 4150': 0,
+  'Mg b': 0.3,
+  MgH: 0.2,
+  'Na D': 0.2,
+}
+/** Calcium of an early A star beside iron of an F star. */
+const METALLIC_LINE = {
+  'Ca II H and K': 0.4,
+  'Fe I and Cr I': 4.5,
+  'Fe II and Ti II': 2.2,
+  'Sr II': 3.5,
+  'Ca I 4227': 0.3,
+}
+
+/** The light of a star with some of its features scaled, all else as it was. */
+function rescaled(
+  type: number,
+  luminosity: number,
+  scale: Readonly<Record<string, number>>,
+  lightOf: LightOf,
+): Float64Array {
+  const [plain, changed] = [lineTransmission(type, luminosity), lineTransmission(type, luminosity, scale)]
+  return lightOf(type, luminosity).map((value, i) => (value * changed[i]) / plain[i])
+}
+
+function mixed(a: Float64Array, b: Float64Array, share: number): Float64Array {
+  return a.map((value, i) => (1 - share) * value + share * b[i])
+}
+
 /**
  * Light of a made object that is no ordinary star, in photons per Å on the fine grid, at rest (a galaxy too: give
  * `madeSpectrum` its velocity). For tests of recognition: each shows what the kind is known by, drawn from handbook
  * descriptions, with invented strengths. It proves that the criteria fire, not that real objects are told.
+ *
+ * @param lightOf  the ordinary stars that some kinds are made from; `expectedLightOf` gives such as the program expects
  */
-export function specialLight(kind: SpecialKind): Float64Array {
-  if (kind === 'emission') return withDisc(starLight(12, 5))
-  if (kind === 'metal-weak') {
-    const weak = 0.2
-    const scale = {
-      'Fe I and Cr I': weak,
-      'Fe II and Ti II': weak,
-      'Ca II H and K': 0.35,
-      'Ca II infrared': 0.5,
-      'Sr II': weak,
-      'Ca I 4227': weak,
-      'Ca I red': weak,
-      'G band': 0.4,
-      'CN 4150': 0,
-      'Mg b': 0.3,
-      MgH: 0.2,
-      'Na D': weak,
-    }
-    return product(starContinuum(36, 5), lineTransmission(36, 5, scale))
-  }
-  if (kind === 'metallic-line') {
-    const scale = { 'Ca II H and K': 0.4, 'Fe I and Cr I': 4.5, 'Fe II and Ti II': 2.2, 'Sr II': 3.5, 'Ca I 4227': 0.3 }
-    return product(starContinuum(25, 5), lineTransmission(25, 5, scale))
+export function specialLight(kind: SpecialKind, lightOf: LightOf = starLight): Float64Array {
+  if (kind === 'emission') return withDisc(lightOf(12, 5))
+  if (kind === 'metal-weak') return rescaled(36, 5, METALS_WEAK, lightOf)
+  if (kind === 'metallic-line') return rescaled(25, 5, METALLIC_LINE, lightOf)
+  // equal light near 5500 Å: the blue shows the hot star, the red the cool giant
+  if (kind === 'composite') return mixed(lightOf(17, 5), lightOf(55, 3), 0.5)
+  if (kind === 'galaxy') {
+    const stars = mixed(lightOf(48, 3), lightOf(28, 5), 0.2)
+    return product(stars, withAll(clear(), { form: 'emission', width: 6 }, GALAXY_GAS))
   }
   if (kind === 'carbon') {
     const lines = lineTransmission(52, 3, { 'CN 4150': 1, 'G band': 1.2, MgH: 0, 'Na D': 3 })
-    const bands = withAll(lines, { form: 'head', reach: -90 }, SWAN)
-    return product(blackBody(3300), withAll(bands, { form: 'head', reach: -90 }, CYANOGEN))
+    return product(blackBody(3300), withAll(lines, { form: 'head', reach: -90 }, [...SWAN, ...CYANOGEN]))
   }
-  if (kind === 'white dwarf')
+  if (kind === 'white dwarf') {
     return product(blackBody(15000), withAll(clear(), { form: 'winged', width: 42 }, WHITE_DWARF))
+  }
   if (kind === 'hot subdwarf') {
     const hydrogen = withAll(clear(), { form: 'winged', width: 15 }, SUBDWARF_HYDROGEN)
     return product(blackBody(35000), withAll(hydrogen, { form: 'line' }, SUBDWARF_HELIUM))
@@ -154,29 +194,7 @@ export function specialLight(kind: SpecialKind): Float64Array {
     const bands = withAll(clear(), { form: 'head', reach: 110 }, BROWN_BANDS)
     return product(blackBody(1900), withAll(bands, { form: 'winged', width: 45 }, BROWN_LINES))
   }
-  if (kind === 'composite') {
-    // equal light near 5000 Å: the blue shows the hot star, the red the cool giant
-    const hot = starLight(17, 5)
-    const cool = starLight(55, 3)
-    return hot.map((value, i) => 0.5 * value + 0.5 * cool[i])
-  }
-  if (kind === 'nebular') {
-    const weak = blackBody(20000).map((value) => 0.02 * value)
-    return withAll(clear(), EMISSION, NEBULAR, 0.6).map((value, i) => weak[i] + 0.05 * (value - 1))
-  }
-  const stars = product(starContinuum(48, 3), lineTransmission(48, 3, { 'CN 4150': 0.7 }))
-  const young = starLight(28, 5)
-  const mixed = stars.map((value, i) => 0.8 * value + 0.2 * young[i])
-  const gas: Places = [
-    [3727.4, 14],
-    [4861.32, 4],
-    [4958.91, 2],
-    [5006.84, 6],
-    [6548.05, 5],
-    [6562.79, 22],
-    [6583.45, 15],
-    [6716.44, 6],
-    [6730.82, 5],
-  ]
-  return product(mixed, withAll(clear(), { form: 'emission', width: 6 }, gas))
+  // a nebula: lines on a weak blue continuum
+  const weak = blackBody(20000).map((value) => 0.02 * value)
+  return withAll(clear(), EMISSION, NEBULAR, 0.6).map((value, i) => weak[i] + 0.05 * (value - 1))
 }

@@ -89,6 +89,9 @@ const DISC_LINES = (
   strength,
 }))
 
+/** Light of a made star by its type and luminosity number, photons per Å on the fine grid, at rest; 1 near 5500 Å. */
+export type LightOf = (type: number, luminosity: number) => Float64Array
+
 /** Light with the emission of a disc put in; the unit is that of `light`. */
 export function withDisc(light: Float64Array): Float64Array {
   return withFeatures(light, DISC_LINES)
