@@ -167,7 +167,7 @@ export const QUALITY_RULES = {
     unit: 'Å',
     source: COMMON,
   },
-  'no-type': { level: 'doubt', meaning: 'Nothing to tell a type from', source: COMMON },
+  'no-type': { level: 'note', meaning: 'Nothing to tell a type from', source: COMMON },
   'no-ordinary-star': { level: 'note', meaning: 'The spectrum is not that of an ordinary O to M star', source: COMMON },
   'type-fits-badly': {
     level: 'note',

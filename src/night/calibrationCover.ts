@@ -31,6 +31,8 @@ export interface CoverFrame {
   readonly exposure: Exposure
   readonly statistics?: FrameStatistics
   readonly isUsable: boolean
+  /** True where the clock of the file is in doubt, so that it says nothing of how far away an arc is. */
+  readonly isTimeDoubtful?: boolean
 }
 
 /**
@@ -169,9 +171,9 @@ function arcGap(
 ): { readonly hours: number; readonly file: string } | undefined {
   const times = arcs.flatMap(({ exposure }) => (exposure.mjd === undefined ? [] : [exposure.mjd]))
   let worst: { hours: number; file: string } | undefined
-  for (const { exposure } of members) {
+  for (const { exposure, isTimeDoubtful } of members) {
     const { mjd } = exposure
-    if (mjd === undefined || !times.length) continue
+    if (mjd === undefined || isTimeDoubtful || !times.length) continue
     const hours = 24 * Math.min(...times.map((time) => Math.abs(time - mjd)))
     if (!worst || hours > worst.hours) worst = { hours, file: exposure.file }
   }

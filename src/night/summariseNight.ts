@@ -62,6 +62,7 @@ export function summariseNight(outcomes: readonly Outcome[], options: NightOptio
     return {
       exposure,
       ...(frame?.statistics ? { statistics: frame.statistics } : {}),
+      isTimeDoubtful: (byFile.get(exposure.outcome) ?? []).some(({ code }) => code === 'clock-out-of-order'),
       isUsable: frame?.quality !== 'unusable' && !repeats.has(exposure.outcome),
     }
   })

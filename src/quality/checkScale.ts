@@ -19,7 +19,7 @@ function checkZeroPoint({ zeroPoint, resolution }: SpectrumInput, { step }: Samp
   if (!zeroPoint || !(Math.abs(zeroPoint.offset) > limit('zeroPointSigma') * zeroPoint.error)) return []
   const { offset, error, from } = zeroPoint
   const shift = (Math.abs(offset) / LIGHT) * MIDDLE
-  const said = `${figure(offset)} ± ${figure(error)} km/s, by ${from}`
+  const said = `${figure(offset)} ± ${figure(error)} km/s, by ${shortList(from)}`
   if (Math.abs(offset) >= AIR_VACUUM.from && Math.abs(offset) <= AIR_VACUUM.to && error < 5) {
     const text = `The wavelengths are off by ${said}: the difference between air and vacuum is 82 to 85 km/s`
     return [finding(QUALITY_RULES, 'air-vacuum-mix-up', text, { value: offset, limit: AIR_VACUUM.from })]
@@ -31,6 +31,12 @@ function checkZeroPoint({ zeroPoint, resolution }: SpectrumInput, { step }: Samp
   const text = `The wavelengths are ${offset > 0 ? 'too long' : 'too short'} by ${said}: ${figure(pixels)} samples`
   const allowed = (limit('zeroPointPixels') * step * LIGHT) / MIDDLE
   return [finding(QUALITY_RULES, 'wavelength-zero-point', text, { value: offset, limit: allowed, level })]
+}
+
+/** The first two of a list in words, and how many more there are. */
+function shortList(text: string): string {
+  const parts = text.split(', ')
+  return parts.length <= 3 ? text : `${parts.slice(0, 2).join(', ')} and ${parts.length - 2} more`
 }
 
 function checkResolution({ resolution, spectrum }: SpectrumInput, limit: Limits): Finding[] {

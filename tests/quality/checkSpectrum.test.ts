@@ -198,7 +198,7 @@ describe('checkSpectrum', () => {
   it('notes emission, a missing type and missing header facts', () => {
     expect(said(check(healthy(), { measurements: [{ ...HBETA, ew: -6 }] }))).toEqual(['note emission-lines'])
     expect(said(check(healthy(), { type: { ...TYPED, state: 'none', reason: 'no feature covered' } }))).toEqual([
-      'doubt no-type',
+      'note no-type',
     ])
     const bare = check({ ...healthy(), facts: { object: 'x' } })
     expect(bare.findings[0].text).toBe(
