@@ -5,7 +5,7 @@ import { cellNumbers } from './columnCells.ts'
 import { cardNumber, cardText } from './cards.ts'
 import type { Headers } from './cards.ts'
 import type { Container } from './container.ts'
-import { linearPart } from './headerAxis.ts'
+import { linearPart } from './linearPart.ts'
 import { SPECTRAL_CODES } from './spectralCode.ts'
 import { spectralUnit, toAngstrom } from './unit.ts'
 
