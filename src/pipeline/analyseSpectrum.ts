@@ -1,5 +1,6 @@
 import { fitContinuum } from '../continuum/fitContinuum.ts'
 import type { Continuum } from '../continuum/types.ts'
+import type { Finding } from '../findings/types.ts'
 import { barycentricCorrection } from '../ephemeris/barycentricCorrection.ts'
 import { findLines } from '../features/findLines.ts'
 import { measureLines } from '../features/measureLines.ts'
@@ -20,7 +21,7 @@ import { typeSpectrum } from '../typing/typeSpectrum.ts'
 import { type TypingInput, typingInput } from '../typing/typingInput.ts'
 import { OXYGEN_BANDS, SKY_LINES } from '../tables/sky.ts'
 import { checkMedium } from '../velocity/checkMedium.ts'
-import { findRestFrame } from '../velocity/findRestFrame.ts'
+import { alignStar } from '../velocity/alignStar.ts'
 import { measureResolution } from '../velocity/measureResolution.ts'
 import { measureZeroPoint } from '../velocity/measureZeroPoint.ts'
 import type { Resolution, RestFrame, ZeroPoint } from '../velocity/types.ts'
@@ -46,10 +47,9 @@ const FEWEST_SAMPLES = 8
 export function analyseSpectrum(whole: Spectrum, options: AnalyseOptions): SpectrumOutcome {
   const optical = withinRange(whole, OPTICAL[0], OPTICAL[1])
   const isOptical = optical.wavelength.length >= FEWEST_SAMPLES
-  const spectrum = isOptical ? optical : whole
-  const star = measureStar(spectrum, options.inForce)
-  const { continuum, restFrame } = star
-  const resolution = measureResolution(spectrum, continuum, restFrame, { telluric: OXYGEN_BANDS, skyLines: SKY_LINES })
+  const given = isOptical ? optical : whole
+  const star = measureStar(given, options.inForce)
+  const { spectrum, continuum, restFrame, resolution } = star
   const type = !isOptical
     ? untyped(`${optical.wavelength.length} samples lie between ${OPTICAL[0]} and ${OPTICAL[1]} Å`)
     : spectrum.role === 'star' || spectrum.role === 'unknown'
@@ -57,27 +57,44 @@ export function analyseSpectrum(whole: Spectrum, options: AnalyseOptions): Spect
       : untyped(`the header says this is no star but ${spectrum.role === 'lamp' ? 'a lamp' : spectrum.role}`)
   const lines = measureLines(spectrum, continuum, restFrame, { lines: MEASURED_LINES, resolution: resolution.fwhm })
   const measurements = [...star.typing.measurements, ...lines]
-  const zeroPoint = measureZeroPoint(spectrum, continuum, { telluric: OXYGEN_BANDS, skyLines: SKY_LINES })
+  const zeroPoint = measureZeroPoint(given, continuum, { telluric: OXYGEN_BANDS, skyLines: SKY_LINES })
   return outcomeOf(
     spectrum,
-    { ...star, whole, resolution, measurements, type, ...(zeroPoint ? { zeroPoint } : {}) },
+    { ...star, whole, given, measurements, type, ...(zeroPoint ? { zeroPoint } : {}) },
     options,
   )
 }
 
 /** What a spectrum is typed from, and what led there. */
 export interface StarMeasures {
+  /** On a scale made straight where need was. */
+  readonly spectrum: Spectrum
   readonly continuum: Continuum
   readonly restFrame: RestFrame
+  readonly resolution: Resolution
   readonly typing: TypingInput
+  /** Of the wavelength scale. */
+  readonly findings: readonly Finding[]
 }
 
-/** Continuum, rest frame and side-band features of a spectrum: the same steps for a star and for the calibration. */
-export function measureStar(spectrum: Spectrum, { maximumVelocity }: Pick<InForce, 'maximumVelocity'>): StarMeasures {
-  const continuum = fitContinuum(spectrum)
-  const restFrame = findRestFrame(spectrum, continuum, { patterns: PATTERNS, maxVelocity: maximumVelocity })
-  const typing = typingInput(spectrum, continuum, restFrame, { windows: BANDS, commonFwhm: CALIBRATION.commonFwhm })
-  return { continuum, restFrame, typing }
+/**
+ * Continuum, rest frame and side-band features of a spectrum: the same steps for a star and for the calibration. Where
+ * the star's own lines show the wavelength scale bent, all that follows is measured on the scale made straight.
+ */
+export function measureStar(given: Spectrum, { maximumVelocity }: Pick<InForce, 'maximumVelocity'>): StarMeasures {
+  const continuum = fitContinuum(given)
+  const { spectrum, frame, findings } = alignStar(given, continuum, {
+    patterns: PATTERNS,
+    maxVelocity: maximumVelocity,
+  })
+  const resolution = measureResolution(spectrum, continuum, frame, { telluric: OXYGEN_BANDS, skyLines: SKY_LINES })
+  const isMeasured = !resolution.isUpperLimit && resolution.how !== 'sampling (lower limit)'
+  const typing = typingInput(spectrum, continuum, frame, {
+    windows: BANDS,
+    commonFwhm: CALIBRATION.commonFwhm,
+    ...(isMeasured ? { resolution } : {}),
+  })
+  return { spectrum, continuum, restFrame: frame, resolution, typing, findings }
 }
 
 function untyped(reason: string): TypePosterior {
@@ -87,7 +104,8 @@ function untyped(reason: string): TypePosterior {
 interface Found extends StarMeasures {
   /** As the file has it, beyond the optical range too. */
   readonly whole: Spectrum
-  readonly resolution: Resolution
+  /** Its optical range, on the file's own scale. */
+  readonly given: Spectrum
   readonly zeroPoint?: ZeroPoint
   readonly measurements: readonly Measurement[]
   readonly type: TypePosterior
@@ -97,10 +115,18 @@ function outcomeOf(spectrum: Spectrum, found: Found, options: AnalyseOptions): S
   const { continuum, restFrame, resolution, zeroPoint, measurements, type } = found
   const { inForce } = options
   const check = checkSpectrum(
-    { spectrum, continuum, restFrame, resolution, ...(zeroPoint ? { zeroPoint } : {}), measurements, type },
+    {
+      spectrum: found.given,
+      continuum,
+      restFrame,
+      resolution,
+      ...(zeroPoint ? { zeroPoint } : {}),
+      measurements,
+      type,
+    },
     inForce.thresholds,
   )
-  const medium = checkMedium(spectrum, restFrame, zeroPoint ? { zeroPoint } : {})
+  const scale = [...found.findings, ...checkMedium(spectrum, restFrame, zeroPoint ? { zeroPoint } : {})]
   const { facts } = spectrum
   const { wavelength } = found.whole
   return {
@@ -124,8 +150,8 @@ function outcomeOf(spectrum: Spectrum, found: Found, options: AnalyseOptions): S
     ...barycentric(spectrum, restFrame),
     measurements,
     type,
-    quality: qualityOf([...check.findings, ...medium]),
-    findings: [...check.findings, ...medium],
+    quality: qualityOf([...check.findings, ...scale]),
+    findings: [...check.findings, ...scale],
     typing: found.typing,
     ...(options.wantsAllLines ? { lines: findLines(spectrum, continuum, restFrame, { lines: ALL_LINES }) } : {}),
     ...(options.wantsCurves ? { curves: thinnedCurves(spectrum, continuum, restFrame, expectedOf(type)) } : {}),

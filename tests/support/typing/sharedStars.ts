@@ -13,7 +13,7 @@ import { type TypingInput, typingInput } from '../../../src/typing/typingInput.t
 import { parseType } from '../../../src/typing/typeName.ts'
 import type { Continuum } from '../../../src/continuum/types.ts'
 import type { Resolution, RestFrame } from '../../../src/velocity/types.ts'
-import { findRestFrame } from '../../../src/velocity/findRestFrame.ts'
+import { alignStar } from '../../../src/velocity/alignStar.ts'
 import { sharedPath } from '../shared.ts'
 
 /** FWHM [Å] that all spectra are brought to before they are measured for a type. */
@@ -114,11 +114,11 @@ export function inputOf(
   resolution?: Resolution,
 ): { readonly input: TypingInput; readonly parts: StarParts } {
   const continuum = fitContinuum(spectrum)
-  const frame = findRestFrame(spectrum, continuum, { patterns: PATTERNS })
-  const input = typingInput(spectrum, continuum, frame, {
+  const aligned = alignStar(spectrum, continuum, { patterns: PATTERNS })
+  const input = typingInput(aligned.spectrum, continuum, aligned.frame, {
     windows: BANDS,
     commonFwhm: COMMON_FWHM,
     ...(resolution ? { resolution } : {}),
   })
-  return { input, parts: { spectrum, continuum, frame } }
+  return { input, parts: { spectrum: aligned.spectrum, continuum, frame: aligned.frame } }
 }
