@@ -63,21 +63,36 @@ function scanShorts(source: ByteSource, hdu: Hdu, width: number, height: number)
   const rowBytes = width * 2
   const atOnce = Math.max(1, Math.floor(262_144 / rowBytes))
   const stride = height < FEW_ROWS ? 1 : COLUMN_ROW_STEP
-  let columnRows = 0
   for (let first = 0; first < height; first += atOnce) {
     const taken = Math.min(atOnce, height - first)
     const bytes = readData(source, hdu, hdu.dataByte + first * rowBytes, taken * rowBytes)
-    for (let row = 0; row < taken; row++) {
-      const start = row * rowBytes
-      const y = first + row
-      if (y % stride === 0) {
-        rows[y] = addRow(bytes, start, counts, columns) / width
-        columnRows++
-      } else rows[y] = countRow(bytes, start, start + rowBytes, counts) / width
-      if (y % NOISE_ROW_STEP === 0) addSteps(bytes, start, width, steps)
-    }
+    countBlock(bytes, { first, taken, stride }, { counts, steps, columns, rows })
   }
-  return shortScan(counts, steps, { scale, zero, columns, columnRows, rows })
+  return shortScan(counts, steps, { scale, zero, columns, columnRows: Math.ceil(height / stride), rows })
+}
+
+interface ShortCounts {
+  readonly counts: Uint32Array
+  readonly steps: Uint32Array
+  readonly columns: Float64Array
+  readonly rows: Float64Array
+}
+
+/** Adds a block of whole rows; a function of its own, small enough for the compiler to do well. */
+function countBlock(
+  bytes: Uint8Array,
+  { first, taken, stride }: { readonly first: number; readonly taken: number; readonly stride: number },
+  { counts, steps, columns, rows }: ShortCounts,
+): void {
+  const width = columns.length
+  for (let row = 0; row < taken; row++) {
+    const start = row * width * 2
+    const y = first + row
+    const sum =
+      y % stride === 0 ? addRow(bytes, start, counts, columns) : countRow(bytes, start, start + 2 * width, counts)
+    rows[y] = sum / width
+    if (y % NOISE_ROW_STEP === 0) addSteps(bytes, start, width, steps)
+  }
 }
 
 interface ShortSums {
