@@ -1,4 +1,4 @@
-import { SIGMA_PER_MAD, quantile, quantileSorted } from '../numeric/median.ts'
+import { SIGMA_PER_MAD, median, quantile, quantileSorted } from '../numeric/median.ts'
 import { medianInPlace } from '../numeric/select.ts'
 import { stiffnessOfPeriod, thirdDifferencePenalty, whittaker, whittakerVariance } from '../numeric/whittaker.ts'
 import type { Spectrum } from '../spectrum/types.ts'
@@ -42,8 +42,15 @@ export function fitContinuum(spectrum: Spectrum, options: Partial<ContinuumOptio
     return { level, error: level.slice(), isPseudo: true, supported: 0, noise, noiseFrom }
   }
   const first = spread(spectrum.wavelength, bins, fit.curve, fit.error)
-  const { level, error } = raise(spectrum, noise, first, chosen)
-  return { level, error, isPseudo: fit.crowding > 0.02, supported: fit.supported, noise, noiseFrom }
+  const { level, error, taken } = raise(spectrum, noise, first, chosen)
+  return {
+    level,
+    error,
+    isPseudo: fit.crowding > PSEUDO_CROWDING || taken > PSEUDO_TAKEN,
+    supported: fit.supported,
+    noise,
+    noiseFrom,
+  }
 }
 
 /** Bins wide enough for a positive mean with a useful error in most; undefined when there are too few. */
@@ -63,6 +70,12 @@ function usefulBins(spectrum: Spectrum, noise: Float64Array, step: number): Bins
   }
   return undefined
 }
+
+/** Relative error below which no level is claimed to be known: wings of lines and ripples of the response. */
+const LEAST_ERROR = 0.001
+/** Share of light taken by weak lines, or by those in the bins used, from which the level is a pseudo-continuum. */
+const PSEUDO_TAKEN = 0.04
+const PSEUDO_CROWDING = 0.02
 
 interface BinFit {
   /** ln level at the bins' middles. */
@@ -127,7 +140,8 @@ function fitBins(bins: Bins, options: ContinuumOptions): BinFit | undefined {
     ),
   )
   const error = new Float64Array(n)
-  for (let k = 0; k < n; k++) error[k] = Math.min(0.5, Math.sqrt(spreadOf[k] + (0.3 * crowding) ** 2))
+  for (let k = 0; k < n; k++)
+    error[k] = Math.min(0.5, Math.sqrt(spreadOf[k] + (0.3 * crowding) ** 2 + LEAST_ERROR ** 2))
   return { curve, error, supported: supported / used, crowding }
 }
 
@@ -197,7 +211,7 @@ function raise(
     ratio[i] = counts ? flux[i] / first.level[i] : NaN
     relative[i] = noise[i] / first.level[i]
   }
-  const { place, rise, error } = weakLines(wavelength, ratio, relative)
+  const { place, rise, error, taken } = weakLines(wavelength, ratio, relative)
   const level = new Float64Array(n)
   const total = new Float64Array(n)
   const middle = place.map((value) => Math.exp(value))
@@ -212,7 +226,7 @@ function raise(
     const placing = level[i] * (error[b] + t * (error[next] - error[b]))
     total[i] = Math.sqrt(first.error[i] * first.error[i] + placing * placing)
   }
-  return { level, error: total }
+  return { level, error: total, taken: median(taken) }
 }
 
 /** The curve and its error at every sample, by cubic interpolation (Catmull & Rom 1974) between the bins' middles. */

@@ -1,3 +1,4 @@
+import { median } from '../numeric/median.ts'
 import { selectInPlace } from '../numeric/select.ts'
 
 /**
@@ -21,7 +22,7 @@ const FINEST = 0.8
 /** Lines deeper than this many robust standard deviations of their block are measured one by one, and count as clipped. */
 const STRONG = 4
 /** Part of Σ W² that is left when these are, in fields of log-normal strengths (by simulation, see the tests). */
-const KEPT = 0.7
+const KEPT = 0.55
 /** The level is raised by no more than this; where it should be, it is a pseudo-continuum. */
 export const GREATEST_RISE = 0.04
 
@@ -60,13 +61,14 @@ export function weakLines(wavelength: Float64Array, ratio: Float64Array, noise: 
   }
   const step = (data.wavelength[n - 1] - data.wavelength[0]) / Math.max(1, n - 1)
   const lags = Math.max(2, Math.min(40, Math.ceil(LONGEST / step)))
+  const half = Math.max(3, Math.round(TREND / 2 / step))
   const mean = new Float64Array(blocks)
   const place = new Float64Array(blocks)
   const parts: Block[] = []
   const sums = new Float64Array(blocks)
   for (let b = 0; b < blocks; b++) {
     place[b] = first + (span * (b + 0.5)) / blocks
-    parts.push(blockOf(data, edges[b], edges[b + 1]))
+    parts.push(blockOf(data, [edges[b], edges[b + 1]], half))
     mean[b] = parts[b].mean
     sums[b] = autocovariance(parts[b], 0) - parts[b].noiseVariance
   }
@@ -87,6 +89,7 @@ export function weakLines(wavelength: Float64Array, ratio: Float64Array, noise: 
     integral[b] = (sums[b] * step * steep) / KEPT
     variance[b] = noisy * noisy * ((2 + 4 * reach) / size)
   }
+  const floor = subtractFloor(integral, place)
   const smooth = smoothIntegrals(integral, variance)
   const rise = new Float64Array(blocks)
   const error = new Float64Array(blocks)
@@ -94,7 +97,7 @@ export function weakLines(wavelength: Float64Array, ratio: Float64Array, noise: 
   for (let b = 0; b < blocks; b++) {
     const steep = Math.exp(STEEPNESS * (place[b] - STEEPNESS_AT))
     taken[b] = shareTaken(Math.max(0, smooth.value[b] / steep))
-    const high = shareTaken(Math.max(0, smooth.value[b] + smooth.error[b]) / steep)
+    const high = shareTaken(Math.max(0, smooth.value[b] + smooth.error[b]) / steep + FLOOR_DOUBT * floor)
     const wanted = (1 + mean[b]) / (1 - taken[b]) - 1
     rise[b] = Math.min(GREATEST_RISE, Math.max(-GREATEST_RISE / 4, wanted))
     error[b] = Math.hypot(high - taken[b], UNCERTAIN * taken[b])
@@ -118,7 +121,34 @@ function fillFromNeighbours(values: Float64Array): void {
 const STEEPNESS = 6
 const STEEPNESS_AT = Math.log(5000)
 /** Share of D by which the typical strength of lines may differ from star to star. */
-const UNCERTAIN = 0.25
+const UNCERTAIN = 0.3
+
+/** Where weak lines are few, and where they crowd, in stars without bands [ln Å]. */
+const RED = [Math.log(5900), Math.log(9000)] as const
+const BLUE = [Math.log(4500), Math.log(5700)] as const
+
+/** Part of what is taken off that may have been lines after all. */
+const FLOOR_DOUBT = 0.5
+
+/**
+ * Takes off what does not fall as λ⁻⁶ from the blue to the red: smooth noise, ripples of a flux calibration and the like
+ * fluctuate at every wavelength. (Integrals carry the factor (λ/5000)⁶ here, which is divided out for the comparison.)
+ * Where one of the two ends is missing nothing can be told, and all is taken off.
+ */
+function subtractFloor(integral: Float64Array, place: Float64Array): number {
+  const steep = (b: number) => Math.exp(STEEPNESS * (place[b] - STEEPNESS_AT))
+  const within = ([from, to]: readonly [number, number]) =>
+    [...place.keys()].filter((b) => place[b] > from && place[b] < to && integral[b] === integral[b])
+  const red = within(RED)
+  const blue = within(BLUE)
+  const known = red.length >= 2 && blue.length >= 2
+  const ofRed = median(red.map((b) => integral[b] / steep(b)))
+  const ofBlue = median(blue.map((b) => integral[b] / steep(b)))
+  const fall = median(blue.map(steep)) / median(red.map(steep))
+  const floor = Math.max(0, (ofRed - fall * ofBlue) / (1 - fall))
+  for (let b = 0; b < place.length; b++) integral[b] = known ? integral[b] - floor * steep(b) : integral[b] * 0
+  return known ? floor : 0
+}
 
 /** Relative variance of a block's integral: some 40 independent stretches of a skewed field. */
 const SAMPLING = 0.1
@@ -206,7 +236,7 @@ interface Block {
 /** Fewest samples of a block. */
 const FEWEST = 20
 
-function blockOf({ ratio, noise }: Samples, start: number, end: number): Block {
+function blockOf({ ratio, noise }: Samples, [start, end]: readonly [number, number], half: number): Block {
   const size = Math.max(0, end - start)
   const off = new Float64Array(size)
   const good = new Uint8Array(size)
@@ -232,8 +262,30 @@ function blockOf({ ratio, noise }: Samples, start: number, end: number): Block {
       good[i - start] = 1
       variance += noise[i] * noise[i]
     }
-  return { mean: mean - 1, off, good, used, noiseVariance: variance / used }
+  return { mean: mean - 1, off: withoutTrend(off, good, half), good, used, noiseVariance: variance / used }
 }
+
+/** Fluctuations about the mean of the neighbourhood: a level that is bent or tilted within a block is no crowd of lines. */
+function withoutTrend(off: Float64Array, good: Uint8Array, half: number): Float64Array {
+  const n = off.length
+  const sums = new Float64Array(n + 1)
+  const counts = new Float64Array(n + 1)
+  for (let i = 0; i < n; i++) {
+    sums[i + 1] = sums[i] + off[i]
+    counts[i + 1] = counts[i] + good[i]
+  }
+  const out = new Float64Array(n)
+  for (let i = 0; i < n; i++) {
+    if (!good[i]) continue
+    const from = Math.max(0, i - half)
+    const to = Math.min(n, i + half + 1)
+    out[i] = off[i] - (sums[to] - sums[from]) / (counts[to] - counts[from])
+  }
+  return out
+}
+
+/** Width of the neighbourhood [Å]. */
+const TREND = 60
 
 /** Mean product of samples `lag` apart; NaN when there are none. */
 function autocovariance({ off, good, used }: Block, lag: number): number {

@@ -22,16 +22,11 @@ function rms(values: readonly number[]): number {
 
 describe('fitContinuum', () => {
   it('finds the true level of A to F stars with thousands of weak lines redward of 4500 Å', () => {
-    // known level; S/N 100, FWHM 4 Å, five fields of lines a kind that no constant was chosen on. Measured: A0 0.23 %,
-    // A5 0.24 %, F0 0.40 %, F5 0.54 % (single fields up to 0.85 %)
-    for (const [kind, bound] of [
-      ['A0', 0.003],
-      ['A5', 0.003],
-      ['F0', 0.0045],
-      ['F5', 0.006],
-    ] as const) {
+    // known level; S/N 100, FWHM 4 Å, five fields of lines a kind that no constant was chosen on. Wanted: 0.5 %.
+    // Measured: A0 0.23 %, A5 0.35 %, F0 0.44 %, F5 0.46 % (single fields up to 0.62 %)
+    for (const kind of ['A0', 'A5', 'F0', 'F5'] as const) {
       const all = [31, 32, 33, 34, 35].flatMap((star) => errors({ kind, star, seed: star }, 4500, 9200))
-      expect(rms(all)).toBeLessThan(bound)
+      expect(rms(all)).toBeLessThan(0.005)
     }
   })
 
