@@ -4,7 +4,7 @@
  */
 
 /** Raised whenever the night changes (its stamp holds the calibration's name besides), so that a night made by an older version is made anew. */
-export const DEMO_VERSION = '2'
+export const DEMO_VERSION = '3'
 
 export const DEMO_SITE = {
   observatory: 'Cerro Velanes Observatory',
@@ -79,20 +79,20 @@ export const DEMO_SETUPS: Readonly<Record<DemoSetupName, DemoSetup>> = {
   red: {
     grating: 'R400',
     tilt: 12.1,
-    filter: 'GG495',
+    filter: 'GG455',
     slit: '1.5',
-    first: 5750,
+    first: 4840,
     step: 3,
     fwhm: 7.2,
-    peak: 6900,
-    halfWidth: 1900,
+    peak: 6300,
+    halfWidth: 1800,
     lamp: 'NeHe',
     // Ne I and He I, from memory. Rates invented.
     lampLines: [
-      [5852.49, 5200], [5875.62, 6100], [5944.83, 2300], [6074.34, 2500], [6143.06, 4100], [6217.28, 1500], [6266.5, 2600],
-      [6334.43, 3800], [6402.25, 8200], [6506.53, 4600], [6598.95, 2700], [6678.15, 4900], [6929.47, 3500], [7032.41, 6000],
-      [7065.19, 2400], [7173.94, 1100], [7245.17, 3000], [7438.9, 1500], [7535.77, 900], [8300.33, 600], [8377.61, 1400],
-      [8495.36, 700], [8654.38, 500],
+      [4921.93, 800], [5015.68, 2100], [5047.74, 300], [5330.78, 900], [5400.56, 1400], [5764.42, 1100], [5852.49, 5200],
+      [5875.62, 6100], [5944.83, 2300], [6074.34, 2500], [6143.06, 4100], [6217.28, 1500], [6266.5, 2600],
+      [6334.43, 3800], [6402.25, 8200], [6506.53, 4600], [6598.95, 2700], [6678.15, 4900], [6929.47, 3500],
+      [7032.41, 6000], [7065.19, 2400], [7173.94, 1100], [7245.17, 3000], [7438.9, 1500], [7535.77, 900],
     ],
   },
 }
