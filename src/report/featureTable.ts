@@ -8,17 +8,18 @@ import { cell } from './tableCell.ts'
 import { PALETTE } from './palette.ts'
 import type { Area } from './spectrumFigure.ts'
 import type { TargetView } from './targetView.ts'
+import { measurementsOf } from './targetView.ts'
 import { featureWord, percent, signed, typeFound, withError } from './words.ts'
 
 /** Features given a full row each, so that page 2 has room for the findings and the provenance. */
-const MOST_IN_FULL = 30
+const MOST_IN_FULL = 24
 
 /**
  * The features of the shown exposure: those with the largest part in the decision in full, in order of wavelength, and
  * the rest three in a row.
  */
 export function featureTable(flow: Flow, view: TargetView): void {
-  const { measurements } = view.exposures[view.best].spectrum
+  const measurements = measurementsOf(view)
   const type = typeFound(view.type)
   const isTyped = view.type.evidence.length > 0
   flow.heading('Features')
@@ -31,18 +32,19 @@ export function featureTable(flow: Flow, view: TargetView): void {
   )
   const evidence = new Map(view.type.evidence.map((e) => [e.feature, e]))
   const shareOf = (m: Measurement): number => evidence.get(m.feature)?.share ?? (m.ew === undefined ? -1 : 0)
-  const ranked = [...measurements].sort((a, b) => shareOf(b) - shareOf(a))
+  const ranked = measurements.filter((m) => m.ew !== undefined).sort((a, b) => shareOf(b) - shareOf(a))
   const chosen = new Set(ranked.slice(0, MOST_IN_FULL))
   const full = measurements.filter((m) => chosen.has(m))
-  const rest = measurements.filter((m) => !chosen.has(m))
+  const rest = measurements.filter((m) => !chosen.has(m) && m.status !== 'uncovered')
+  const uncovered = measurements.filter((m) => !chosen.has(m) && m.status === 'uncovered')
   flow.table(
     [
-      { head: 'feature', width: 50 },
-      { head: 'species', width: 28 },
+      { head: 'feature', width: 56 },
+      { head: 'species', width: 34 },
       { head: 'at, Å', width: 32, align: 'end' },
       { head: 'measured', width: 62, align: 'end' },
-      { head: 'unit', width: 16 },
-      { head: 'expected', width: 58, align: 'end' },
+      { head: 'unit', width: 21 },
+      { head: 'expected', width: 64, align: 'end' },
       { head: 'pull', width: 24, align: 'end' },
       { head: '−3   0   +3', width: 44 },
       { head: 'part', width: 28, align: 'end' },
@@ -67,13 +69,18 @@ export function featureTable(flow: Flow, view: TargetView): void {
     { rowHeight: 10.6 },
   )
   if (rest.length > 0) restTable(flow, rest, evidence)
+  if (uncovered.length > 0)
+    flow.paragraph(`Not covered: ${uncovered.map((m) => featureWord(m.feature)).join(', ')}.`, {
+      size: 7,
+      colour: PALETTE.quiet,
+    })
 }
 
 /** Features with a small part: name, strength and pull, three in a row. */
 function restTable(flow: Flow, rest: readonly Measurement[], evidence: ReadonlyMap<string, Evidence>): void {
   const three = [0, 1, 2]
   const columns = three.flatMap((k): TableColumn[] => [
-    { head: k === 0 ? 'others' : '', width: 50 },
+    { head: k === 0 ? 'others' : '', width: 58 },
     { head: 'measured', width: 1, share: true },
     { head: 'pull', width: 24, align: 'end' },
   ])
@@ -85,7 +92,7 @@ function restTable(flow: Flow, rest: readonly Measurement[], evidence: ReadonlyM
   }
   const height = Math.ceil(rest.length / 3)
   const rows = Array.from({ length: height }, (_, i) => three.flatMap((k) => cells(rest[i + k * height])))
-  flow.table(columns, rows, { size: 7, rowHeight: 9.6 })
+  flow.table(columns, rows, { size: 6.5, rowHeight: 8.8 })
 }
 
 function remark(m: { status: string; reason?: string; limit3sigma?: number; unit: string }): string {

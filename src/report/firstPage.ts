@@ -18,7 +18,8 @@ import { shortNumber, typeNumberOf } from './words.ts'
 export function drawFirstPage(face: Typeface, flow: Flow, view: TargetView): void {
   const verdict = verdictOf(view)
   flow.area(34, (area) => [title(face, area, view)])
-  flow.area(15, (area) => [facts(face, area, view)])
+  const known = face.wrap(face.clean(factsText(view)), flow.width, { size: 7.5, weight: 'regular' }).slice(0, 2)
+  flow.area(5 + known.length * 10, (area) => [facts(face, area, known)])
   const lines = face
     .wrap(face.clean(capital(verdict.sentence)), flow.width - 10, { size: 12, weight: 'bold' })
     .slice(0, 3)
@@ -61,7 +62,8 @@ function title(face: Typeface, area: Area, view: TargetView): Block {
   return { role: 'H1', items: [text], bookmark: { title: text.text, level: 1, y: 0 } }
 }
 
-function facts(face: Typeface, area: Area, view: TargetView): Block {
+/** When and how the shown exposure was made, as far as the header says. */
+function factsText(view: TargetView): string {
   const { facts: header, setup, resolution } = view.exposures[view.best].spectrum
   const parts = [
     view.exposures.length > 1 ? `best of ${view.exposures.length} exposures` : '',
@@ -74,11 +76,12 @@ function facts(face: Typeface, area: Area, view: TargetView): Block {
     setup,
     resolution === undefined ? '' : `FWHM ${resolution.fwhm.toFixed(1)} Å`,
   ].filter((part) => part !== '')
-  const text = parts.length ? parts.join('  ·  ') : 'the header says nothing of when and how it was observed'
-  return {
-    role: 'P',
-    items: [face.text(area.x, area.y + 8, text, { size: 7.5, colour: PALETTE.quiet, fit: area.width })],
-  }
+  return parts.length ? parts.join('  ·  ') : 'the header says nothing of when and how it was observed'
+}
+
+function facts(face: Typeface, area: Area, lines: readonly string[]): Block {
+  const style = { size: 7.5, colour: PALETTE.quiet, fit: area.width }
+  return { role: 'P', items: lines.map((line, i) => face.text(area.x, area.y + 8 + i * 10, line, style)) }
 }
 
 function sentence(face: Typeface, area: Area, lines: readonly string[]): Block {

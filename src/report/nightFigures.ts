@@ -103,11 +103,15 @@ export function foundAgainstExpected(face: Typeface, area: Area, pairs: readonly
   return { role: 'Figure', alt, items }
 }
 
+/** Least half height of a drift's axis as a part of its middle, so that rounding does not look like a drift. */
+const LEAST_SPAN = 0.02
+
 /** One quantity through the night: points with errors against time, UTC. */
 export function driftFigure(face: Typeface, area: Area, drift: Drift, times: readonly [number, number]): Block {
   const values = drift.points.flatMap((p) => [p.value - (p.error ?? 0), p.value + (p.error ?? 0)])
   const [least, most] = [Math.min(...values), Math.max(...values)]
-  const margin = (most - least || Math.abs(most) || 1) * 0.1
+  const middle = (least + most) / 2
+  const half = Math.max((most - least) * 0.6, Math.abs(middle) * LEAST_SPAN, 1e-9)
   const hour = 1 / 24
   const aside = Math.max((times[1] - times[0]) * 0.02, times[1] - times[0] > hour ? 0 : hour)
   const xRange: readonly [number, number] = [times[0] - aside, times[1] + aside]
@@ -117,7 +121,7 @@ export function driftFigure(face: Typeface, area: Area, drift: Drift, times: rea
     width: area.width - AXIS_ROOM,
     height: area.height - HEADING_ROOM - LABEL_ROOM,
     xRange,
-    yRange: [least - margin, most + margin],
+    yRange: [middle - half, middle + half],
   }
   const bottom = frame.y + frame.height
   const items: Item[] = [

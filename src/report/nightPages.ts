@@ -170,7 +170,7 @@ function targetTable(flow: Flow, views: readonly TargetView[], options: NightPag
     { head: '68 % range', width: 48 },
     { head: 'expected', width: 40 },
     { head: 'probability', width: 40, align: 'end' },
-    { head: 'S/N', width: 40, align: 'end' },
+    { head: 'S/N', width: 50, align: 'end' },
     {
       head: bests.length ? `normalised, ${range[0].toFixed(0)} to ${range[1].toFixed(0)} Å at rest` : '',
       width: 1.6,

@@ -103,7 +103,8 @@ function targets(night: NightSummary, outcomes: readonly Outcome[], { width, col
   if (views.length === 0) return []
   const rows = views.map((view) => {
     const { type, summary, name } = view
-    const error = type.typeNumberErr === undefined ? '' : `± ${type.typeNumberErr.toFixed(1)}`
+    const isTyped = type.state === 'typed' || type.state === 'wide'
+    const error = type.typeNumberErr === undefined || !isTyped ? '' : `± ${type.typeNumberErr.toFixed(1)}`
     const expected = summary?.listed?.expectedType
     const against = expected === undefined ? '' : `expected ${plainText(expected)}`
     const odds = summary?.expectedProbability === undefined ? '' : percent(summary.expectedProbability)

@@ -162,7 +162,7 @@ function drawText(doc: PdfDocument, item: TextItem): void {
   const { anchor, width } = item
   const shift = anchor === 'end' ? -width : anchor === 'middle' ? -width / 2 : 0
   doc.font(item.weight).fontSize(item.size).fillColor(item.colour)
-  const options = { lineBreak: false, baseline: 0 } as const
+  const options = { lineBreak: false, baseline: 0, textWidth: width, wordCount: 1 } as const
   // A space after every piece keeps the words of two pieces apart when the text is read out or copied.
   const text = `${item.text} `
   if (!item.upright) {

@@ -31,7 +31,17 @@ export interface PdfDocument {
   font(name: Weight): PdfDocument
   fontSize(size: number): PdfDocument
   fillColor(colour: string): PdfDocument
-  text(text: string, x: number, y: number, options: { readonly lineBreak: false; readonly baseline: number }): void
+  text(
+    text: string,
+    x: number,
+    y: number,
+    options: {
+      readonly lineBreak: false
+      readonly baseline: number
+      readonly textWidth: number
+      readonly wordCount: number
+    },
+  ): void
   save(): void
   restore(): void
   rotate(angle: number, options: { readonly origin: readonly [number, number] }): void

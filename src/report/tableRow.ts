@@ -31,7 +31,12 @@ export function headRow(
   return columns.map((column, i) => {
     const at = column.align === 'end' ? left + widths[i] : left
     left += widths[i] + GAP
-    const style = { size: size - 0.5, colour: PALETTE.quiet, anchor: column.align ?? 'start', fit: widths[i] }
+    const style = {
+      size: Math.max(6.5, size - 0.5),
+      colour: PALETTE.quiet,
+      anchor: column.align ?? 'start',
+      fit: widths[i],
+    }
     return { heading: true, items: column.head === '' ? [] : [face.text(at, y, column.head, style)] }
   })
 }

@@ -1,3 +1,4 @@
+import type { Measurement } from '../features/types.ts'
 import type { NightSummary, SpectrumNight, TargetSummary } from '../night/types.ts'
 import type { Outcome, SpectrumOutcome } from '../quality/types.ts'
 import type { TypePosterior } from '../typing/types.ts'
@@ -16,7 +17,7 @@ export interface TargetView {
   readonly name: string
   /** In order of time as far as it is known, else in order of input. */
   readonly exposures: readonly Exposure[]
-  /** Index of the exposure that page 1 shows: the best by quality, then by signal to noise. */
+  /** Index of the exposure that page 1 shows: of the usable ones that with the largest part in the type. */
   readonly best: number
   /** The type from all spectra together, or of the single one. */
   readonly type: TypePosterior
@@ -25,15 +26,37 @@ export interface TargetView {
 
 const RANK = { usable: 0, doubtful: 1, unusable: 2 } as const
 
-function bestOf(exposures: readonly Exposure[]): number {
+/** Index of the exposure to show: not an unusable one, then that which decided the type most, then by quality and S/N. */
+function bestOf(exposures: readonly Exposure[], type: TypePosterior): number {
+  const shares = new Map(type.evidence.map((e) => [e.feature, e.share]))
+  const merits = exposures.map(({ spectrum, night }): readonly number[] => {
+    const quality = night?.quality ?? spectrum.quality
+    const decided = spectrum.measurements.reduce(
+      (sum, m) => sum + (m.ew === undefined ? 0 : (shares.get(m.feature) ?? 0)),
+      0,
+    )
+    const snr = spectrum.snr.visual ?? spectrum.snr.blue ?? spectrum.snr.red ?? 0
+    return [spectrum.curves ? 1 : 0, quality === 'unusable' ? 0 : 1, Math.round(decided * 20), -RANK[quality], snr]
+  })
   let best = 0
-  const rank = (e: Exposure): number => RANK[e.night?.quality ?? e.spectrum.quality] + (e.spectrum.curves ? 0 : 10)
-  const snr = (e: Exposure): number => e.spectrum.snr.visual ?? e.spectrum.snr.blue ?? e.spectrum.snr.red ?? 0
-  exposures.forEach((exposure, i) => {
-    const [a, b] = [rank(exposure), rank(exposures[best])]
-    if (a < b || (a === b && snr(exposure) > snr(exposures[best]))) best = i
+  merits.forEach((merit, i) => {
+    const k = merit.findIndex((value, n) => value !== merits[best][n])
+    if (k >= 0 && merit[k] > merits[best][k]) best = i
   })
   return best
+}
+
+/**
+ * The measurements of a target, one a feature: that of the shown exposure, or of the first other exposure that could
+ * measure it where the shown one could not.
+ */
+export function measurementsOf({ exposures, best }: TargetView): readonly Measurement[] {
+  const found = new Map<string, Measurement>()
+  for (const { spectrum } of [exposures[best], ...exposures])
+    for (const m of spectrum.measurements)
+      if (found.get(m.feature)?.ew === undefined && (m.ew !== undefined || !found.has(m.feature)))
+        found.set(m.feature, m)
+  return [...found.values()].sort((a, b) => a.wavelengthRest - b.wavelengthRest)
 }
 
 /** One view a target of the night, and one for every spectrum that belongs to no target, in order of first input. */
@@ -59,7 +82,9 @@ export function targetViews(outcomes: readonly Outcome[], night?: NightSummary):
     })
     if (exposures.length === 0) return []
     const inTime = [...exposures].sort((a, b) => (a.spectrum.facts.mjdMid ?? 0) - (b.spectrum.facts.mjdMid ?? 0))
-    return [{ name: summary.target, exposures: inTime, best: bestOf(inTime), type: summary.type, summary }]
+    return [
+      { name: summary.target, exposures: inTime, best: bestOf(inTime, summary.type), type: summary.type, summary },
+    ]
   })
   outcomes.forEach((outcome, i) =>
     outcome.spectra.forEach((spectrum, j) => {

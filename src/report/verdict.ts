@@ -100,6 +100,13 @@ function asExpected(view: TargetView): Said {
     const details = ['the target list gives no type for it', ...place]
     return { answer: { question, answer: 'nothing expected', standing: 'unknown', details }, said: '' }
   }
+  if (view.type.state === 'outside') {
+    const details = [`the list expects ${type}`, 'no ordinary type fits, so none can be confirmed', ...place]
+    return {
+      answer: { question, answer: 'not confirmed', standing: 'doubt', details },
+      said: `expected ${type} not confirmed`,
+    }
+  }
   if (probability === undefined) {
     const details = [`the list expects ${type}`, 'the spectrum gives no probability to hold against it', ...place]
     return { answer: { question, answer: 'cannot be told', standing: 'unknown', details }, said: '' }

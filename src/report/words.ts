@@ -65,6 +65,10 @@ export function featureWord(feature: string): string {
     .replace(/([A-Za-z])(\d{4})/, '$1 $2')
     .replace(/^(Ca|Na)([A-Z])$/, '$1 $2')
     .replace(/^Gband$/, 'G band')
+    .replace(/^CaHHepsilon$/, 'Ca H + Hε')
+    .replace(/(Core|core|Wide|Narrow)$/, (word) => ` ${word.toLowerCase()}`)
+    .replace(/^Ca([HK]) /, 'Ca $1 ')
+    .replace(/^Paschen(\d)/, 'Paschen $1')
     .replace(/^Mgb$/, 'Mg b')
 }
 
