@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { fitContinuum } from '../../src/continuum/fitContinuum.ts'
 import { normalise } from '../../src/continuum/normalise.ts'
-import { extinctionCcm89 } from '../../src/numeric/extinction.ts'
+import { extinctionCcm89 } from '../support/extinction.ts'
 import { median } from '../../src/numeric/median.ts'
 import { type MadeKind, type MadeOptions, asSpectrum, madeSpectrum } from '../support/madeSpectrum.ts'
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { extinctionCcm89 } from '../../src/numeric/extinction.ts'
+import { extinctionCcm89 } from './extinction.ts'
 
 describe('extinctionCcm89', () => {
   it('reproduces the table of the paper for R = 3.1', () => {
