@@ -85,7 +85,11 @@ export interface Calibration {
   readonly zones: readonly CalibrationZone[]
   /** Degrees of freedom of the heavy-tailed likelihood. */
   readonly degreesOfFreedom: number
-  /** shape (f): change of a feature for a spectrum 1 Å of FWHM coarser, per zone elsewhere. */
+  /**
+   * shape (f): part of the way to a star without metals (the expected values at A0 V) that a feature goes in the published
+   * means of metal-weak stars, in thousandths.
+   */
+  readonly metalWeak: readonly number[]
   readonly prior: {
     /** shape (c): weight of the luminosity classes; types are flat over those in use. */
     readonly classes: readonly number[]
@@ -101,8 +105,6 @@ export interface CalibrationZone {
   readonly covariance: readonly number[]
   /** Exponent on the likelihood, so that the ranges hold what they should; by cross-validation. */
   readonly tempering: number
-  /** shape (f) [scale / 1000]: change of the features with metals a factor of ten weaker; empty where not known. */
-  readonly metalWeak: readonly number[]
   /** Mahalanobis distance squared per feature that 50, 90, 98 and 99.5 % of ordinary stars stay below. */
   readonly fitQuantiles: readonly number[]
 }

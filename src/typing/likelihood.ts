@@ -1,5 +1,5 @@
 import { choleskyFactor, forwardSolve } from '../numeric/cholesky.ts'
-import type { DecodedCalibration } from './decodedCalibration.ts'
+import { type DecodedCalibration, HALO_STEPS } from './decodedCalibration.ts'
 
 /** Measured features by their place in the calibration. */
 export interface FeatureVector {
@@ -14,8 +14,12 @@ export interface FeatureVector {
 export interface LikelihoodGrid {
   /** shape (t × c): tempered log likelihood. */
   readonly logLikelihood: Float64Array
-  /** shape (t × c): squared Mahalanobis distance from the expected values. */
+  /** shape (t × c): squared Mahalanobis distance from the expected values, those of the best metals. */
   readonly distance: Float64Array
+  /** shape (t × c): metals that fit best; 0 as the Sun's, 1 as in the published means of metal-weak stars. */
+  readonly weakness: Float64Array
+  /** shape (t × c): how much farther the star would be with metals like the Sun's. */
+  readonly weaknessGain: Float64Array
   /** Type number whose scatter was used. */
   readonly scatterType: number
   /** Exponent on the likelihood at that type. */
@@ -43,16 +47,21 @@ export function likelihoodGrid(
   let scatterType = firstGuess(calibration, vector)
   for (let round = 0; round < ROUNDS; round++) {
     const lower = scatterFactor(calibration, vector, scatterType)
-    const found = types[Math.floor(lowest(distances(calibration, vector, lower, COARSE)) / classes.length)]
+    const found = types[Math.floor(lowest(distances(calibration, vector, lower, COARSE).distance) / classes.length)]
     if (Math.abs(found - scatterType) < SETTLED) break
     scatterType = found
   }
   const { z, share } = zoneAt(zones, scatterType)
   const tempering = (1 - share) * zones[z].tempering + share * zones[Math.min(z + 1, zones.length - 1)].tempering
-  const distance = distances(calibration, vector, scatterFactor(calibration, vector, scatterType), 1)
+  const { distance, weakness, weaknessGain } = distances(
+    calibration,
+    vector,
+    scatterFactor(calibration, vector, scatterType),
+    1,
+  )
   const half = 0.5 * (degreesOfFreedom + vector.index.length)
   const logLikelihood = distance.map((d) => -tempering * half * Math.log1p(d / degreesOfFreedom))
-  return { logLikelihood, distance, scatterType, tempering }
+  return { logLikelihood, distance, weakness, weaknessGain, scatterType, tempering }
 }
 
 /** Cholesky factor of the features' covariance for a star near a type. */
@@ -79,28 +88,91 @@ function scatterFactor(
   return choleskyFactor(matrix, p)
 }
 
-/** Squared Mahalanobis distances of all cells, or of every `step`-th type's; Infinity for the others. shape (t × c). */
+/** Range of metals tried, and the spread of ordinary stars, in units of the published metal-weak means. */
+const WEAKNESS = { richest: -0.5, weakest: 3, spread: 0.6 } as const
+/**
+ * Halo stars: lines this many times as weakened, each saturating, with the spread about it, at the price of their rarity
+ * (about 1 in 100 stars bright enough for a slit; common practice, no source).
+ */
+const HALO = { spread: 0.3, price: 9 } as const
+
+/**
+ * Squared Mahalanobis distances of all cells, or of every `step`-th type's with Infinity for the others, each at the metals
+ * that bring the star nearest, a penalty for unusual metals included. shapes (t × c).
+ */
 function distances(
-  { features, types, classes, mean }: DecodedCalibration,
+  { features, types, classes, mean, metalWeak, halo }: DecodedCalibration,
   { index, value }: FeatureVector,
   lower: Float64Array,
   step: number,
-): Float64Array {
+): Pick<LikelihoodGrid, 'distance' | 'weakness' | 'weaknessGain'> {
   const f = features.length
   const c = classes.length
   const p = index.length
   const distance = new Float64Array(types.length * c).fill(Infinity)
+  const weakness = new Float64Array(types.length * c)
+  const weaknessGain = new Float64Array(types.length * c)
   const residual = new Float64Array(p)
-  for (let i = 0; i < types.length; i += step)
+  const weak = direction(p)
+  const far = direction(p)
+  for (let i = 0; i < types.length; i += step) {
+    aim(weak, metalWeak, { index, lower, row: i * f })
+    aim(far, halo, { index, lower, row: i * f })
     for (let j = 0; j < c; j++) {
-      const row = (i * c + j) * f
+      const at = i * c + j
+      const row = at * f
       for (let a = 0; a < p; a++) residual[a] = value[a] - mean[row + index[a]]
       forwardSolve(lower, p, residual, residual)
       let sum = 0
-      for (let a = 0; a < p; a++) sum += residual[a] * residual[a]
-      distance[i * c + j] = sum
+      let along = 0
+      let alongFar = 0
+      for (let a = 0; a < p; a++) {
+        sum += residual[a] * residual[a]
+        along += residual[a] * weak.change[a]
+        alongFar += residual[a] * far.change[a]
+      }
+      const stiffness = weak.leverage + 1 / (WEAKNESS.spread * WEAKNESS.spread)
+      const z = Math.min(WEAKNESS.weakest, Math.max(WEAKNESS.richest, along / stiffness))
+      weakness[at] = z
+      weaknessGain[at] = z * (2 * along - z * stiffness)
+      if (far.leverage > 0) {
+        const hold = 1 / (HALO.spread * HALO.spread)
+        const y = (alongFar + hold) / (far.leverage + hold)
+        const gain = y * (2 * alongFar - y * far.leverage) - (y - 1) * (y - 1) * hold - HALO.price
+        if (gain > weaknessGain[at]) {
+          weakness[at] = HALO_STEPS * y
+          weaknessGain[at] = gain
+        }
+      }
+      distance[at] = sum - weaknessGain[at]
     }
-  return distance
+  }
+  return { distance, weakness, weaknessGain }
+}
+
+/** A change of the features in whitened units, and its squared length. */
+interface Direction {
+  readonly change: Float64Array
+  leverage: number
+}
+
+function direction(p: number): Direction {
+  return { change: new Float64Array(p), leverage: 0 }
+}
+
+function aim(
+  target: Direction,
+  changes: Float64Array,
+  { index, lower, row }: { readonly index: Int32Array; readonly lower: Float64Array; readonly row: number },
+): void {
+  const { change } = target
+  const p = index.length
+  let size = 0
+  for (let a = 0; a < p; a++) size += Math.abs((change[a] = changes[row + index[a]]))
+  target.leverage = 0
+  if (size === 0) return
+  forwardSolve(lower, p, change, change)
+  for (let a = 0; a < p; a++) target.leverage += change[a] * change[a]
 }
 
 /** A residual counts for no more than this many σ in the first guess. */

@@ -41,7 +41,8 @@ export function typeSpectrum(input: TypingInput, calibration: Calibration): Type
   if (input.samples < FEWEST_SAMPLES) return none(`${input.samples} usable samples, fewer than ${FEWEST_SAMPLES}`)
   if (vector.index.length < FEWEST_FEATURES)
     return none(`${vector.index.length} features could be measured, fewer than ${FEWEST_FEATURES}`)
-  const { logLikelihood, distance } = likelihoodGrid(decoded, calibration.degreesOfFreedom, vector)
+  const likelihood = likelihoodGrid(decoded, calibration.degreesOfFreedom, vector)
+  const { logLikelihood, distance } = likelihood
   const grid = interpolatedGrid(decoded, logLikelihood, calibration.prior.classes)
   const figures = posteriorFigures(grid)
   if (figures.high95 - figures.low95 > SAYS_NOTHING)
@@ -68,7 +69,7 @@ export function typeSpectrum(input: TypingInput, calibration: Calibration): Type
     probGiant: figures.probGiant,
     probSupergiant: figures.probSupergiant,
     typeNumberErr: width68 / 2,
-    peculiar: peculiarities({ input, calibration: decoded, vector, best }),
+    peculiar: peculiarities({ input, calibration: decoded, vector, likelihood, best }),
     grid,
     fitPull: fit.pull,
     fitProbability: fit.probability,

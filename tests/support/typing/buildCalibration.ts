@@ -46,6 +46,8 @@ export interface CalibrationModel {
   readonly stars: readonly MeasuredStar[]
   readonly training: readonly TrainingStar[]
   readonly means: MeanModel
+  /** Published means of metal-weak stars, and single ones; they have no part in the expected values. */
+  readonly weak: readonly MeasuredStar[]
   readonly spectra: CalibrationSpectra
 }
 
@@ -58,7 +60,8 @@ export function calibrationModel(measured: readonly MeasuredStar[]): Calibration
     weight: WEIGHTS[star.set],
     values,
   }))
-  return { stars, training, means: modelMeans(training, gridCells()), spectra: meanSpectra(stars) }
+  const weak = measured.filter(({ star }) => star.metals === 'weak')
+  return { stars, training, weak, means: modelMeans(training, gridCells()), spectra: meanSpectra(stars) }
 }
 
 function gridCells(): Cell[] {
@@ -113,12 +116,36 @@ export function buildCalibration(
         known && isFar
           ? known.covariance
           : packedTriangle(fitScatter(type, stars, fitted.residual, { widths }), fitted.scale)
-      return { type, covariance, ...figures(z), metalWeak: [] }
+      return { type, covariance, ...figures(z) }
     }),
     degreesOfFreedom: DEGREES_OF_FREEDOM,
+    metalWeak: metalWeakParts(model.weak, fitted),
     prior: { classes: CLASS_PRIOR },
     spectra: model.spectra,
   }
+}
+
+/** Ridge that keeps a feature without leverage at zero, as a share of the summed squares of all features. */
+const RIDGE = 0.05
+const METAL_FREE: Cell = { type: 20, luminosity: 5 }
+
+/** Least-squares part of the way to the metal-free star that each feature goes in metal-weak stars, in thousandths. */
+function metalWeakParts(weak: readonly MeasuredStar[], { mean, scale }: FittedMeans): number[] {
+  const f = scale.length
+  const row = ({ type, luminosity }: Cell): number =>
+    (Math.round(type - FIRST_TYPE) * CLASSES.length + Math.round(luminosity) - 1) * f
+  return Array.from(scale, (unit, k) => {
+    let top = 0
+    let bottom = RIDGE * weak.length
+    for (const { star, values } of weak) {
+      const here = row({ type: star.typeNumber, luminosity: star.luminosity ?? 5 })
+      if (!Number.isFinite(values[k])) continue
+      const way = (mean[row(METAL_FREE) + k] - mean[here + k]) / unit
+      top += (way * (values[k] - mean[here + k])) / unit
+      bottom += way * way
+    }
+    return Math.round((1000 * top) / bottom)
+  })
 }
 
 function packedMeans({ mean, scale }: FittedMeans): number[][] {

@@ -54,23 +54,20 @@ export function fitScatter(
       if (known[i * f + k]) held[i * f + k] = Math.min(limit, Math.max(-limit, residual[i * f + k]))
   }
   const covariance = new Float64Array(f * f)
-  const weights = new Float64Array(f * f)
+  const weights = new Float64Array(f)
   for (let i = 0; i < n; i++) {
     if (near[i] < 1e-6) continue
     for (let a = 0; a < f; a++) {
       if (!known[i * f + a]) continue
+      weights[a] += near[i]
       const left = near[i] * held[i * f + a]
-      for (let b = 0; b <= a; b++) {
-        if (!known[i * f + b]) continue
-        covariance[a * f + b] += left * held[i * f + b]
-        weights[a * f + b] += near[i]
-      }
+      for (let b = 0; b <= a; b++) covariance[a * f + b] += left * held[i * f + b]
     }
   }
+  // Sums of products over the same stars, each feature by its own weight: never indefinite, whatever is missing.
   for (let a = 0; a < f; a++)
     for (let b = 0; b <= a; b++) {
-      const w = weights[a * f + b]
-      const value = w > 1e-6 ? covariance[a * f + b] / w : 0
+      const value = covariance[a * f + b] / Math.sqrt(weights[a] * weights[b])
       covariance[a * f + b] = a === b ? value + (options.floor * widths[a]) ** 2 : (1 - options.shrinkage) * value
       covariance[b * f + a] = covariance[a * f + b]
     }
