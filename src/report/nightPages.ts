@@ -190,11 +190,7 @@ function targetTable(flow: Flow, views: readonly TargetView[], options: NightPag
         cell(quality, { draw: (area) => [mark(area.x + 4, area.y + area.height / 2 - 0.5, 2.6, STANDINGS[quality])] }),
         cell(count > 1 ? `${view.name} (${count})` : view.name, targetLink(options, view.name)),
         cell(typeFound(view.type), { bold: view.type.state === 'typed' }),
-        cell(
-          view.type.low68 === undefined || view.type.high68 === undefined
-            ? ''
-            : typeRange(view.type.low68, view.type.high68),
-        ),
+        cell(rangeText(view)),
         cell(expected ?? ''),
         cell(probability === undefined ? '' : percent(probability), { bold: surely }),
         cell(view.summary ? snrText(view.summary) : (best.spectrum.snr.visual?.toFixed(0) ?? '')),
@@ -210,6 +206,12 @@ function targetTable(flow: Flow, views: readonly TargetView[], options: NightPag
       colour: PALETTE.quiet,
     },
   )
+}
+
+/** The 68 % range of a star that was typed; nothing where no ordinary type fits. */
+function rangeText({ type: { state, low68, high68 } }: TargetView): string {
+  const isTyped = state === 'typed' || state === 'wide'
+  return !isTyped || low68 === undefined || high68 === undefined ? '' : typeRange(low68, high68)
 }
 
 function expectedFigure(flow: Flow, views: readonly TargetView[], { face }: NightPageOptions): void {

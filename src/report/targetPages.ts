@@ -44,8 +44,8 @@ function exposureTable(flow: Flow, view: TargetView): void {
   const range = [Math.min(...first), Math.max(...last)] as const
   flow.table(
     [
-      { head: 'file', width: 1.3, share: true, middle: true },
-      { head: 'start', width: 78 },
+      { head: 'file', width: 2, share: true, middle: true },
+      { head: 'start', width: 70 },
       { head: 'time, s', width: 36, align: 'end' },
       { head: 'S/N 5500', width: 36, align: 'end' },
       { head: 'velocity, km/s', width: 58, align: 'end' },

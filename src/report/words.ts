@@ -41,9 +41,12 @@ export function shortNumber(value: number): string {
 /** A typographic minus sign in front of a negative number. */
 export const minus = (text: string): string => text.replace(/^-/, '−')
 
-/** A number with a sign, '+1.2' or '−0.4'. */
-export const signed = (value: number, decimals: number): string =>
-  (value >= 0 ? '+' : '') + minus((value + 0).toFixed(decimals))
+/** A number with a sign, '+1.2' or '−0.4'; what rounds to nothing has none. */
+export function signed(value: number, decimals: number): string {
+  const text = value.toFixed(decimals)
+  if (Number(text) === 0) return text.replace('-', '')
+  return (value > 0 ? '+' : '') + minus(text)
+}
 
 /** The type found in as few words as possible: 'G2 V', 'about F8–G9', 'white dwarf', 'not typed'. */
 export function typeFound(type: TypePosterior): string {

@@ -8,6 +8,7 @@ import {
   featureWord,
   percent,
   shortNumber,
+  signed,
   typeNumberOf,
   typeRange,
   typeWord,
@@ -41,6 +42,10 @@ describe('words', () => {
     expect(withError(-123.4, 12)).toBe('−123 ± 12')
     expect(withError(5, undefined)).toBe('5')
     expect([0, 12345.6, 0.00001, 3.14159].map(shortNumber)).toEqual(['0', '12346', '1.00e-5', '3.14'])
+  })
+
+  it('signs a number, but not one that rounds to nothing', () => {
+    expect([1.26, -0.44, 0.04, -0.04].map((value) => signed(value, 1))).toEqual(['+1.3', '−0.4', '0.0', '0.0'])
   })
 
   it('writes feature keys as a person does', () => {
