@@ -8,7 +8,10 @@ export interface Continuum {
   readonly isPseudo: boolean
   /** Share of the usable samples that the level rests on, 0 to 1. */
   readonly supported: number
-  /** shape (n) [flux unit]: pixel noise, 1 σ, from the file or measured (correlation allowed for). */
+  /**
+   * shape (n) [flux unit]: noise, 1 σ, from the file or measured, such that an average of N samples has noise/√N (noise
+   * that a resampling has smoothed is scaled up; crowded stars above S/N 100 may have it too high, never too low).
+   */
   readonly noise: Float64Array
   readonly noiseFrom: 'file' | 'measured'
 }
