@@ -21,7 +21,7 @@ const IMPORTANCE: Readonly<Record<TableName, readonly string[]>> = {
       ' ',
     ),
   lines: 'centre centre_err kind ew ew_err candidates origin object file significance fwhm hdu row'.split(' '),
-  findings: 'level code text file object hdu row value limit unit'.split(' '),
+  findings: 'level code text file object hdu row'.split(' '),
   frames:
     'file kind object quality exptime_s level_median setup findings date_obs airmass kind_how spectra arc_lines'.split(
       ' ',
@@ -34,6 +34,8 @@ const IMPORTANCE: Readonly<Record<TableName, readonly string[]>> = {
 
 /** Least width of a text column that is cut, and most width of one that is not the last. */
 const LEAST = 12
+/** Least width of a column of sentences, which is wrapped. */
+const SENTENCE = 30
 const MOST = 32
 const GAP = 2
 
@@ -109,14 +111,21 @@ function chooseColumns(name: TableName, rows: readonly Row[], width: number): Ch
   let used = -GAP
   const kept: (Chosen & { readonly full: number })[] = []
   for (const { spec, cells, full } of wanted) {
-    const least = spec.kind === 'text' ? Math.min(full, Math.max(LEAST, Math.min(columnWidth(spec.name), full))) : full
+    const least =
+      spec.name === 'text' || spec.name === 'reason'
+        ? Math.min(full, SENTENCE)
+        : spec.kind === 'text'
+          ? Math.min(full, Math.max(LEAST, Math.min(columnWidth(spec.name), full)))
+          : full
     if (used + GAP + least > width && kept.length > 0) continue
     kept.push({ spec, cells, full, width: Math.min(least, Math.max(1, width)) })
     used += GAP + least
   }
   let spare = width - used
-  const widened = kept.map((column) => {
-    const most = column.spec.name === 'text' || column.spec.name === 'reason' ? Infinity : MOST
+  const isSentence = ({ spec }: Chosen): boolean => spec.name === 'text' || spec.name === 'reason'
+  const inTurn = [...kept.filter((column) => !isSentence(column)), ...kept.filter(isSentence)]
+  const widened = inTurn.map((column) => {
+    const most = isSentence(column) ? Infinity : MOST
     const more = Math.max(0, Math.min(spare, Math.min(column.full, most) - column.width))
     spare -= more
     return { spec: column.spec, cells: column.cells, width: column.width + more }
