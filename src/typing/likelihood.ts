@@ -20,6 +20,8 @@ export interface LikelihoodGrid {
   readonly weakness: Float64Array
   /** shape (t × c): how much farther the star would be with metals like the Sun's. */
   readonly weaknessGain: Float64Array
+  /** Squared distance from a spectrum without any feature. */
+  readonly featureless: number
   /** Type number whose scatter was used. */
   readonly scatterType: number
   /** Exponent on the likelihood at that type. */
@@ -27,10 +29,11 @@ export interface LikelihoodGrid {
 }
 
 /** The scatter is taken anew at the type found until that moves by less than this many subclasses, so often at most. */
-const SETTLED = 2
+const SETTLED = 3
 const ROUNDS = 4
-/** Step in the grid's types while the scatter is settled. */
-const COARSE = 3
+/** Steps in the grid's types and classes while the scatter is settled. */
+const COARSE = { type: 4, luminosity: 2 } as const
+const EVERY = { type: 1, luminosity: 1 } as const
 
 /**
  * Log likelihood of the measured features over type and class: Student's t about the expected values, raised to the
@@ -53,15 +56,13 @@ export function likelihoodGrid(
   }
   const { z, share } = zoneAt(zones, scatterType)
   const tempering = (1 - share) * zones[z].tempering + share * zones[Math.min(z + 1, zones.length - 1)].tempering
-  const { distance, weakness, weaknessGain } = distances(
-    calibration,
-    vector,
-    scatterFactor(calibration, vector, scatterType),
-    1,
-  )
+  const lower = scatterFactor(calibration, vector, scatterType)
+  const { distance, weakness, weaknessGain } = distances(calibration, vector, lower, EVERY)
+  const bare = forwardSolve(lower, vector.index.length, vector.value, new Float64Array(vector.index.length))
+  const featureless = bare.reduce((sum, x) => sum + x * x, 0)
   const half = 0.5 * (degreesOfFreedom + vector.index.length)
   const logLikelihood = distance.map((d) => -tempering * half * Math.log1p(d / degreesOfFreedom))
-  return { logLikelihood, distance, weakness, weaknessGain, scatterType, tempering }
+  return { logLikelihood, distance, weakness, weaknessGain, featureless, scatterType, tempering }
 }
 
 /** Cholesky factor of the features' covariance for a star near a type. */
@@ -97,14 +98,14 @@ const WEAKNESS = { richest: -0.5, weakest: 3, spread: 0.6 } as const
 const HALO = { spread: 0.3, price: 9 } as const
 
 /**
- * Squared Mahalanobis distances of all cells, or of every `step`-th type's with Infinity for the others, each at the metals
+ * Squared Mahalanobis distances of the cells at every `step`-th type and class, with Infinity for the others, each at the metals
  * that bring the star nearest, a penalty for unusual metals included. shapes (t × c).
  */
 function distances(
   { features, types, classes, mean, metalWeak, halo }: DecodedCalibration,
   { index, value }: FeatureVector,
   lower: Float64Array,
-  step: number,
+  step: { readonly type: number; readonly luminosity: number },
 ): Pick<LikelihoodGrid, 'distance' | 'weakness' | 'weaknessGain'> {
   const f = features.length
   const c = classes.length
@@ -115,10 +116,10 @@ function distances(
   const residual = new Float64Array(p)
   const weak = direction(p)
   const far = direction(p)
-  for (let i = 0; i < types.length; i += step) {
+  for (let i = 0; i < types.length; i += step.type) {
     aim(weak, metalWeak, { index, lower, row: i * f })
     aim(far, halo, { index, lower, row: i * f })
-    for (let j = 0; j < c; j++) {
+    for (let j = 0; j < c; j += step.luminosity) {
       const at = i * c + j
       const row = at * f
       for (let a = 0; a < p; a++) residual[a] = value[a] - mean[row + index[a]]

@@ -21,7 +21,7 @@ const WIDE = 5
 /** A 95 % range beyond this many subclasses says nothing. */
 const SAYS_NOTHING = 45
 /** Share of ordinary stars that fit worse than the limit for `outside`. */
-const OUTSIDE = 0.004
+const OUTSIDE = 0.01
 
 /**
  * The type of a spectrum as a posterior over type and luminosity class, flat in type and with the calibration's stated
@@ -50,7 +50,12 @@ export function typeSpectrum(input: TypingInput, calibration: Calibration): Type
       `the features tell no type: its 95 % range spans ${(figures.high95 - figures.low95).toFixed(0)} subclasses`,
     )
   const best = bestCell(decoded, distance)
-  const fit = fitOf(decoded, vector, best, distance[best.type * decoded.classes.length + best.luminosity])
+  const nearest = distance[best.type * decoded.classes.length + best.luminosity]
+  if (likelihood.featureless < nearest)
+    return none(
+      `no line stands out: a spectrum without features is nearer (squared distance ${likelihood.featureless.toFixed(1)}) than any type (${nearest.toFixed(1)})`,
+    )
+  const fit = fitOf(decoded, vector, best, nearest)
   const width68 = figures.high68 - figures.low68
   const isOutside = fit.probability < OUTSIDE
   const luminosityClass = luminosityName(figures)
