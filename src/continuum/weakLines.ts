@@ -124,7 +124,9 @@ const RED = [Math.log(5900), Math.log(9000)] as const
 const BLUE = [Math.log(4500), Math.log(5700)] as const
 
 /** Part of what is taken off that may have been lines after all. */
-const FLOOR_DOUBT = 0.5
+const FLOOR_DOUBT = 0.1
+/** Redward the fall may be slower than λ⁻⁶ by this factor; what exceeds it is Paschen lines, bands or the air. */
+const RED_EXCESS = 3
 
 /**
  * Takes off what does not fall as λ⁻⁶ from the blue to the red: smooth noise, ripples of a flux calibration and the like
@@ -143,6 +145,8 @@ function subtractFloor(integral: Float64Array, place: Float64Array): number {
   const fall = median(blue.map(steep)) / median(red.map(steep))
   const floor = Math.max(0, (ofRed - fall * ofBlue) / (1 - fall))
   for (let b = 0; b < place.length; b++) integral[b] = known ? integral[b] - floor * steep(b) : integral[b] * 0
+  const most = RED_EXCESS * Math.max(0, median(blue.map((b) => integral[b])))
+  if (known) for (let b = 0; b < place.length; b++) if (place[b] > BLUE[1] && integral[b] > most) integral[b] = most
   return known ? floor : 0
 }
 
