@@ -6,6 +6,7 @@ import { findLines } from '../features/findLines.ts'
 import { measureLines } from '../features/measureLines.ts'
 import type { Measurement } from '../features/types.ts'
 import { checkSpectrum } from '../quality/checkSpectrum.ts'
+import { countsPerSecond } from '../quality/countsPerSecond.ts'
 import { qualityOf } from '../quality/qualityOf.ts'
 import { setupName } from '../quality/setupName.ts'
 import type { SpectrumOutcome } from '../quality/types.ts'
@@ -13,9 +14,11 @@ import type { Spectrum } from '../spectrum/types.ts'
 import { withinRange } from '../spectrum/withinRange.ts'
 import { BANDS } from '../tables/bands.ts'
 import { CALIBRATION } from '../tables/calibration.ts'
+import { KIND_CRITERIA } from '../tables/criteria.ts'
 import { ALL_LINES, MEASURED_LINES } from '../tables/lines.ts'
 import { PATTERNS } from '../tables/patterns.ts'
 import { expectedSpectrum } from '../typing/expected.ts'
+import { recogniseKinds, withKinds } from '../typing/peculiar/recogniseKinds.ts'
 import type { TypePosterior } from '../typing/types.ts'
 import { typeSpectrum } from '../typing/typeSpectrum.ts'
 import { type TypingInput, typingInput } from '../typing/typingInput.ts'
@@ -53,7 +56,7 @@ export function analyseSpectrum(whole: Spectrum, options: AnalyseOptions): Spect
   const type = !isOptical
     ? untyped(`${optical.wavelength.length} samples lie between ${OPTICAL[0]} and ${OPTICAL[1]} Å`)
     : spectrum.role === 'star' || spectrum.role === 'unknown'
-      ? typeSpectrum(star.typing, CALIBRATION)
+      ? withKinds(typeSpectrum(star.typing, CALIBRATION), recogniseKinds({ spectrum, ...star }, KIND_CRITERIA))
       : untyped(`the header says this is no star but ${spectrum.role === 'lamp' ? 'a lamp' : spectrum.role}`)
   const lines = measureLines(spectrum, continuum, restFrame, { lines: MEASURED_LINES, resolution: resolution.fwhm })
   const measurements = [...star.typing.measurements, ...lines]
@@ -127,6 +130,7 @@ function outcomeOf(spectrum: Spectrum, found: Found, options: AnalyseOptions): S
     inForce.thresholds,
   )
   const scale = [...found.findings, ...checkMedium(spectrum, restFrame, zeroPoint ? { zeroPoint } : {})]
+  const rate = countsPerSecond(found.given)
   const { facts } = spectrum
   const { wavelength } = found.whole
   return {
@@ -153,6 +157,7 @@ function outcomeOf(spectrum: Spectrum, found: Found, options: AnalyseOptions): S
     quality: qualityOf([...check.findings, ...scale]),
     findings: [...check.findings, ...scale],
     typing: found.typing,
+    ...(rate === undefined ? {} : { countsPerSecond: rate }),
     ...(options.wantsAllLines ? { lines: findLines(spectrum, continuum, restFrame, { lines: ALL_LINES }) } : {}),
     ...(options.wantsCurves ? { curves: thinnedCurves(spectrum, continuum, restFrame, expectedOf(type)) } : {}),
   }

@@ -1,4 +1,5 @@
-import type { Finding } from '../findings/types.ts'
+import { READING_RULES } from '../findings/reading.ts'
+import type { Finding, FindingRule } from '../findings/types.ts'
 import type { Thresholds } from '../tables/types.ts'
 import { checkCoverage } from './checkCoverage.ts'
 import { checkJoins } from './checkJoins.ts'
@@ -21,8 +22,14 @@ export interface SpectrumCheck {
   readonly quality: Quality
 }
 
-/** Codes of the reader whose matter makes a spectrum doubtful, not only noteworthy. */
-const GRAVE_NOTES: ReadonlySet<string> = new Set(['truncated-data', 'data-cut', 'checksum-wrong', 'gzip-cut'])
+/** A remark of the reader is as grave as its rule says; one without a rule (damage of the file's frame) is a note. */
+function graveness(code: string): Finding['level'] {
+  return (READING_RULES as Readonly<Record<string, FindingRule | undefined>>)[code]?.level === 'note'
+    ? 'note'
+    : code in READING_RULES
+      ? 'doubt'
+      : 'note'
+}
 
 /**
  * Every check of one spectrum: signal-to-noise, coverage, saturation, dead and hit samples, sky and telluric residues,
@@ -43,7 +50,7 @@ export function checkSpectrum(input: SpectrumInput, thresholds: Thresholds): Spe
     ...checkScale(input, samples, limit),
     ...checkStar(input, limit),
     ...spectrum.notes.map(({ code, text }): Finding => ({
-      level: GRAVE_NOTES.has(code) ? 'doubt' : 'note',
+      level: graveness(code),
       code,
       text,
     })),
