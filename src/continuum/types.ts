@@ -10,7 +10,7 @@ export interface Continuum {
   readonly supported: number
   /**
    * shape (n) [flux unit]: noise, 1 σ, from the file or measured, such that an average of N samples has noise/√N (noise
-   * that a resampling has smoothed is scaled up; crowded stars above S/N 100 may have it too high, never too low).
+   * that a resampling has smoothed is scaled up; in crowded stars above S/N 100 it may come out too high, or too low where noise was resampled).
    */
   readonly noise: Float64Array
   readonly noiseFrom: 'file' | 'measured'

@@ -2,6 +2,7 @@ import { fitContinuum } from '../continuum/fitContinuum.ts'
 import type { Continuum } from '../continuum/types.ts'
 import type { Finding } from '../findings/types.ts'
 import { barycentricCorrection } from '../ephemeris/barycentricCorrection.ts'
+import { continuumFindings } from '../features/continuumFindings.ts'
 import { findLines } from '../features/findLines.ts'
 import { measureLines } from '../features/measureLines.ts'
 import type { Measurement } from '../features/types.ts'
@@ -22,7 +23,7 @@ import { recogniseKinds, withKinds } from '../typing/peculiar/recogniseKinds.ts'
 import type { TypePosterior } from '../typing/types.ts'
 import { typeSpectrum } from '../typing/typeSpectrum.ts'
 import { type TypingInput, typingInput } from '../typing/typingInput.ts'
-import { OXYGEN_BANDS, SKY_LINES } from '../tables/sky.ts'
+import { OXYGEN_BANDS, SKY_LINES, TELLURIC_BANDS } from '../tables/sky.ts'
 import { checkMedium } from '../velocity/checkMedium.ts'
 import { alignStar } from '../velocity/alignStar.ts'
 import { measureResolution } from '../velocity/measureResolution.ts'
@@ -56,7 +57,7 @@ export function analyseSpectrum(whole: Spectrum, options: AnalyseOptions): Spect
   const type = !isOptical
     ? untyped(`${optical.wavelength.length} samples lie between ${OPTICAL[0]} and ${OPTICAL[1]} Å`)
     : spectrum.role === 'star' || spectrum.role === 'unknown'
-      ? withKinds(typeSpectrum(star.typing, CALIBRATION), recogniseKinds({ spectrum, ...star }, KIND_CRITERIA))
+      ? withKinds(typeSpectrum(star.typing, CALIBRATION), recogniseKinds(star, KIND_CRITERIA))
       : untyped(`the header says this is no star but ${spectrum.role === 'lamp' ? 'a lamp' : spectrum.role}`)
   const lines = measureLines(spectrum, continuum, restFrame, { lines: MEASURED_LINES, resolution: resolution.fwhm })
   const measurements = [...star.typing.measurements, ...lines]
@@ -129,7 +130,11 @@ function outcomeOf(spectrum: Spectrum, found: Found, options: AnalyseOptions): S
     },
     inForce.thresholds,
   )
-  const scale = [...found.findings, ...checkMedium(spectrum, restFrame, zeroPoint ? { zeroPoint } : {})]
+  const scale = [
+    ...found.findings,
+    ...continuumFindings(continuum),
+    ...checkMedium(spectrum, restFrame, zeroPoint ? { zeroPoint } : {}),
+  ]
   const rate = countsPerSecond(found.given)
   const { facts } = spectrum
   const { wavelength } = found.whole
@@ -158,7 +163,15 @@ function outcomeOf(spectrum: Spectrum, found: Found, options: AnalyseOptions): S
     findings: [...check.findings, ...scale],
     typing: found.typing,
     ...(rate === undefined ? {} : { countsPerSecond: rate }),
-    ...(options.wantsAllLines ? { lines: findLines(spectrum, continuum, restFrame, { lines: ALL_LINES }) } : {}),
+    ...(options.wantsAllLines
+      ? {
+          lines: findLines(spectrum, continuum, restFrame, {
+            lines: ALL_LINES,
+            telluric: TELLURIC_BANDS,
+            resolution: resolution.fwhm,
+          }),
+        }
+      : {}),
     ...(options.wantsCurves ? { curves: thinnedCurves(spectrum, continuum, restFrame, expectedOf(type)) } : {}),
   }
 }
