@@ -21,8 +21,13 @@ const STEP = 1.5
 function made(flux: (wavelength: number) => number, samples = 2000, step = STEP): Spectrum {
   const { spectrum } = madeSpectrum({ kind: 'bare', from: START, to: START + 3000, step: STEP })
   const wavelength = Float64Array.from({ length: samples }, (_, i) => START + step * i)
-  const { sigma: _sigma, ...rest } = spectrum
-  return { ...rest, wavelength, flux: wavelength.map(flux), usable: new Uint8Array(samples).fill(1) }
+  return {
+    ...spectrum,
+    sigma: undefined,
+    wavelength,
+    flux: wavelength.map(flux),
+    usable: new Uint8Array(samples).fill(1),
+  }
 }
 
 function inputOf(spectrum: Spectrum): TypingInput {
