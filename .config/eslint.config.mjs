@@ -16,7 +16,7 @@ export default tseslint.config(
       '@typescript-eslint/no-floating-promises': 'error',
       '@typescript-eslint/consistent-type-imports': 'error',
       '@typescript-eslint/no-explicit-any': 'error',
-      '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_' }],
+      '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_' }],
       'no-restricted-imports': ['error', { patterns: [{ regex: '^(fs|path|os|zlib|url|crypto|child_process|worker_threads)$', message: 'use the node: protocol' }] }],
     },
   },

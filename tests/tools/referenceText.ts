@@ -31,7 +31,10 @@ export function columnTables(): string {
 
 /** Commands and options as `--help` has them. */
 export function commandTables(): string {
-  const commands = COMMANDS.map((name) => [`\`darkline ${name} ${COMMAND_HELP[name].arguments}\``.replace(' `', '`'), COMMAND_HELP[name].describe])
+  const commands = COMMANDS.map((name) => [
+    `\`darkline ${name} ${COMMAND_HELP[name].arguments}\``.replace(' `', '`'),
+    COMMAND_HELP[name].describe,
+  ])
   const options = Object.entries(OPTION_HELP).map(([name, help]) => [
     `\`--${name}\``,
     help.for ? help.for.map((c) => `\`${c}\``).join(', ') : 'all',
@@ -43,7 +46,14 @@ export function commandTables(): string {
 function findingTable(rules: Readonly<Record<string, FindingRule>>): string {
   return table(
     ['code', 'level', 'what it says', 'what to do', 'unit', 'source'],
-    Object.entries(rules).map(([code, r]) => [`\`${code}\``, r.level, r.meaning, r.remedy ?? '–', r.unit ?? '–', r.source ?? '–']),
+    Object.entries(rules).map(([code, r]) => [
+      `\`${code}\``,
+      r.level,
+      r.meaning,
+      r.remedy ?? '–',
+      r.unit ?? '–',
+      r.source ?? '–',
+    ]),
   )
 }
 
@@ -51,10 +61,35 @@ const citation = (key: string): string => (SOURCES as Readonly<Record<string, So
 
 /** The whole longer reference. */
 export function referencePage(): string {
-  const settings = SETTING_SPECS.map((s) => [`\`${s.key}\``, JSON.stringify(s.default), s.unit ?? '–', s.meaning, s.source])
-  const bands = BANDS.map((b) => [`\`${b.feature}\``, b.species, b.unit, range(b.blue), range(b.band), range(b.red), citation(b.source)])
-  const lines = ALL_LINES.map((l) => [`\`${l.feature}\``, l.species, l.wavelength.toFixed(3), l.levels || '–', `${citation(l.source)}${l.fromMemory ? ' (from memory)' : ''}`])
-  const sources = Object.entries(SOURCES as Readonly<Record<string, Source>>).map(([key, s]) => [key, s.citation, s.doi ?? '–', `${s.changed ?? ''}${s.fromMemory ? ' from memory' : ''}`.trim() || '–'])
+  const settings = SETTING_SPECS.map((s) => [
+    `\`${s.key}\``,
+    JSON.stringify(s.default),
+    s.unit ?? '–',
+    s.meaning,
+    s.source,
+  ])
+  const bands = BANDS.map((b) => [
+    `\`${b.feature}\``,
+    b.species,
+    b.unit,
+    range(b.blue),
+    range(b.band),
+    range(b.red),
+    citation(b.source),
+  ])
+  const lines = ALL_LINES.map((l) => [
+    `\`${l.feature}\``,
+    l.species,
+    l.wavelength.toFixed(3),
+    l.levels || '–',
+    `${citation(l.source)}${l.fromMemory ? ' (from memory)' : ''}`,
+  ])
+  const sources = Object.entries(SOURCES as Readonly<Record<string, Source>>).map(([key, s]) => [
+    key,
+    s.citation,
+    s.doi ?? '–',
+    `${s.changed ?? ''}${s.fromMemory ? ' from memory' : ''}`.trim() || '–',
+  ])
   return `# Reference
 
 Made by \`npm run reference\` from the tables the program uses; do not edit by hand.
@@ -115,5 +150,9 @@ const MARKED = /<!-- (columns|commands):begin -->[\s\S]*?<!-- \1:end -->/g
 
 /** The README with its generated parts made anew; everything outside the marks stays as it is. */
 export function readmeWith(text: string): string {
-  return text.replace(MARKED, (_, part: string) => `<!-- ${part}:begin -->\n${part === 'columns' ? columnTables() : commandTables()}\n<!-- ${part}:end -->`)
+  return text.replace(
+    MARKED,
+    (_, part: string) =>
+      `<!-- ${part}:begin -->\n${part === 'columns' ? columnTables() : commandTables()}\n<!-- ${part}:end -->`,
+  )
 }
