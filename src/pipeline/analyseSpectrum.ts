@@ -57,7 +57,7 @@ export function analyseSpectrum(whole: Spectrum, options: AnalyseOptions): Spect
   const type = !isOptical
     ? untyped(`${optical.wavelength.length} samples lie between ${OPTICAL[0]} and ${OPTICAL[1]} Å`)
     : spectrum.role === 'star' || spectrum.role === 'unknown'
-      ? withKinds(typeSpectrum(star.typing, CALIBRATION), recogniseKinds(star, KIND_CRITERIA))
+      ? withKinds(typeSpectrum(star.typing, CALIBRATION), recogniseKinds(star, KIND_CRITERIA, CALIBRATION))
       : untyped(`the header says this is no star but ${spectrum.role === 'lamp' ? 'a lamp' : spectrum.role}`)
   const lines = measureLines(spectrum, continuum, restFrame, { lines: MEASURED_LINES, resolution: resolution.fwhm })
   const measurements = [...star.typing.measurements, ...lines]

@@ -311,3 +311,108 @@ export interface TelluricBand {
   readonly range: readonly [number, number]
   readonly source: SourceKey
 }
+
+/** A feature between two side bands [Å, air, rest], and its middle. */
+export interface FeatureWindows {
+  readonly wavelength: number
+  readonly band: readonly [number, number]
+  readonly blue: readonly [number, number]
+  readonly red: readonly [number, number]
+}
+
+/** Windows that kinds of objects are recognised by; 'wide' ones hold the wings of pressure-broadened lines. */
+export type KindWindow =
+  | 'HalphaWide'
+  | 'HbetaWide'
+  | 'HgammaWide'
+  | 'Halpha'
+  | 'HalphaCore'
+  | 'Hbeta'
+  | 'HbetaCore'
+  | 'Hgamma'
+  | 'HgammaCore'
+  | 'HdeltaCore'
+  | 'H8'
+  | 'H9'
+  | 'H10'
+  | 'H11'
+  | 'CaK'
+  | 'HeI4026'
+  | 'HeI4471'
+  | 'HeI4471Wide'
+  | 'HeI5876'
+  | 'HeI5876Wide'
+  | 'HeII4542'
+  | 'HeII4686'
+  | 'HeII4686Wide'
+  | 'HeII5411'
+  | 'G4300'
+  | 'Mgb'
+  | 'NaD'
+  | 'TiO6230'
+  | 'KI7680'
+  | 'OII3727'
+  | 'OIII4959'
+  | 'OIII5007'
+  | 'HalphaNII'
+  | 'SII6725'
+
+/** Limits that kinds of objects are recognised by (`criteria.ts`). */
+export type KindLimit =
+  | 'hotMagnesium'
+  | 'hotCalcium'
+  | 'hotTitanium'
+  | 'compactSigma'
+  | 'seriesHydrogen'
+  | 'seriesEnd'
+  | 'seriesWidth'
+  | 'seriesFaint'
+  | 'seriesFaintHydrogen'
+  | 'seriesFaintFwhm'
+  | 'seriesEndFwhm'
+  | 'winged'
+  | 'wingedHydrogen'
+  | 'strongHydrogen'
+  | 'ionisedHelium'
+  | 'ionisedHeliumWings'
+  | 'neutralHelium'
+  | 'neutralHeliumWide'
+  | 'heliumNoHydrogen'
+  | 'brownRise'
+  | 'brownPotassium'
+  | 'brownSteep'
+  | 'emissionHalpha'
+  | 'emissionHbeta'
+  | 'emissionCool'
+  | 'emissionCoolBlue'
+  | 'emissionPair'
+  | 'emissionSigma'
+  | 'forbiddenSigma'
+  | 'forbiddenStrength'
+  | 'forbiddenRatio'
+  | 'forbiddenLines'
+  | 'gasCool'
+  | 'nebularHbeta'
+  | 'nebularOxygen'
+  | 'redshiftMaximum'
+  | 'galaxyTitanium'
+  | 'galaxyTitaniumMost'
+  | 'galaxyBreak'
+  | 'galaxyCH'
+  | 'galaxyHydrogen'
+  | 'carbonStep'
+  | 'carbonSigma'
+  | 'carbonTitanium'
+  | 'compositeHydrogen'
+  | 'compositeMagnesium'
+  | 'compositeTitanium'
+  | 'metallicSpread'
+  | 'metallicSigma'
+
+/** All that kinds of objects are recognised by, with the citation of each word's criterion. */
+export interface KindCriteria {
+  readonly windows: Readonly<Record<KindWindow, FeatureWindows>>
+  readonly limits: Readonly<Record<KindLimit, Threshold>>
+  /** By the word as it stands in `peculiar`. */
+  readonly sources: Readonly<Record<string, string>>
+}
