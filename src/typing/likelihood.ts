@@ -24,6 +24,8 @@ export interface LikelihoodGrid {
   readonly featureless: number
   /** Type number whose scatter was used. */
   readonly scatterType: number
+  /** shape (p × p): Cholesky factor of the covariance used. */
+  readonly factor: Float64Array
   /** Exponent on the likelihood at that type. */
   readonly tempering: number
 }
@@ -62,7 +64,7 @@ export function likelihoodGrid(
   const featureless = bare.reduce((sum, x) => sum + x * x, 0)
   const half = 0.5 * (degreesOfFreedom + vector.index.length)
   const logLikelihood = distance.map((d) => -tempering * half * Math.log1p(d / degreesOfFreedom))
-  return { logLikelihood, distance, weakness, weaknessGain, featureless, scatterType, tempering }
+  return { logLikelihood, distance, weakness, weaknessGain, featureless, scatterType, factor: lower, tempering }
 }
 
 /** Cholesky factor of the features' covariance for a star near a type. */

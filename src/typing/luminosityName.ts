@@ -5,8 +5,9 @@ const NAMES = ['I', 'II', 'III', 'IV', 'V'] as const
 const NAMED = 0.5
 
 /**
- * The luminosity class that the posterior names: the likeliest one of the likeliest group (I; II–III; IV–V); undefined
- * where no group reaches one half, since then the spectrum cannot tell.
+ * The luminosity class that the posterior names: its median over I to V, as the type is the median over types; undefined
+ * where neither supergiant (I), giant (II–III) nor dwarf (IV–V) reaches one half, since then the spectrum cannot tell. Between a
+ * giant and a dwarf about equally likely stands IV.
  */
 export function luminosityName({
   probDwarf,
@@ -14,12 +15,11 @@ export function luminosityName({
   probSupergiant,
   classProbability,
 }: Pick<PosteriorFigures, 'probDwarf' | 'probGiant' | 'probSupergiant' | 'classProbability'>): string | undefined {
-  const groups = [
-    { probability: probSupergiant, members: [0] },
-    { probability: probGiant, members: [1, 2] },
-    { probability: probDwarf, members: [3, 4] },
-  ].sort((a, b) => b.probability - a.probability)
-  if (!(groups[0].probability >= NAMED)) return undefined
-  const [member] = [...groups[0].members].sort((a, b) => classProbability[b] - classProbability[a])
-  return NAMES[member]
+  if (!(Math.max(probDwarf, probGiant, probSupergiant) >= NAMED)) return undefined
+  let sum = 0
+  for (let j = 0; j < classProbability.length; j++) {
+    sum += classProbability[j]
+    if (sum >= 0.5) return NAMES[j]
+  }
+  return undefined
 }

@@ -69,8 +69,10 @@ function moved(place: (wavelength: number, middle: number) => number): Degrade {
 
 /** Reddening in proportion to λ^−1.3 about 5500 Å (a fair fit to the mean law from 3500 to 7500 Å, from memory). */
 const reddened = (av: number): Degrade => scaled((w) => 10 ** (-0.4 * av * (5500 / w) ** 1.3))
-/** A steep blaze with a ripple of 5 %, 350 Å long. */
-const response = scaled((w) => Math.exp(-(((w - 5600) / 1500) ** 2)) * (1 + 0.05 * Math.sin((2 * Math.PI * w) / 350)))
+/** A steep blaze: a tenth of its peak at both ends of the atlas. */
+const blaze = scaled((w) => Math.exp(-(((w - 5600) / 1300) ** 2)))
+/** Fringes of 3 %, 350 Å long, that no flat field took out. */
+const ripple = scaled((w) => 1 + 0.03 * Math.sin((2 * Math.PI * w) / 350))
 
 const scattered: Degrade = (spectrum) => {
   const light = 0.05 * median(spectrum.flux)
@@ -98,7 +100,8 @@ export const DEGRADATIONS: readonly Degradation[] = [
       [6400, 6750],
     ] as const
   ).map(([lo, hi]) => ({ group: 'only', name: `${lo}–${hi} Å`, degrade: cut(lo, hi) })),
-  { group: 'response', name: 'blaze and ripple', degrade: response },
+  { group: 'response', name: 'steep blaze', degrade: blaze },
+  { group: 'response', name: '3 % ripple', degrade: ripple },
   ...[2, 5].map((av) => ({ group: 'reddening', name: `A_V = ${av}`, degrade: reddened(av) })),
   ...[-600, -200, 200, 600].map((v) => ({
     group: 'velocity',

@@ -13,7 +13,7 @@ import {
   leftOutFor,
 } from './buildCalibration.ts'
 
-const EXPONENTS = Array.from({ length: 24 }, (_, i) => Number((0.12 * 1.06 ** i).toPrecision(3)))
+const EXPONENTS = Array.from({ length: 30 }, (_, i) => Number((0.08 * 1.06 ** i).toPrecision(3)))
 /** Share of stars that the 68 % range shall hold. */
 const WANTED = 0.68
 /** Subclasses: width of the Gaussian that weights the stars about a zone. */
@@ -69,7 +69,7 @@ function leaveOneOut(model: CalibrationModel): LeftOut[] {
 }
 
 /** Stars nearest to a zone that its quantiles are taken from. */
-const NEIGHBOURS = 60
+const NEIGHBOURS = 40
 
 /** Quantiles of the squared distance per feature; the outermost shares, which few stars reach, from a common tail. */
 function fitQuantiles(stars: readonly LeftOut[], zone: number): number[] {
