@@ -14,6 +14,8 @@ const NEIGHBOUR_LOSS = 1.75
 const LARGEST_SHARE = 0.5
 /** Upper decile of the ratio of the two over three blocks of 50 white samples (by simulation, see the tests). */
 const WHITE_DECILE = 1.3
+/** Stated uncertainties below this share of the scatter are not believed: no detector and no structure explains them. */
+const LEAST_STATED = 1e-3
 /** Below this ratio it is the star's own structure that every other sample sees, not noise. */
 const STRUCTURE = 0.18
 
@@ -41,7 +43,8 @@ export function noiseOf(spectrum: Spectrum): Noise {
     const plain = interpolateBlocks(near.centre, measured, n)
     const correlation = correlationAgainst(stated, near.centre, near.scatter, apart.scatter)
     const sigma = new Float64Array(n)
-    for (let i = 0; i < n; i++) sigma[i] = correlation * (stated[i] > 0 && stated[i] < Infinity ? stated[i] : plain[i])
+    for (let i = 0; i < n; i++)
+      sigma[i] = correlation * (stated[i] > plain[i] * LEAST_STATED && stated[i] < Infinity ? stated[i] : plain[i])
     return { sigma, from: 'file', correlation }
   }
   const correlation = correlationBetween(near.scatter, apart.scatter)
@@ -69,10 +72,24 @@ function blockScatter(flux: Float64Array, usable: Uint8Array, lag: number) {
     for (let i = Math.max(lag, start); i < Math.min(end, n - 2 * lag); i++)
       if (usable[i - lag] & usable[i] & usable[i + lag] & usable[i + 2 * lag])
         buffer[count++] = Math.abs(flux[i - lag] - 3 * flux[i] + 3 * flux[i + lag] - flux[i + 2 * lag])
+    if (count < 5) count = acrossGaps(flux, usable, { start, end, buffer })
     centre[b] = (start + end - 1) / 2
     scatter[b] = count < 5 ? NaN : (medianInPlace(buffer, count) * SIGMA_PER_MAD) / THIRD_DIFFERENCE
   }
   return { centre, scatter }
+}
+
+/** Where masked samples leave no four in a row: third differences of the usable ones as if they were neighbours. */
+function acrossGaps(
+  flux: Float64Array,
+  usable: Uint8Array,
+  { start, end, buffer }: { readonly start: number; readonly end: number; readonly buffer: Float64Array },
+): number {
+  const kept: number[] = []
+  for (let i = start; i < end; i++) if (usable[i]) kept.push(flux[i])
+  for (let k = 3; k < kept.length; k++)
+    buffer[k - 3] = Math.abs(kept[k - 3] - 3 * kept[k - 2] + 3 * kept[k - 1] - kept[k])
+  return Math.max(0, kept.length - 3)
 }
 
 /** From the ratio of the two scatters where the star has the least structure. */

@@ -37,6 +37,11 @@ export const READING_RULES = {
   'layout-guessed': note('what the rows of an image hold is known from a survey, not from the file'),
   'uncertainty-guessed': note('uncertainties are taken for fractions of the flux by their size'),
   'many-flux-columns': note('several flux columns share one wavelength column'),
+  'flux-scaled': note('the fluxes are too far from 1 to reckon with and are divided by a power of ten'),
+  'absurd-flux': doubt(
+    'samples far beyond what any detector counts are taken for missing',
+    'mask them in the reduction',
+  ),
   planes: note('one cell holds several spectra over one set of wavelengths'),
   'cells-cut': note('only part of the samples is filled'),
   'flags-ignored': note('flags that mark every sample are not used'),

@@ -141,7 +141,8 @@ function growingSink({ mostBytes }: InflateLimits): Sink {
       if (full()) return true
       const taken = Math.min(chunk.length, mostBytes - size)
       if (size + taken > held.length) {
-        const grown = new Uint8Array(Math.min(mostBytes, Math.max(size + taken, held.length * 2)))
+        // What the headers announce is set aside at once: pages that are never written cost nothing.
+        const grown = new Uint8Array(Math.min(mostBytes, Math.max(size + taken, held.length * 2, wanted)))
         grown.set(held.subarray(0, size))
         held = grown
       }

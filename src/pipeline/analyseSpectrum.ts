@@ -11,6 +11,7 @@ import { countsPerSecond } from '../quality/countsPerSecond.ts'
 import { qualityOf } from '../quality/qualityOf.ts'
 import { setupName } from '../quality/setupName.ts'
 import type { SpectrumOutcome } from '../quality/types.ts'
+import { moderateFlux } from '../spectrum/moderateFlux.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 import { withinRange } from '../spectrum/withinRange.ts'
 import { BANDS } from '../tables/bands.ts'
@@ -48,7 +49,8 @@ const OPTICAL = [3000, 11000] as const
 const FEWEST_SAMPLES = 8
 
 /** All that one spectrum says: continuum, velocity, lines, type, checks. */
-export function analyseSpectrum(whole: Spectrum, options: AnalyseOptions): SpectrumOutcome {
+export function analyseSpectrum(read: Spectrum, options: AnalyseOptions): SpectrumOutcome {
+  const whole = moderateFlux(read)
   const optical = withinRange(whole, OPTICAL[0], OPTICAL[1])
   const isOptical = optical.wavelength.length >= FEWEST_SAMPLES
   const given = isOptical ? optical : whole

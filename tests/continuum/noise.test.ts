@@ -60,4 +60,13 @@ describe('noiseOf', () => {
     }
     expect(noiseOf(asSpectrum(grid.slice(0, 2), Float64Array.of(1, 2))).sigma.length).toBe(2)
   })
+
+  it('finds the noise between masked samples, and believes no uncertainty a thousand times below the scatter', () => {
+    const { spectrum, sigma } = madeSpectrum({ kind: 'bare', snr: 50 })
+    const every = { ...spectrum, usable: spectrum.usable.map((_, i) => (i % 2 ? 1 : 0)) }
+    const { sigma: between } = noiseOf(every)
+    expect(Math.abs(median(between.map((value, i) => value / sigma[i])) - 1)).toBeLessThan(0.15)
+    const boasting = { ...spectrum, sigma: spectrum.flux.map(() => 1e-300) }
+    expect(Math.abs(median(noiseOf(boasting).sigma.map((value, i) => value / sigma[i])) - 1)).toBeLessThan(0.1)
+  })
 })

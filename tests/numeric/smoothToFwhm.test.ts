@@ -40,4 +40,16 @@ describe('smoothToFwhm', () => {
     expect(copy).toEqual(flux)
     expect(copy).not.toBe(flux)
   })
+
+  it('smooths samples far finer than the profile, if only in a stretch, at no more cost and as exactly', () => {
+    const fine = Float64Array.from({ length: 40_000 }, (_, i) => 5000 + 0.01 * i)
+    const used = new Uint8Array(fine.length).fill(1)
+    const wide = smoothToFwhm(fine, gaussian(fine, 5200, 5), used, { from: 5, to: 9 })
+    const expected = gaussian(fine, 5200, 9).map((value) => (value * 5) / 9)
+    for (let i = 0; i < fine.length; i += 97) expect(Math.abs(wide[i] - expected[i])).toBeLessThan(1e-3)
+    // a thousand samples within a thousandth of an angstrom, then the ordinary step: no kernel can be that long
+    const mixed = Float64Array.from({ length: 2000 }, (_, i) => (i < 1000 ? 5000 + 1.4 * i : 6400 + 1e-9 * i))
+    const flat = smoothToFwhm(mixed, new Float64Array(2000).fill(2), new Uint8Array(2000).fill(1), { from: 2, to: 10 })
+    for (const value of flat) expect(value).toBeCloseTo(2, 12)
+  })
 })
