@@ -94,8 +94,8 @@ export function headerSite(headers: Headers, keywords: KeywordTable, notes: Note
   const [x, y, z] = ['X', 'Y', 'Z'].map((axis) => cardNumber(headers, `OBSGEO-${axis}`))
   const fromCentre = x !== undefined && y !== undefined && z !== undefined ? geodetic(x, y, z) : undefined
   if (fromCentre) return { ...fromCentre, ...named }
-  const latitude = angleFact(headers, keywords, 'latitude', 90, notes)
-  const longitude = angleFact(headers, keywords, 'longitude', 360, notes)
+  const latitude = angleFact(headers, keywords, { fact: 'latitude', most: 90 }, notes)
+  const longitude = angleFact(headers, keywords, { fact: 'longitude', most: 360 }, notes)
   if (latitude && longitude && !(latitude.degrees === 0 && longitude.degrees === 0)) {
     const isWest =
       longitude.found.synonym.form === 'west' ||
@@ -123,8 +123,7 @@ export function headerSite(headers: Headers, keywords: KeywordTable, notes: Note
 function angleFact(
   headers: Headers,
   keywords: KeywordTable,
-  fact: 'longitude' | 'latitude',
-  most: number,
+  { fact, most }: { readonly fact: 'longitude' | 'latitude'; readonly most: number },
   notes: Note[],
 ): { readonly degrees: number; readonly found: FactCard } | undefined {
   for (const found of factCards(headers, keywords, fact)) {

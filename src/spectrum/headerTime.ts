@@ -29,8 +29,13 @@ export function headerTime(headers: Headers, keywords: KeywordTable, notes: Note
     { fact: 'exposure', range: [0, LONGEST], words: 'exposure' },
     notes,
   )?.value
-  const start = calendar(headers, keywords, 'dateObs', 'timeObs', notes)
-  const end = calendar(headers, keywords, 'dateEnd', 'timeEnd', notes, start?.mjd)
+  const start = calendar(headers, keywords, { date: 'dateObs', time: 'timeObs' }, notes)
+  const end = calendar(
+    headers,
+    keywords,
+    { date: 'dateEnd', time: 'timeEnd', ...(start ? { day: start.mjd } : {}) },
+    notes,
+  )
   const mjd = (fact: FactName): number | undefined =>
     factNumber(headers, keywords, { fact, range: MJD_RANGE, words: 'modified Julian date' }, notes)?.value
   const givenStart = mjdStartOf(headers, keywords, notes)
@@ -113,10 +118,8 @@ interface CalendarTime {
 function calendar(
   headers: Headers,
   keywords: KeywordTable,
-  date: FactName,
-  time: FactName,
+  { date, time, day }: { readonly date: FactName; readonly time: FactName; readonly day?: number },
   notes: Note[],
-  day?: number,
 ): CalendarTime | undefined {
   let whole: CalendarTime | undefined
   for (const { card } of factCards(headers, keywords, date)) {

@@ -22,6 +22,14 @@ export interface ImageShape {
   readonly axis: number
 }
 
+/** An image of a file with what is known of it before its data are read. */
+export interface ImageInput {
+  readonly container: Container
+  readonly hdu: Hdu
+  readonly headers: Headers
+  readonly shape: ImageShape
+}
+
 /** How the image of an HDU lies; undefined for one with more than one axis that could be the spectral one. */
 export function imageShape(hdu: Hdu): ImageShape | undefined {
   const { dimensions } = hdu
@@ -38,15 +46,11 @@ export function imageShape(hdu: Hdu): ImageShape | undefined {
 }
 
 /** Rows wavelength, flux and perhaps σ of an image without names and axis, told by the values of its first row. */
-export function unnamedLayout(
-  container: Container,
-  hdu: Hdu,
-  headers: Headers,
-  shape: ImageShape,
-): RowLayout | undefined {
+export function unnamedLayout(image: ImageInput): RowLayout | undefined {
+  const { hdu, headers, shape } = image
   const isSmall = shape.rows <= 4 && shape.samples >= 16 && shape.bands === 1
   if (!isSmall || 'axis' in headerAxis(headers, 1, shape.samples) || isMultispec(hdu.header)) return undefined
-  const first = readRow(container, hdu, shape, 0)
+  const first = readRow(image, 0)
   const ends = [first[0], first[first.length - 1]]
   if (!isEvenlySampled(first) || guessedWavelengthUnit(Math.min(...ends), Math.max(...ends)) === undefined)
     return undefined
@@ -55,13 +59,10 @@ export function unnamedLayout(
 }
 
 /** Why the rows of an image are spectra, in words; undefined for a frame. */
-export function rowsEvidence(
-  { file, companion }: Container,
-  hdu: Hdu,
-  headers: Headers,
-  { samples, rows }: ImageShape,
-  layout: RowLayout | undefined,
-): string | undefined {
+export function rowsEvidence(image: ImageInput, layout: RowLayout | undefined): string | undefined {
+  const { container, hdu, headers, shape } = image
+  const { file, companion } = container
+  const { samples, rows } = shape
   const { header } = hdu
   if (layout) return layout.words
   if (isMultispec(header) && apertureSolutions(header).size > 0) return 'a dispersion solution each'
@@ -90,12 +91,6 @@ function isWaveName(name: string): boolean {
 }
 
 /** One row of an image, or its first `length` samples. */
-export function readRow(
-  container: Container,
-  hdu: Hdu,
-  shape: ImageShape,
-  at: number,
-  length = shape.samples,
-): Float64Array {
+export function readRow({ container, hdu, shape }: ImageInput, at: number, length = shape.samples): Float64Array {
   return readImage(container.source, hdu, { start: at * shape.samples, count: length })
 }

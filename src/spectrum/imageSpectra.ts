@@ -15,7 +15,7 @@ import { imagePlanes } from './imagePlanes.ts'
 import type { ImagePlanes } from './imagePlanes.ts'
 import { imageRole } from './imageRole.ts'
 import { imageShape, readRow, rowsEvidence, unnamedLayout } from './imageShape.ts'
-import type { ImageShape } from './imageShape.ts'
+import type { ImageInput, ImageShape } from './imageShape.ts'
 import type { WavelengthLabel } from './medium.ts'
 import { planeRole } from './planeRole.ts'
 import { fibreTable, rowFacts } from './rowFacts.ts'
@@ -48,16 +48,14 @@ export function imageSpectra(container: Container, hdu: Hdu): HduAnswer & { read
   }
   // Nothing is allocated for data that are not there.
   if (hdu.kind === 'image') requireData(container.source, hdu, hdu.dataByte, (Math.abs(hdu.bitpix) / 8) * shape.samples)
-  const layout =
-    shape.rows > 1 ? (rowLayout(headers, shape.rows) ?? unnamedLayout(container, hdu, headers, shape)) : undefined
-  const why = shape.rows === 1 ? 'one row' : rowsEvidence(container, hdu, headers, shape, layout)
+  const image: ImageInput = { container, hdu, headers, shape }
+  const layout = shape.rows > 1 ? (rowLayout(headers, shape.rows) ?? unnamedLayout(image)) : undefined
+  const why = shape.rows === 1 ? 'one row' : rowsEvidence(image, layout)
   if (why === undefined) {
     const message = `image requires rows that are spectra, got a frame of ${shape.samples} x ${shape.rows} without one dispersion solution a row`
     return { ...refused({ code: 'two-dimensional', message, weight: 4, hdu: hdu.index }), isFrame: true }
   }
-  const answer = layout
-    ? planeRows(container, hdu, headers, shape, layout)
-    : apertureRows(container, hdu, headers, shape, why)
+  const answer = layout ? planeRows(image, layout) : apertureRows(image, why)
   return { ...answer, isFrame: false }
 }
 
@@ -71,14 +69,15 @@ function axisHeaders(container: Container, hdu: Hdu): Headers {
 }
 
 /** One spectrum whose flux, uncertainty and wavelengths are rows of one image. */
-function planeRows(container: Container, hdu: Hdu, headers: Headers, shape: ImageShape, layout: RowLayout): HduAnswer {
+function planeRows(image: ImageInput, layout: RowLayout): HduAnswer {
+  const { container, hdu, headers, shape } = image
   const at = (role: string): number => layout.roles.findIndex((found) => found === role)
   const wave = Math.max(at('wavelength'), at('log wavelength'))
   let answer: AxisAnswer
   let label: WavelengthLabel | undefined
   if (wave >= 0) {
     const name = `image row ${wave}`
-    answer = listedAxis(readRow(container, hdu, shape, wave), {
+    answer = listedAxis(readRow(image, wave), {
       name,
       unit: '',
       role: layout.roles[wave] ?? 'wavelength',
@@ -95,10 +94,10 @@ function planeRows(container: Container, hdu: Hdu, headers: Headers, shape: Imag
     hdu: hdu.index,
     axis: answer.axis,
     ...(label ? { label } : {}),
-    flux: readRow(container, hdu, shape, at('flux')),
+    flux: readRow(image, at('flux')),
     fluxUnit: fluxUnitCard(headersOf(container.file, hdu)),
-    ...(errors !== undefined && kind ? { uncertainty: { values: readRow(container, hdu, shape, errors), kind } } : {}),
-    ...(sky >= 0 ? { sky: readRow(container, hdu, shape, sky) } : {}),
+    ...(errors !== undefined && kind ? { uncertainty: { values: readRow(image, errors), kind } } : {}),
+    ...(sky >= 0 ? { sky: readRow(image, sky) } : {}),
     headers: headersOf(container.file, hdu),
     convention: `${placeWords(hdu)}, ${layout.words}, ${answer.axis.words}`,
     notes,
@@ -106,7 +105,8 @@ function planeRows(container: Container, hdu: Hdu, headers: Headers, shape: Imag
   return { spectra: [found], refusals: [], notes: [] }
 }
 
-function apertureRows(container: Container, hdu: Hdu, headers: Headers, shape: ImageShape, why: string): HduAnswer {
+function apertureRows(image: ImageInput, why: string): HduAnswer {
+  const { container, hdu, shape } = image
   const spectra: FoundSpectrum[] = []
   const refusals: Refusal[] = []
   const planes = imagePlanes(container, hdu)
@@ -118,7 +118,7 @@ function apertureRows(container: Container, hdu: Hdu, headers: Headers, shape: I
   for (; row < shape.rows && spectra.length < most; row++) {
     const answer: FoundAxis = solutions
       ? apertureAxis(hdu.header, row, solutions.get(row), shape.samples)
-      : (shared ??= findAxis(container, hdu, headers, shape, row))
+      : (shared ??= findAxis(image, row))
     if ('refusal' in answer) {
       refusals.push({ ...answer.refusal, hdu: answer.refusal.hdu ?? hdu.index, ...(shape.rows > 1 ? { row } : {}) })
       if (!solutions) break
@@ -126,7 +126,7 @@ function apertureRows(container: Container, hdu: Hdu, headers: Headers, shape: I
     }
     if (answer.perRow) shared = undefined
     const label = answer.label ? { label: answer.label } : {}
-    spectra.push(apertureRow(container, hdu, { shape, planes, row, axis: answer.axis, why, fibres, ...label }))
+    spectra.push(apertureRow(image, { planes, row, axis: answer.axis, why, fibres, ...label }))
   }
   return { spectra, refusals, notes: limitNotes(hdu, row, shape.rows) }
 }
@@ -135,10 +135,10 @@ type FoundAxis =
   { readonly axis: Axis; readonly label?: WavelengthLabel; readonly perRow?: boolean } | { readonly refusal: Refusal }
 
 /** An extension named for it comes first, then the image's own axis, then tables and the companion file. */
-function findAxis(container: Container, hdu: Hdu, headers: Headers, shape: ImageShape, row: number): FoundAxis {
+function findAxis({ container, hdu, headers, shape }: ImageInput, row: number): FoundAxis {
   const sibling = siblingAxis(container, hdu, shape.samples, row)
   if (sibling) return sibling
-  const own = tabulatedAxis(container, hdu, headers, shape.axis, shape.samples) ?? ownAxis(headers, shape)
+  const own = tabulatedAxis({ container, hdu, headers }, shape.axis, shape.samples) ?? ownAxis(headers, shape)
   if ('axis' in own) return own
   return companionAxis(container, hdu, shape.samples, row) ?? own
 }
@@ -149,10 +149,8 @@ function ownAxis(headers: Headers, { axis, samples }: ImageShape): AxisAnswer {
 }
 
 function apertureRow(
-  container: Container,
-  hdu: Hdu,
+  image: ImageInput,
   given: {
-    shape: ImageShape
     planes: ImagePlanes
     row: number
     axis: Axis
@@ -161,7 +159,8 @@ function apertureRow(
     fibres: Hdu | undefined
   },
 ): FoundSpectrum {
-  const { shape, planes, row, axis, label, why, fibres } = given
+  const { container, hdu, shape } = image
+  const { planes, row, axis, label, why, fibres } = given
   const headers = headersOf(container.file, hdu)
   const length = axis.wavelength.length
   const band = (number: number): number => number * shape.rows + row
@@ -170,11 +169,10 @@ function apertureRow(
   const skyBand = bands.findIndex((text) => /^\s*(background|sky)/i.test(text))
   const uncertainty =
     sigmaBand > 0
-      ? { values: readRow(container, hdu, shape, band(sigmaBand), length), kind: 'sigma' as const }
+      ? { values: readRow(image, band(sigmaBand), length), kind: 'sigma' as const }
       : planes.uncertainty(row, shape.samples, length)
   const flags = planes.flags(row, shape.samples, length)
-  const sky =
-    skyBand > 0 ? readRow(container, hdu, shape, band(skyBand), length) : planes.sky(row, shape.samples, length)
+  const sky = skyBand > 0 ? readRow(image, band(skyBand), length) : planes.sky(row, shape.samples, length)
   const role = imageRole(hdu.name)
   const own = fibres ? rowFacts(container, fibres, row) : undefined
   const title = shape.rows > 1 ? cardText([hdu.header], `APID${row + 1}`) : undefined
@@ -185,7 +183,7 @@ function apertureRow(
     ...(shape.rows > 1 ? { row } : {}),
     axis,
     ...(label ? { label } : {}),
-    flux: readRow(container, hdu, shape, row, length),
+    flux: readRow(image, row, length),
     fluxUnit: fluxUnitCard(headers),
     ...(role === 'normalised' ? { isNormalised: true } : {}),
     ...(uncertainty ? { uncertainty } : {}),

@@ -95,7 +95,7 @@ function statedMedium(
   const say = (medium: Medium, where: string): MediumAnswer => ({
     medium,
     how: 'declared',
-    notes: [{ code: 'medium-declared', text: `${medium} by ${where}` }],
+    notes: [{ code: 'medium-declared', text: `the file says that its wavelengths are in ${medium} (${where})` }],
   })
   if (label) {
     const name = label.name.toLowerCase()

@@ -4,21 +4,25 @@ import type { AxisAnswer } from './axis.ts'
 import { cardNumber, cardText } from './cards.ts'
 import type { Headers } from './cards.ts'
 import { grismOf, grismWavelength } from './grism.ts'
-import type { AxisInput, LinearPart } from './linearPart.ts'
+import type { AxisInput } from './linearPart.ts'
 import { SAMPLING } from './spectralCode.ts'
 import type { SpectralCode } from './spectralCode.ts'
 import type { Note } from '../findings/types.ts'
 import { guessedWavelengthUnit, spectralUnit } from './unit.ts'
 import { guessNote } from './unitGuess.ts'
 
+/** An axis of a standard code with its algorithm ('LOG', 'F2W', 'GRI' ... or ''). */
+interface StandardInput extends AxisInput {
+  readonly code: string
+  readonly algorithm: string
+  readonly known: SpectralCode
+}
+
 /** The wavelengths of an axis whose CTYPE is a code of FITS WCS Paper III, with its algorithm if any. */
-export function standardAxis(
-  headers: Headers,
-  input: AxisInput & { readonly code: string; readonly algorithm: string; readonly known: SpectralCode },
-): AxisAnswer {
-  const { number, length, linear, code, algorithm, known, wat } = input
+export function standardAxis(headers: Headers, input: StandardInput): AxisAnswer {
+  const { number, length, linear, code, algorithm, known } = input
   const notes = [...linear.notes]
-  const unit = standardUnit(headers, number, known, linear, length, wat)
+  const unit = standardUnit(headers, input)
   if (!unit)
     return refuse(
       'unit-unknown',
@@ -88,11 +92,7 @@ export function standardAxis(
 /** Scale of the standard unit to Å, Hz, eV, cm⁻¹, km/s; SI where CUNIT is absent, unless that is absurd. */
 function standardUnit(
   headers: Headers,
-  number: number,
-  known: SpectralCode,
-  linear: LinearPart,
-  length: number,
-  wat: ReadonlyMap<string, string>,
+  { number, known, linear, length, wat }: StandardInput,
 ): { readonly scale: number; readonly notes: readonly Note[] } | undefined {
   if (known.quantity === 'ratio') return { scale: 1, notes: [] }
   const text = cardText(headers, `CUNIT${number}`) ?? wat.get('units')

@@ -14,9 +14,7 @@ import { spectralUnit, toAngstrom } from './unit.ts'
  * (FITS WCS Paper III, section 6); undefined for an axis of another type.
  */
 export function tabulatedAxis(
-  container: Container,
-  hdu: Hdu,
-  headers: Headers,
+  { container, hdu, headers }: { readonly container: Container; readonly hdu: Hdu; readonly headers: Headers },
   number: number,
   length: number,
 ): AxisAnswer | undefined {

@@ -220,14 +220,14 @@ describe('describeSpectrum', () => {
 describe('readingFindings', () => {
   it('gives every note the level of its rule, and one that is new the level of a note', () => {
     const found = readingFindings([
-      { code: 'medium-guessed', text: 'a' },
-      { code: 'gzip-check', text: 'b' },
-      { code: 'never-heard', text: 'c' },
+      { code: 'medium-guessed', text: 'A' },
+      { code: 'gzip-check', text: 'B' },
+      { code: 'never-heard', text: 'C' },
     ])
     expect(found.map(({ level, code, text }) => [level, code, text])).toEqual([
-      ['note', 'medium-guessed', 'a'],
-      ['doubt', 'gzip-check', 'b'],
-      ['note', 'format-note', 'c'],
+      ['note', 'medium-guessed', 'A'],
+      ['doubt', 'gzip-check', 'B'],
+      ['note', 'format-note', 'C'],
     ])
     expect(READING_RULES['gzip-check'].level).toBe('doubt')
   })
