@@ -187,6 +187,12 @@ export const NIGHT_RULES = {
     unit: 'km/s',
     source: COMMON,
   },
+  'slow-drift': {
+    level: 'note',
+    meaning: 'A quantity changes steadily through the night by as much as would be a jump',
+    remedy: 'Use the arc nearest in time for each exposure',
+    source: COMMON,
+  },
   'resolution-jump': {
     level: 'doubt',
     meaning: 'The resolution jumps between two exposures',

@@ -9,6 +9,7 @@ import { isOnSky } from './exposures.ts'
 import type { Exposure, NightSpectrum } from './exposures.ts'
 import { findJumps } from './jumps.ts'
 import type { DriftPoint } from './jumps.ts'
+import { findSlowDrift } from './slowDrift.ts'
 import type { Drift } from './types.ts'
 
 /** How a quantity is watched: which jump is said, by which limit, and whether the limit is a share of the level. */
@@ -24,9 +25,9 @@ const WATCHES: Readonly<Record<Drift['quantity'], Watch>> = {
   resolution: { unit: 'Å', code: 'resolution-jump', limit: 'resolutionJump', isRelative: true },
   throughput: { unit: '1', code: 'throughput-jump', limit: 'throughputJump', isRelative: true },
   'bias level': { unit: 'counts', code: 'bias-level-jump', limit: 'biasJump' },
-  'signal-to-noise': { unit: '1/√Å' },
+  'signal-to-noise': { unit: 'per Å' },
   airmass: { unit: '1' },
-  seeing: { unit: 'pixel', code: 'seeing-jump', limit: 'seeingJump', isRelative: true },
+  seeing: { unit: 'pixels', code: 'seeing-jump', limit: 'seeingJump', isRelative: true },
 }
 
 /** A quantity of one file or spectrum at a time. */
@@ -156,13 +157,46 @@ function jumpFindings(
         }))
     : points
   const smallest = isRelative ? Math.log(1 + allowed) : allowed
-  return findJumps(watched, smallest, thresholds.jumpSigma.value).map(({ at, before, after, size }) => {
+  const jumps = findJumps(watched, smallest, thresholds.jumpSigma.value)
+  if (jumps.length === 0) return slowFindings(watched, setup, quantity, { unit, smallest, isRelative, thresholds })
+  return jumps.map(({ at, before, after, size }) => {
     const [from, to] = isRelative ? [Math.exp(before), Math.exp(after)] : [before, after]
     const shown = unit === '1' ? '' : ` ${unit}`
     const between = `between ${timeOf(watched[at - 1].mjd)} (${watched[at - 1].label}) and ${timeOf(watched[at].mjd)} (${watched[at].label}) UTC`
-    const text = `The ${quantity} of set-up ${setup} jumps from ${figure(from)} to ${figure(to)}${shown} ${between}`
+    const text = `The ${quantity} of set-up ${setup} jumps from ${fromTo(from, to)}${shown} ${between}`
     return finding(NIGHT_RULES, code, text, { value: isRelative ? Math.exp(Math.abs(size)) - 1 : size, limit: allowed })
   })
+}
+
+interface SlowWatch {
+  readonly unit: string
+  readonly smallest: number
+  readonly isRelative: boolean
+  readonly thresholds: Thresholds
+}
+
+/** A note where a quantity changes steadily by as much as would be a jump. */
+function slowFindings(
+  watched: readonly DriftPoint[],
+  setup: string,
+  quantity: Drift['quantity'],
+  { unit, smallest, isRelative, thresholds }: SlowWatch,
+): Drift['findings'] {
+  // The star's image widens and the light weakens with the airmass as the night goes on; that is no fault.
+  if (quantity === 'seeing' || quantity === 'throughput') return []
+  const drift = findSlowDrift(watched, smallest, thresholds.jumpSigma.value)
+  if (!drift) return []
+  const change = isRelative ? `${(100 * (Math.exp(drift.total) - 1)).toFixed(0)} %` : `${figure(drift.total)} ${unit}`
+  const text = `the ${quantity} of set-up ${setup} drifts by ${change} within ${drift.hours.toFixed(1)} h`
+  return [finding(NIGHT_RULES, 'slow-drift', text, { value: drift.total, limit: smallest })]
+}
+
+/** Two values to the third digit of the step between them: '0 to 251', '4.62 to 5.91'. */
+function fromTo(from: number, to: number): string {
+  const step = Math.abs(to - from)
+  const decimals = step > 0 ? Math.min(6, Math.max(0, 2 - Math.floor(Math.log10(step)))) : 2
+  const word = (value: number): string => value.toFixed(decimals).replace(/^-(?=0(\.0+)?$)/, '')
+  return `${word(from)} to ${word(to)}`
 }
 
 /** Hours and minutes of an MJD. */
