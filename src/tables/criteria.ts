@@ -32,6 +32,8 @@ export const KIND_CRITERIA: KindCriteria = {
     HeII4686: { wavelength: 4685.7, band: [4676, 4696], blue: [4660, 4674], red: [4698, 4711] },
     HeII4686Wide: { wavelength: 4685.7, band: [4656, 4716], blue: [4620, 4645], red: [4722, 4745] },
     HeII5411: { wavelength: 5411.52, band: [5400, 5423], blue: [5375, 5397], red: [5427, 5447] },
+    CaKGalaxy: { wavelength: 3933.66, band: [3924, 3944], blue: [3905, 3920], red: [3946, 3955] },
+    CaHGalaxy: { wavelength: 3968.47, band: [3960, 3978], blue: [3947, 3955], red: [3984, 3998] },
     G4300: { wavelength: 4298.88, band: [4281.375, 4316.375], blue: [4266.375, 4282.625], red: [4318.875, 4335.125] },
     Mgb: { wavelength: 5176.38, band: [5160.125, 5192.625], blue: [5142.625, 5161.375], red: [5191.375, 5206.375] },
     NaD: { wavelength: 5892.94, band: [5876.875, 5909.375], blue: [5860.625, 5875.625], red: [5922.125, 5948.125] },
@@ -235,14 +237,53 @@ export const KIND_CRITERIA: KindCriteria = {
     nebularOxygen: { value: -300, unit: 'Å', reason: '[O III] 5007 against a continuum with stars', source: 'memory' },
     redshiftMaximum: { value: 0.4, unit: '1', reason: 'redshifts looked for', source: 'common' },
     galaxyTitanium: {
-      value: 4,
+      value: 3,
       unit: 'Å',
       reason:
-        'titanium oxide at 6230 Å; ordinary stars with so weak a break at 4000 Å stay below 3.4, old galaxies have TiO2 of 0.05 to 0.09 mag, which is 4 to 7 Å',
+        'titanium oxide at 6230 Å; ordinary stars with so weak a break at 4000 Å and Mg b stay below 1.6, old galaxies have TiO2 of 0.05 to 0.09 mag, which is 4 to 7 Å',
       source: 'worthey1994',
     },
-    galaxyTitaniumMost: { value: 14, unit: 'Å', reason: 'beyond this it is an M star', source: 'kindsAtlas' },
+    galaxyGamma: {
+      value: 0.93,
+      unit: '1',
+      reason:
+        'light at 7126–7160 Å over that at 7018–7046 Å, between which titanium oxide begins; ordinary stars with so weak a break have at least 0.95',
+      source: 'kindsAtlas',
+    },
+    galaxyTitaniumAlone: {
+      value: 5,
+      unit: 'Å',
+      reason:
+        'titanium oxide at 6230 Å where the band at 7054 Å is not covered; ripples of 3 % in the level make up to 4.9 Å',
+      source: 'kindsAtlas',
+    },
+    galaxyTitaniumMost: { value: 9, unit: 'Å', reason: 'beyond this it is an M star', source: 'kindsAtlas' },
     galaxyBreak: { value: 2.2, unit: '1', reason: 'Dn4000, which late K giants exceed', source: 'kindsAtlas' },
+    galaxyCool: {
+      value: 25,
+      unit: 'Å',
+      reason: 'titanium oxide at rest: an M star, and no redshift is looked for',
+      source: 'kindsAtlas',
+    },
+    galaxyLine: {
+      value: 1.2,
+      unit: 'Å',
+      reason: 'each of Ca II K and H, the G band, Mg b and Na D at one redshift',
+      source: 'common',
+    },
+    galaxyLeastBreak: {
+      value: 1.3,
+      unit: '1',
+      reason: 'Dn4000 of old stars; young ones have 1.0 to 1.25',
+      source: 'common',
+    },
+    galaxyMagnesium: {
+      value: 2.2,
+      unit: 'Å',
+      reason: 'Mg b; supergiants, whose titanium oxide window may hold interstellar bands, stay below 1.6',
+      source: 'kindsAtlas',
+    },
+    fastestStar: { value: 1000, unit: 'km/s', reason: 'faster than nearly every star of the Galaxy', source: 'common' },
     galaxyCH: { value: 4, unit: 'Å', reason: 'the G band, weak in late K and M dwarfs', source: 'kindsAtlas' },
     galaxyHydrogen: {
       value: 1.5,
@@ -270,9 +311,10 @@ export const KIND_CRITERIA: KindCriteria = {
       source: 'kindsAtlas',
     },
     compositeTitanium: {
-      value: 3,
+      value: 6,
       unit: 'Å',
-      reason: 'titanium oxide at 6230 Å, which stars earlier than K5 do not have',
+      reason:
+        'titanium oxide at 6230 Å, which stars earlier than K5 do not have; ripples of 3 % in the level make up to 4.5 Å',
       source: 'kindsAtlas',
     },
     metallicSpread: {
@@ -285,6 +327,12 @@ export const KIND_CRITERIA: KindCriteria = {
       value: 0.15,
       unit: '1',
       reason: 'light lost redwards of 7054 Å, which titanium oxide takes and C2 does not',
+      source: 'common',
+    },
+    metallicMisfit: {
+      value: 4,
+      unit: '1',
+      reason: 'squared misfit per feature of the other metals at their own type, beyond which they tell none',
       source: 'common',
     },
     metallicSigma: {

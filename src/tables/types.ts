@@ -346,6 +346,8 @@ export type KindWindow =
   | 'HeII4686'
   | 'HeII4686Wide'
   | 'HeII5411'
+  | 'CaKGalaxy'
+  | 'CaHGalaxy'
   | 'G4300'
   | 'Mgb'
   | 'NaD'
@@ -397,7 +399,14 @@ export type KindLimit =
   | 'redshiftMaximum'
   | 'galaxyTitanium'
   | 'galaxyTitaniumMost'
+  | 'galaxyTitaniumAlone'
+  | 'galaxyGamma'
   | 'galaxyBreak'
+  | 'galaxyCool'
+  | 'galaxyLine'
+  | 'galaxyLeastBreak'
+  | 'galaxyMagnesium'
+  | 'fastestStar'
   | 'galaxyCH'
   | 'galaxyHydrogen'
   | 'carbonStep'
@@ -408,6 +417,7 @@ export type KindLimit =
   | 'compositeTitanium'
   | 'metallicSpread'
   | 'metallicSigma'
+  | 'metallicMisfit'
 
 /** All that kinds of objects are recognised by, with the citation of each word's criterion. */
 export interface KindCriteria {

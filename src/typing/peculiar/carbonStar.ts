@@ -17,7 +17,7 @@ export function carbonStar(look: Look): Recognised | undefined {
   for (const { head, blue, red } of HEADS) {
     const left = look.mean(blue[0], blue[1])
     const right = look.mean(red[0], red[1])
-    if (left.used < 0.85 || right.used < 0.85 || !(right.mean > 0)) continue
+    if (left.used < 0.85 || right.used < 0.85 || !(right.mean > sigma * right.error)) continue
     covered++
     const drop = 1 - left.mean / right.mean
     const error = Math.hypot(left.error, right.error) / right.mean

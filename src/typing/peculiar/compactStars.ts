@@ -87,10 +87,16 @@ function brokenSeries(look: Look): Recognised | undefined {
     width !== undefined
       ? width > look.limit('seriesWidth')
       : eighth !== undefined && eighth.ew < look.limit('seriesEnd') * gamma.ew
-  if (!isWide && look.fwhm > look.limit('seriesEndFwhm')) return undefined
+  if (!isWide && (look.fwhm > look.limit('seriesEndFwhm') || hasWind(look))) return undefined
   return isWide
     ? whiteDwarf(look, `${text}, and its lines have wide wings`)
     : hotSubdwarf(look, `${text}, its lines being narrower than a white dwarf's`)
+}
+
+/** Emission fills hydrogen lines of supergiants; subdwarfs have none. */
+function hasWind(look: Look): boolean {
+  const alpha = look.strength('HalphaCore')
+  return alpha !== undefined && alpha.ew < look.limit('emissionHalpha')
 }
 
 function wingedHydrogen(look: Look): Recognised | undefined {
@@ -106,7 +112,8 @@ function wingedHydrogen(look: Look): Recognised | undefined {
     if (!wide || !line || depth === undefined || !(depth > 0.1)) continue
     if (line.ew < look.limit('wingedHydrogen') || line.ew < sigma * line.error || wide.ew < sigma * wide.error) continue
     const width = wide.ew / depth
-    if (width > look.limit('winged') || wide.ew > look.limit('strongHydrogen'))
+    // A coarse profile makes lines shallower by about its own width, in quadrature.
+    if (width > Math.hypot(look.limit('winged'), look.fwhm) || wide.ew > look.limit('strongHydrogen'))
       return whiteDwarf(
         look,
         `a hydrogen line of ${inAngstrom(wide.ew)} is ${width.toFixed(0)} Å wide for its depth (ordinary stars up to ${look.limit('winged')} Å)`,
@@ -116,7 +123,7 @@ function wingedHydrogen(look: Look): Recognised | undefined {
 }
 
 function faintSeries(look: Look): Recognised | undefined {
-  if (look.fwhm > look.limit('seriesFaintFwhm')) return undefined
+  if (look.fwhm > look.limit('seriesFaintFwhm') || hasWind(look)) return undefined
   const gamma = look.strength('Hgamma')
   const tenth = look.strength('H10')
   const eleventh = look.strength('H11')

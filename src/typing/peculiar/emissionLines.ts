@@ -1,9 +1,6 @@
 import type { KindWindow } from '../../tables/types.ts'
-import { atVelocity, type LightSums } from './lightSums.ts'
 import { inAngstrom, type Look, type Recognised } from './look.ts'
 import type { Strength } from './strength.ts'
-
-const CLIGHT = 299792.458
 
 /** Emission of hydrogen in a star: Be, T Tauri, flare stars, Mira variables, supergiants with winds. */
 export function stellarEmission(look: Look): Recognised | undefined {
@@ -79,9 +76,4 @@ function hasOxygenRatio(look: Look): boolean {
   const limit = look.limit('forbiddenRatio')
   const room = 3 * Math.hypot(strong.error, 3 * weak.error)
   return Math.abs(3 * weak.ew - strong.ew) < Math.max(limit * Math.abs(strong.ew), room)
-}
-
-/** Sums with windows at a redshift. */
-export function atRedshift(sums: LightSums, redshift: number): LightSums {
-  return atVelocity(sums, redshift * CLIGHT)
 }

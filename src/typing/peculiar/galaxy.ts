@@ -8,11 +8,13 @@ export function mixedPopulation(look: Look): Recognised | undefined {
   const titanium = look.strength('TiO6230')
   const band = look.strength('G4300')
   const hydrogen = look.strength('Hbeta')
-  if (!titanium || !band || !hydrogen) return undefined
+  const magnesium = look.strength('Mgb')
+  if (!titanium || !band || !hydrogen || !magnesium) return undefined
   const step = breakAt4000(look)
   if (step === undefined || step > look.limit('galaxyBreak')) return undefined
   if (titanium.ew < look.limit('galaxyTitanium') || titanium.ew < 4 * titanium.error) return undefined
   if (titanium.ew > look.limit('galaxyTitaniumMost')) return undefined
+  if (!hasGammaBand(look, titanium.ew) || magnesium.ew < look.limit('galaxyMagnesium')) return undefined
   if (band.ew < look.limit('galaxyCH') || hydrogen.ew < look.limit('galaxyHydrogen')) return undefined
   return {
     peculiarity: look.peculiarity(
@@ -21,6 +23,15 @@ export function mixedPopulation(look: Look): Recognised | undefined {
     ),
     isOutside: true,
   }
+}
+
+/** The band that begins at 7054 Å takes its part as well; where it is not covered the other must be stronger. */
+function hasGammaBand(look: Look, titanium: number): boolean {
+  const band = look.mean(7126, 7160)
+  const side = look.mean(7018, 7046)
+  if (band.used < 0.8 || side.used < 0.8) return titanium > look.limit('galaxyTitaniumAlone')
+  const error = Math.hypot(band.error, side.error) / side.mean
+  return band.mean / side.mean + error < look.limit('galaxyGamma')
 }
 
 /** Dn4000: mean of 4000–4100 Å over that of 3850–3950 Å, each per unit of frequency; undefined where not covered. */

@@ -50,11 +50,6 @@ export function sumLight({ wavelength, flux, usable }: Spectrum, { noise }: Cont
 
 const CLIGHT = 299792.458
 
-/** The same sums, with windows in the frame of another velocity [km/s]. */
-export function atVelocity(sums: LightSums, velocity: number): LightSums {
-  return { ...sums, stretch: 1 + velocity / CLIGHT }
-}
-
 /** Mean light over [lo, hi] Å at rest; NaN with `used` 0 where nothing is usable. */
 export function meanLight({ edges, light, variance, width, stretch }: LightSums, lo: number, hi: number): MeanLight {
   const a = placeOf(edges, lo * stretch)
@@ -88,4 +83,9 @@ function between(sums: Float64Array, a: number, b: number): number {
 function valueAt(sums: Float64Array, place: number): number {
   const i = Math.floor(place)
   return i + 1 < sums.length ? sums[i] + (place - i) * (sums[i + 1] - sums[i]) : sums[i]
+}
+
+/** The same sums, with windows in the frame of a redshift. */
+export function atRedshift(sums: LightSums, redshift: number): LightSums {
+  return { ...sums, stretch: 1 + redshift }
 }

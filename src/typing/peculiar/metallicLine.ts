@@ -38,6 +38,7 @@ export function metallicLine(
   const spread = metalType.type - calciumType.type
   if (spread < look.limit('metallicSpread')) return undefined
   if (calciumType.type > hydrogenType.type + 1 || metalType.type < hydrogenType.type - 1) return undefined
+  if (metalType.misfit[metalType.type - FIRST] > look.limit('metallicMisfit') * metalType.used) return undefined
   const limit = look.limit('metallicSigma') ** 2
   const atCalcium = metalType.misfit[calciumType.type - FIRST] - metalType.misfit[metalType.type - FIRST]
   const atMetals = calciumType.misfit[metalType.type - FIRST] - calciumType.misfit[calciumType.type - FIRST]
@@ -69,6 +70,7 @@ interface FoundType {
   readonly type: number
   /** shape (types tried): squared misfit of each. */
   readonly misfit: Float64Array
+  readonly used: number
 }
 
 /** The type of best fit by some features alone. */
@@ -92,5 +94,5 @@ function typeFrom(
   if (used === 0 || used < names.length / 2) return undefined
   let best = 0
   for (let i = 1; i < misfit.length; i++) if (misfit[i] < misfit[best]) best = i
-  return { type: FIRST + best, misfit }
+  return { type: FIRST + best, misfit, used }
 }

@@ -4,16 +4,18 @@ import type { Calibration, KindCriteria } from '../../tables/types.ts'
 import type { Resolution, RestFrame } from '../../velocity/types.ts'
 import type { TypingInput } from '../typingInput.ts'
 import type { Peculiarity, PeculiarWord, TypePosterior } from '../types.ts'
+import { absorptionRedshift } from './absorptionRedshift.ts'
 import { brownDwarf } from './brownDwarf.ts'
 import { carbonStar } from './carbonStar.ts'
 import { compactStar, isHot } from './compactStars.ts'
 import { compositeLight } from './composite.ts'
-import { atRedshift, gasEmission, type GasEmission, stellarEmission } from './emissionLines.ts'
+import { gasEmission, type GasEmission, stellarEmission } from './emissionLines.ts'
 import { metallicLine } from './metallicLine.ts'
 import { mixedPopulation } from './galaxy.ts'
-import { sumLight } from './lightSums.ts'
+import { atRedshift, sumLight } from './lightSums.ts'
 import { type Look, lookAt, type Recognised } from './look.ts'
 import { emissionPeaks } from './peaks.ts'
+import { withoutSpikes } from './withoutSpikes.ts'
 
 /** A spectrum with what was measured of it so far. */
 export interface KindCase {
@@ -25,20 +27,21 @@ export interface KindCase {
 }
 
 const CLIGHT = 299792.458
-/** km/s: a velocity beyond this was found on something that is no star of the Galaxy, and windows stay where they are. */
-const FASTEST_STAR = 800
 const FEWEST_SAMPLES = 40
 /** What is peculiar about a spectrum, and whether it is no ordinary O to M star at all; most telling first. */
 export function recogniseKinds(star: KindCase, criteria: KindCriteria, calibration: Calibration): Recognised[] {
-  const { spectrum, continuum, restFrame, resolution } = star
-  if (spectrum.wavelength.length < FEWEST_SAMPLES) return []
-  const velocity = restFrame.trusted && Math.abs(restFrame.velocity) < FASTEST_STAR ? restFrame.velocity : 0
-  const sums = sumLight(spectrum, continuum, velocity)
+  const { continuum, restFrame, resolution } = star
+  if (star.spectrum.wavelength.length < FEWEST_SAMPLES) return []
+  const spectrum = withoutSpikes(star.spectrum, continuum)
+  const velocity = restFrame.trusted ? restFrame.velocity : 0
+  const isFast = Math.abs(velocity) > criteria.limits.fastestStar.value
+  const sums = sumLight(spectrum, continuum, isFast ? 0 : velocity)
   const look = lookAt(sums, resolution.fwhm, criteria)
-  const gas = findGas(look, star, criteria)
-  if (gas) {
-    const kind = kindOfGas(gas, look, lookAt(atRedshift(sums, gas.redshift), resolution.fwhm, criteria))
-    return [kind]
+  const gas = findGas(look, { ...star, spectrum }, criteria)
+  if (gas) return [kindOfGas(gas, look, lookAt(atRedshift(sums, gas.redshift), resolution.fwhm, criteria))]
+  if (!restFrame.trusted || isFast) {
+    const redshift = absorptionRedshift(look, criteria, criteria.limits.fastestStar.value / CLIGHT)
+    if (redshift !== undefined) return [farGalaxy(look, redshift)]
   }
   const outside = compactStar(look) ?? brownDwarf(look) ?? mixedPopulation(look)
   if (outside) {
@@ -126,7 +129,7 @@ function kindOfGas(gas: GasEmission, atRest: Look, look: Look): Recognised {
   const isBare =
     (beta !== undefined && beta.ew < look.limit('nebularHbeta')) ||
     (oxygen !== undefined && oxygen.ew < look.limit('nebularOxygen'))
-  const isFar = gas.redshift * CLIGHT > FASTEST_STAR
+  const isFar = gas.redshift * CLIGHT > look.limit('fastestStar')
   if (isBare && !isFar)
     return {
       peculiarity: look.peculiarity('nebular', `${gas.text}, far stronger than any light of stars behind`),
@@ -144,6 +147,16 @@ function kindOfGas(gas: GasEmission, atRest: Look, look: Look): Recognised {
   const shift = isFar ? ` at a redshift of ${gas.redshift.toFixed(4)}` : ''
   return {
     peculiarity: look.peculiarity('galaxy', `${gas.text}${shift} over the light of stars`),
+    isOutside: true,
+  }
+}
+
+function farGalaxy(look: Look, redshift: number): Recognised {
+  return {
+    peculiarity: look.peculiarity(
+      'galaxy',
+      `Ca II, the G band, Mg b and Na D of stars stand at a redshift of ${redshift.toFixed(3)} (stars of the Galaxy stay below ${(look.limit('fastestStar') / CLIGHT).toFixed(4)})`,
+    ),
     isOutside: true,
   }
 }

@@ -27,10 +27,11 @@ export function strengthOf(sums: LightSums, { band, blue, red }: Windows): Stren
   const one = meanLight(sums, blue[0], blue[1])
   const two = meanLight(sums, red[0], red[1])
   const core = meanLight(sums, band[0], band[1])
-  if (!(one.used > USED && two.used > USED && core.used > USED) || !(one.mean > 0 && two.mean > 0)) return undefined
+  if (!(one.used > USED && two.used > USED && core.used > USED)) return undefined
   const distance = middle(red) - middle(blue)
   const share = (middle(band) - middle(blue)) / distance
-  const level = one.mean + share * (two.mean - one.mean)
+  // No light of a star behind a nebula: the level is at most its error, and emission at least so strong.
+  const level = Math.max(one.mean + share * (two.mean - one.mean), Math.hypot(one.error, two.error))
   if (!(level > 0)) return undefined
   const width = band[1] - band[0]
   const ratio = core.mean / level
