@@ -36,19 +36,13 @@ export function assemble(found: FoundSpectrum, context: SpectrumContext): Spectr
   notes.push(...medium.notes)
 
   const kept = order.unique
-  const wavelength = Float64Array.from(kept, (i) => (medium.medium === 'vacuum' ? vacuumToAir(stored[i]) : stored[i]))
-  const flux = Float64Array.from(kept, (i) => found.flux[i])
+  const inFile = gathered(stored, kept)
+  const wavelength = medium.medium === 'vacuum' ? inFile.map(vacuumToAir) : inFile
+  const flux = gathered(found.flux, kept)
   const uncertainty = found.uncertainty
   const checked = uncertainty && checkedKind(uncertainty.values, uncertainty.kind, found.flux)
   if (checked) notes.push(...checked.notes)
-  const sigma =
-    uncertainty && checked
-      ? sigmaOf(
-          Float64Array.from(kept, (i) => uncertainty.values[i]),
-          checked.kind,
-          flux,
-        )
-      : undefined
+  const sigma = uncertainty && checked ? sigmaOf(gathered(uncertainty.values, kept), checked.kind, flux) : undefined
   const usable = usableSamples(found, kept, flux, sigma, notes)
   const sky = found.sky
   return {
@@ -56,7 +50,7 @@ export function assemble(found: FoundSpectrum, context: SpectrumContext): Spectr
     flux,
     ...(sigma ? { sigma } : {}),
     usable,
-    ...(sky ? { sky: Float64Array.from(kept, (i) => sky[i]) } : {}),
+    ...(sky ? { sky: gathered(sky, kept) } : {}),
     hdu: found.hdu,
     ...(found.row === undefined ? {} : { row: found.row }),
     medium: medium.medium,
@@ -73,46 +67,63 @@ export function assemble(found: FoundSpectrum, context: SpectrumContext): Spectr
   }
 }
 
-function storedEnds(found: FoundSpectrum, all: Uint32Array, medium: Medium): Spectrum['asStored'] {
+function storedEnds(found: FoundSpectrum, all: Indices, medium: Medium): Spectrum['asStored'] {
   let nonfinite = 0
   for (const value of found.flux) if (!Number.isFinite(value)) nonfinite++
   const { wavelength } = found.axis
+  const [low, high] = all ? [all[0], all[all.length - 1]] : [0, wavelength.length - 1]
   return {
     samples: found.flux.length,
     medium,
-    first: wavelength[all[0]],
-    last: wavelength[all[all.length - 1]],
-    fluxFirst: found.flux[all[0]],
-    fluxLast: found.flux[all[all.length - 1]],
+    first: wavelength[low],
+    last: wavelength[high],
+    fluxFirst: found.flux[low],
+    fluxLast: found.flux[high],
     nonfinite,
   }
 }
 
+/** Indices of samples; undefined for all of them in the order of the file, which most files need. */
+type Indices = Uint32Array | undefined
+
+function isInOrder(wavelength: Float64Array): boolean {
+  for (let i = 1; i < wavelength.length; i++) if (!(wavelength[i] > wavelength[i - 1])) return false
+  return Number.isFinite(wavelength[0]) && Number.isFinite(wavelength[wavelength.length - 1])
+}
+
+/** The values at the indices, in their order; the array itself where nothing changes its place. */
+function gathered(values: Float64Array, indices: Indices): Float64Array {
+  if (!indices) return values
+  const out = new Float64Array(indices.length)
+  for (let i = 0; i < indices.length; i++) out[i] = values[indices[i]]
+  return out
+}
+
 /** Indices of the samples by increasing wavelength: all with a finite one, and those left when repeats are dropped. */
-function increasingOrder(
-  wavelength: Float64Array,
-  notes: Note[],
-): { readonly all: Uint32Array; readonly unique: Uint32Array } {
-  const finite: number[] = []
+function increasingOrder(wavelength: Float64Array, notes: Note[]): { readonly all: Indices; readonly unique: Indices } {
+  if (isInOrder(wavelength)) return { all: undefined, unique: undefined }
+  const finite = new Uint32Array(wavelength.length)
+  let count = 0
   let rises = true
   let falls = true
   let before = NaN
   for (let i = 0; i < wavelength.length; i++) {
-    if (!Number.isFinite(wavelength[i])) continue
-    if (wavelength[i] <= before) rises = false
-    if (wavelength[i] >= before) falls = false
-    before = wavelength[i]
-    finite.push(i)
+    const value = wavelength[i]
+    if (!Number.isFinite(value)) continue
+    if (value <= before) rises = false
+    if (value >= before) falls = false
+    before = value
+    finite[count++] = i
   }
-  const lost = wavelength.length - finite.length
+  const all = finite.subarray(0, count)
+  const lost = wavelength.length - count
   if (lost > 0)
     notes.push({ code: 'wavelength-missing', text: `${lost} samples have no finite wavelength and are left out` })
-  const all = Uint32Array.from(finite)
-  if (falls && !rises) all.reverse()
-  else if (!rises) {
+  if (rises) return { all, unique: all }
+  if (falls) all.reverse()
+  else {
     // Stable: of two samples at one wavelength the earlier in the file stays first.
-    const sorted = finite.slice().sort((a, b) => wavelength[a] - wavelength[b] || a - b)
-    all.set(sorted)
+    all.sort((a, b) => wavelength[a] - wavelength[b] || a - b)
     notes.push({
       code: 'wavelengths-sorted',
       text: 'the wavelengths are not in order in the file; samples were sorted',
@@ -130,7 +141,7 @@ function increasingOrder(
 
 function usableSamples(
   found: FoundSpectrum,
-  kept: Uint32Array,
+  kept: Indices,
   flux: Float64Array,
   sigma: Float64Array | undefined,
   notes: Note[],
@@ -140,7 +151,9 @@ function usableSamples(
   maskPadding(flux, usable, notes)
   const { flags, uncertainty } = found
   if (flags) {
-    const bad = Uint8Array.from(kept, (i) => (flags.isBad(flags.values[i]) ? 1 : 0))
+    const values = gathered(flags.values, kept)
+    const bad = new Uint8Array(values.length)
+    for (let i = 0; i < bad.length; i++) bad[i] = flags.isBad(values[i]) ? 1 : 0
     const count = bad.reduce((sum, value) => sum + value, 0)
     if (count === bad.length && count > 0)
       notes.push({ code: 'flags-ignored', text: `${flags.words} mark every sample; they are not used` })
@@ -148,10 +161,11 @@ function usableSamples(
   }
   // An inverse variance of 0 is the usual way to say that a sample is bad. Other uncertainties of 0 only say nothing.
   if (uncertainty?.kind === 'inverse variance' && sigma) {
-    const without = kept.reduce((sum, i) => sum + (uncertainty.values[i] > 0 ? 0 : 1), 0)
+    const weights = gathered(uncertainty.values, kept)
+    const without = weights.reduce((sum, value) => sum + (value > 0 ? 0 : 1), 0)
     if (without === flux.length)
       notes.push({ code: 'flags-ignored', text: 'the inverse variance is 0 everywhere; it is not used as a mask' })
-    else for (let i = 0; i < flux.length; i++) if (!(uncertainty.values[kept[i]] > 0)) usable[i] = 0
+    else for (let i = 0; i < flux.length; i++) if (!(weights[i] > 0)) usable[i] = 0
   }
   return usable
 }

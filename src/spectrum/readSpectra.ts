@@ -72,6 +72,7 @@ export function readSpectra(file: FitsFile, source: ByteSource, options: ReadOpt
   const notes: Note[] = []
   let frame2d: Hdu | undefined
   let samples = 0
+  let first: ReturnType<typeof readHeaderFacts> | undefined
   for (const hdu of file.hdus) {
     const room = { most: most - spectra.length, mostSamples: MOST_SAMPLES - samples }
     if (room.most <= 0 || room.mostSamples <= 0) {
@@ -91,13 +92,13 @@ export function readSpectra(file: FitsFile, source: ByteSource, options: ReadOpt
     const span = spanOf(answer.spectra)
     const headers = headersOf(file, hdu)
     const read = readHeaderFacts(headers, keywords)
+    first ??= read
     const frame = velocityFrame(headers, keywords)
     for (const found of answer.spectra)
       spectra.push(finished(found, { hdu, file, read, frame, span, notes: answer.notes }))
     samples += answer.spectra.reduce((sum, { flux }) => sum + flux.length, 0)
   }
-  const header = factHeaders(file, spectra[0]?.hdu ?? frame2d?.index ?? 0)
-  const whole = readHeaderFacts(header, keywords)
+  const whole = first ?? readHeaderFacts(headersOf(file, file.hdus[frame2d?.index ?? 0]), keywords)
   // What was noticed in the other HDUs is kept with the first spectrum, so that nothing is lost on the way.
   if (spectra.length > 0 && notes.length > 0) spectra[0] = { ...spectra[0], notes: [...spectra[0].notes, ...notes] }
   const result = { spectra, facts: whole.facts, notes: [...file.notes, ...notes, ...whole.notes] }
@@ -140,10 +141,6 @@ function refusalPlace(refusal: Refusal, options: ReadOptions): Place {
     ...(keyword === undefined ? {} : { keyword }),
     ...(refusal.byte === undefined ? {} : { byte: refusal.byte }),
   }
-}
-
-function factHeaders(file: FitsFile, hdu: number): ReturnType<typeof headersOf> {
-  return headersOf(file, file.hdus[hdu])
 }
 
 function hduSpectra(container: Container, hdu: Hdu): HduAnswer & { readonly isFrame?: boolean } {

@@ -46,6 +46,8 @@ export function standardAxis(headers: Headers, input: StandardInput): AxisAnswer
   const reference = linear.reference * unit.scale
   const isAir = code === 'AWAV'
   const wavelength = new Float64Array(length)
+  // The usual axes of wavelength need no way through the vacuum.
+  const isPlain = known.quantity === 'wavelength' && (algorithm === '' || algorithm === 'LOG')
   const sampling = /^[FWAV]2/.test(algorithm) ? SAMPLING[algorithm[0]] : undefined
   const vacuumReference = known.toVacuum(reference, rest)
   const vacuumSlope = known.slope(reference, rest)
@@ -66,6 +68,10 @@ export function standardAxis(headers: Headers, input: StandardInput): AxisAnswer
     )
   for (let i = 0; i < length; i++) {
     const step = linear.step * unit.scale * (i + 1 - linear.pixel)
+    if (isPlain) {
+      wavelength[i] = algorithm === '' ? reference + step : reference * Math.exp(step / reference)
+      continue
+    }
     if (algorithm === 'LOG') wavelength[i] = known.toVacuum(reference * Math.exp(step / reference), rest)
     else if (sampling) {
       const start = sampling.of(vacuumReference, rest)
