@@ -49,16 +49,18 @@ export function likelihoodGrid(
   vector: FeatureVector,
 ): LikelihoodGrid {
   const { types, classes, zones } = calibration
-  let scatterType = firstGuess(calibration, vector)
+  let place = firstGuess(calibration, vector)
   for (let round = 0; round < ROUNDS; round++) {
-    const lower = scatterFactor(calibration, vector, scatterType)
-    const found = types[Math.floor(lowest(distances(calibration, vector, lower, COARSE).distance) / classes.length)]
-    if (Math.abs(found - scatterType) < SETTLED) break
-    scatterType = found
+    const coarse = lowest(distances(calibration, vector, scatterFactor(calibration, vector, place), COARSE).distance)
+    const found = { type: types[Math.floor(coarse / classes.length)], luminosity: coarse % classes.length }
+    const isSettled = Math.abs(found.type - place.type) < SETTLED
+    if (isSettled && found.luminosity === place.luminosity) break
+    place = isSettled ? { ...place, luminosity: found.luminosity } : found
   }
+  const scatterType = place.type
   const { z, share } = zoneAt(zones, scatterType)
   const tempering = (1 - share) * zones[z].tempering + share * zones[Math.min(z + 1, zones.length - 1)].tempering
-  const lower = scatterFactor(calibration, vector, scatterType)
+  const lower = scatterFactor(calibration, vector, place)
   const { distance, weakness, weaknessGain } = distances(calibration, vector, lower, EVERY)
   const bare = forwardSolve(lower, vector.index.length, vector.value, new Float64Array(vector.index.length))
   const featureless = bare.reduce((sum, x) => sum + x * x, 0)
@@ -67,13 +69,19 @@ export function likelihoodGrid(
   return { logLikelihood, distance, weakness, weaknessGain, featureless, scatterType, factor: lower, tempering }
 }
 
-/** Cholesky factor of the features' covariance for a star near a type. */
+/** A type number, and the place of a class in the calibration's list. */
+interface Place {
+  readonly type: number
+  readonly luminosity: number
+}
+
+/** Cholesky factor of the features' covariance for a star near a type and class. */
 function scatterFactor(
   calibration: DecodedCalibration,
   { index, error }: FeatureVector,
-  scatterType: number,
+  { type: scatterType, luminosity }: Place,
 ): Float64Array {
-  const { features, types, classes, zones } = calibration
+  const { features, types, zones } = calibration
   const f = features.length
   const p = index.length
   const { z, share } = zoneAt(zones, scatterType)
@@ -84,9 +92,7 @@ function scatterFactor(
   for (let a = 0; a < p; a++) {
     const row = index[a] * f
     for (let b = 0; b <= a; b++) matrix[a * p + b] = (1 - share) * low[row + index[b]] + share * high[row + index[b]]
-    let uncertain = 0
-    for (let j = 0; j < classes.length; j++) uncertain += calibration.meanVariance(at, j, index[a]) / classes.length
-    matrix[a * p + a] += error[a] * error[a] + uncertain
+    matrix[a * p + a] += error[a] * error[a] + calibration.meanVariance(at, luminosity, index[a])
   }
   return choleskyFactor(matrix, p)
 }
@@ -182,11 +188,11 @@ function aim(
 const HELD = 4
 
 /** The zone's type that fits best with features taken one by one, each zone with its own scatter. */
-function firstGuess({ features, types, classes, mean, zones }: DecodedCalibration, vector: FeatureVector): number {
+function firstGuess({ features, types, classes, mean, zones }: DecodedCalibration, vector: FeatureVector): Place {
   const f = features.length
   const { index, value, error } = vector
   let best = Infinity
-  let guess = zones[0].type
+  let guess: Place = { type: zones[0].type, luminosity: classes.length - 1 }
   for (const { type, covariance } of zones) {
     const i = Math.min(types.length - 1, Math.max(0, Math.round(type - types[0])))
     for (let j = 0; j < classes.length; j++) {
@@ -199,7 +205,7 @@ function firstGuess({ features, types, classes, mean, zones }: DecodedCalibratio
       }
       if (sum < best) {
         best = sum
-        guess = type
+        guess = { type, luminosity: j }
       }
     }
   }

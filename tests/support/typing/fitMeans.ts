@@ -68,7 +68,10 @@ export interface FittedMeans {
   readonly mean: Float64Array
   /** shape (g) [scale²]. */
   readonly variance: Float64Array
-  /** shape (n × f) [unit of the feature]: measured minus predicted from the other stars; NaN where not measured. */
+  /**
+   * shape (n × f) [unit of the feature]: measured minus predicted from the other stars, without the share of the prediction's
+   * own error (which is large at the ends of the sequence, and counted apart in `variance`); NaN where not measured.
+   */
   readonly residual: Float64Array
 }
 
@@ -107,11 +110,12 @@ export function modelMeans(
       const residual = new Float64Array(n * f).fill(NaN)
       for (let i = 0; i < n; i++) {
         if (left.includes(i)) continue
+        const own = Math.sqrt((s.noise / stars[i].weight) * reduced[i * n + i])
         for (let k = 0; k < f; k++) {
           const at = i * f + k
           if (scaled.missing[at]) continue
           const predicted = pulled[at] - weights[at] / reduced[i * n + i]
-          residual[at] = (scaled.values[at] - predicted) * scaled.scale[k]
+          residual[at] = own * (scaled.values[at] - predicted) * scaled.scale[k]
         }
       }
       const mean = new Float64Array(grid.length * f)
