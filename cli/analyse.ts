@@ -1,4 +1,5 @@
-import type { PathLike } from 'node:fs'
+import { statSync, type PathLike } from 'node:fs'
+import { FormatError, placeAndMessage, UsageError } from '../src/errors.ts'
 import { analyseFile, openBytes, type OpenedFile } from '../src/pipeline/analyseFile.ts'
 import type { InForce } from '../src/pipeline/settingsInForce.ts'
 import type { Outcome } from '../src/quality/types.ts'
@@ -63,11 +64,23 @@ export function analysePath(task: AnalyseTask): Outcome {
 
 const companions = new Map<string, OpenedFile>()
 
-/** The companion is opened once a thread and stays open. */
+/**
+ * The file of --wavelengths, opened once a thread; it stays open.
+ *
+ * @throws UsageError where it cannot be opened or holds no FITS
+ */
 export function companionFile(path: string): OpenedFile {
   const known = companions.get(path)
   if (known) return known
-  const opened = openBytes(openFile(path))
-  companions.set(path, opened)
-  return opened
+  try {
+    if (!statSync(path).isFile())
+      throw new UsageError(`--wavelengths requires a FITS file, got ${path}, which is no file`)
+    const opened = openBytes(openFile(path))
+    companions.set(path, opened)
+    return opened
+  } catch (error) {
+    if (error instanceof UsageError) throw error
+    const why = error instanceof FormatError ? placeAndMessage(error) : reason(error)
+    throw new UsageError(`--wavelengths requires a readable FITS file, got ${path}: ${why}`, { cause: error })
+  }
 }

@@ -154,6 +154,7 @@ export async function readArguments(words: readonly string[], version: string, w
       'strip-aliased': true,
       'parse-positional-numbers': false,
       'populate--': false,
+      'dot-notation': false,
     })
     .usage(
       'darkline: what came off the night? Types, line strengths and checks of stellar spectra in FITS files.\n\n$0 COMMAND …',
@@ -169,7 +170,7 @@ export async function readArguments(words: readonly string[], version: string, w
     .exitProcess(false)
     .showHelpOnFail(false)
     .fail((message, error) => {
-      failure = error ?? new UsageError(message)
+      failure = error ?? new UsageError(plainly(message, words))
     })
   for (const name of COMMANDS) {
     const help = COMMAND_HELP[name]
@@ -202,6 +203,22 @@ export async function readArguments(words: readonly string[], version: string, w
   return { options: toOptions(argv as Record<string, unknown>) }
 }
 
+/** The complaint of the parser in the grammar of all messages: NAME requires RULE, got VALUE. */
+function plainly(message: string, words: readonly string[]): string {
+  const [first] = words
+  if (first !== undefined && !first.startsWith('-') && !COMMANDS.some((name) => name === first))
+    return `command requires one of ${COMMANDS.join(', ')}, got ${first}`
+  const choice = /Argument: (\S+), Given: (.*), Choices: (.*)/.exec(message)
+  if (choice)
+    return `--${choice[1]} requires one of ${choice[3].replaceAll('"', '')}, got ${choice[2].replaceAll('"', '')}`
+  const bare = /^Not enough arguments following: (\S+)/.exec(message)
+  if (bare) return `--${bare[1]} requires a value, got none`
+  const unknown = /^Unknown arguments?: (.*)/s.exec(message)
+  if (unknown)
+    return `${first ?? 'darkline'} requires options it knows (see: darkline ${first ?? ''} --help), got ${unknown[1]}`
+  return message
+}
+
 /** An option given twice counts as given last. */
 function lastOf(value: unknown): unknown {
   return Array.isArray(value) ? value.at(-1) : value
@@ -229,7 +246,10 @@ function toOptions(given: Record<string, unknown>): Options {
     throw new UsageError(`${name} requires one folder, got ${paths.length}: ${paths.join(', ')}`)
   for (const path of paths)
     if (path === '') throw new UsageError('path requires at least one character, got an empty text')
-  const text = (key: string): string | undefined => (argv[key] === undefined ? undefined : String(argv[key]))
+  const text = (key: string): string | undefined => {
+    if (argv[key] === '') throw new UsageError(`--${key} requires at least one character, got an empty text`)
+    return argv[key] === undefined ? undefined : String(argv[key])
+  }
   return {
     command: name,
     paths,

@@ -1,4 +1,6 @@
-import { closeSync, openSync, readdirSync, readSync, realpathSync, statSync, type Dirent, type PathLike } from 'node:fs'
+import { closeSync, existsSync, openSync, readdirSync, readSync, realpathSync, statSync } from 'node:fs'
+import type { Dirent, PathLike, Stats } from 'node:fs'
+import { basename, dirname } from 'node:path'
 
 /** A file to be answered for. `path` is what the system opens (bytes when the name is not valid UTF-8). */
 export interface FoundFile {
@@ -29,24 +31,52 @@ const FITS_START = Buffer.from('SIMPLE  =')
 export function* findFiles(paths: readonly string[]): Generator<PathAnswer> {
   for (const given of paths) {
     const file = given.replace(/^(\.\/+)+/, '') || '.'
-    const status = statSync(given, { throwIfNoEntry: false })
-    if (!status) {
-      yield {
-        problem: { file, code: 'no-such-path', message: 'path requires a file or folder, got none of that name' },
-      }
+    const path = asOnDisk(given)
+    const status = statusOf(path)
+    if (typeof status === 'string') {
+      yield { problem: missing(file, status) }
     } else if (status.isDirectory()) {
-      yield* walk(Buffer.from(given), Buffer.from(file), new Set())
+      yield* walk(Buffer.from(path), Buffer.from(file), new Set())
     } else if (status.isFile()) {
-      yield { found: { file, path: given, named: true } }
+      yield { found: { file, path, named: true } }
     } else {
-      yield {
-        problem: {
-          file,
-          code: 'not-a-file',
-          message: 'path requires a regular file or folder, got a device, pipe or socket',
-        },
-      }
+      yield { problem: notAFile(file) }
     }
+  }
+}
+
+/** What the system says of a path, links followed; its word for what went wrong where it says nothing else. */
+function statusOf(path: PathLike): Stats | string {
+  try {
+    return statSync(path)
+  } catch (error) {
+    return reason(error)
+  }
+}
+
+function missing(file: string, word: string): PathProblem {
+  return word === 'ENOENT'
+    ? { file, code: 'no-such-path', message: 'path requires a file or folder, got none of that name' }
+    : { file, code: 'unreadable', message: `path requires a file or folder, got ${word} from the system` }
+}
+
+function notAFile(file: string): PathProblem {
+  return {
+    file,
+    code: 'not-a-file',
+    message: 'path requires a regular file or folder, got a device, pipe or socket',
+  }
+}
+
+/** The bytes of a named path whose last part is no valid UTF-8 and so arrived with replacement characters. */
+function asOnDisk(given: string): string | Buffer {
+  if (!given.includes('\uFFFD') || existsSync(given)) return given
+  const folder = dirname(given)
+  try {
+    const name = readdirSync(folder, { encoding: 'buffer' }).filter((entry) => entry.toString() === basename(given))
+    return name.length === 1 ? Buffer.concat([Buffer.from(`${folder}/`), name[0]]) : given
+  } catch {
+    return given
   }
 }
 
@@ -75,23 +105,26 @@ function* walk(folder: Buffer, shown: Buffer, above: ReadonlySet<string>): Gener
   const slash = Buffer.from('/')
   const items = entries.map((entry) => {
     const path = Buffer.concat([folder, folder.at(-1) === 47 ? Buffer.alloc(0) : slash, entry.name])
-    const followed = entry.isSymbolicLink() ? statSync(path, { throwIfNoEntry: false }) : entry
-    const isFolder = followed?.isDirectory() ?? false
+    const followed = entry.isSymbolicLink() ? statusOf(path) : entry
+    const isFolder = typeof followed !== 'string' && followed.isDirectory()
     return {
       path,
       shown:
         file === '.' ? entry.name : Buffer.concat([shown, shown.at(-1) === 47 ? Buffer.alloc(0) : slash, entry.name]),
       isFolder,
-      isFile: followed?.isFile() ?? false,
+      isFile: typeof followed !== 'string' && followed.isFile(),
+      word: typeof followed === 'string' ? followed : undefined,
       key: isFolder ? Buffer.concat([entry.name, slash]) : entry.name,
     }
   })
   items.sort((a, b) => Buffer.compare(a.key, b.key))
   for (const item of items) {
     if (item.isFolder) yield* walk(item.path, item.shown, here)
-    else if (item.isFile) {
+    else {
       const name = item.shown.toString()
-      if (FITS_NAME.test(name) || beginsAsFits(item.path))
+      if (!item.isFile) {
+        if (FITS_NAME.test(name)) yield { problem: item.word === undefined ? notAFile(name) : missing(name, item.word) }
+      } else if (FITS_NAME.test(name) || beginsAsFits(item.path))
         yield { found: { file: name, path: openable(item.path), named: false } }
     }
   }

@@ -1,6 +1,7 @@
 import { UsageError } from '../src/errors.ts'
 import type { InForce } from '../src/pipeline/settingsInForce.ts'
 import type { Outcome } from '../src/quality/types.ts'
+import { companionFile } from './analyse.ts'
 import type { Options } from './args.ts'
 import { inOrder } from './batch.ts'
 import type { Crew } from './crew.ts'
@@ -38,6 +39,7 @@ export async function* gather(
   inForce: InForce,
   wantsCurves: boolean,
 ): AsyncGenerator<Outcome> {
+  if (options.wavelengths !== undefined) companionFile(options.wavelengths)
   const answers = firstChecked(options.paths)
   const progress = startProgress(
     'files',

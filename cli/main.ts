@@ -2,6 +2,8 @@
 import { readFileSync } from 'node:fs'
 import { FormatError, placeAndMessage, UsageError } from '../src/errors.ts'
 import { readArguments } from './args.ts'
+import { listenForInterrupts } from './interrupt.ts'
+import { printable } from './printable.ts'
 import { runCommand } from './commands.ts'
 
 const version = (
@@ -26,17 +28,24 @@ async function main(words: readonly string[]): Promise<number> {
 // A reader that has seen enough (`| head`) closes the pipe: that is no error.
 process.stdout.on('error', (error: NodeJS.ErrnoException) => {
   if (error.code === 'EPIPE') process.exit(0)
-  throw error
+  process.stderr.write(`darkline: standard output: the system answers ${error.code}\n`)
+  process.exit(2)
 })
+// Nobody listens to the remarks any more: the results are still wanted.
+process.stderr.on('error', () => undefined)
+listenForInterrupts()
 
 try {
   process.exitCode = await main(process.argv.slice(2))
 } catch (error) {
   process.exitCode = 2
-  if (error instanceof UsageError) process.stderr.write(`darkline: ${error.message}\n`)
-  else if (error instanceof FormatError) process.stderr.write(`darkline: ${placeAndMessage(error)}\n`)
-  else if (error instanceof Error && 'code' in error && 'path' in error)
-    process.stderr.write(`darkline: ${String(error.path)}: the system answers ${String(error.code)}\n`)
+  if (error instanceof UsageError)
+    process.stderr.write(`darkline: ${error.message.split('\n').map(printable).join('\n')}\n`)
+  else if (error instanceof FormatError) process.stderr.write(`darkline: ${printable(placeAndMessage(error))}\n`)
+  else if (error instanceof Error && 'code' in error && 'syscall' in error)
+    process.stderr.write(
+      `darkline: ${'path' in error ? String(error.path) : String(error.syscall)}: the system answers ${String(error.code)}\n`,
+    )
   else {
     process.stderr.write(
       `darkline: this is a fault of the program itself; please report it with the file that caused it\n${error instanceof Error ? error.stack : String(error)}\n`,

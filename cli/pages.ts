@@ -11,8 +11,9 @@ import { targetViews } from '../src/report/targetView.ts'
 import { CALIBRATION_NAME } from '../src/pipeline/nightOf.ts'
 import { inOrder } from './batch.ts'
 import type { Crew } from './crew.ts'
-import { pageTypeface } from './draw.ts'
+import { pageTypeface, type DrawTask } from './draw.ts'
 import { pageFonts } from './pageFonts.ts'
+import { printable } from './printable.ts'
 import { startProgress } from './progress.ts'
 import { writeWhole } from './write.ts'
 
@@ -47,7 +48,10 @@ export async function drawPages(
     paper: inForce.paper,
     provenance,
   }))
-  for await (const _ of inOrder(tasks, crew.atOnce, (task) => crew.draw(task))) progress.step()
+  for await (const problem of inOrder(tasks, crew.atOnce, (task) => drawn(task, crew))) {
+    progress.step()
+    if (problem !== undefined) process.stderr.write(`${printable(problem)}\n`)
+  }
   progress.stop()
 
   const pages = new Map(views.map((view, i) => [view.name, `targets/${names[i]}.pdf`]))
@@ -64,6 +68,17 @@ export async function drawPages(
   )
   writeWhole(join(out, 'night.html'), nightHtml(outcomes, night, options))
   return { targets: views.length }
+}
+
+/** Draws the pages of one target; what goes wrong with them, where the disk is not to blame, stops no other's. */
+async function drawn(task: DrawTask, crew: Crew): Promise<string | undefined> {
+  try {
+    await crew.draw(task)
+    return undefined
+  } catch (error) {
+    if (error instanceof Error && 'syscall' in error) throw error
+    return `${task.path}: pages require a target that can be drawn, got ${error instanceof Error ? error.message : String(error)}`
+  }
 }
 
 /**

@@ -16,9 +16,16 @@ export function startProgress(what: string, total: number, isQuiet: boolean): Pr
       hideCursor: true,
       clearOnComplete: true,
       etaBuffer: 50,
+      gracefulExit: false,
     },
     Presets.shades_classic,
   )
+  const stop = (): void => {
+    process.off('exit', stop)
+    bar.stop()
+  }
+  // An interrupt must not leave the cursor hidden.
+  process.once('exit', stop)
   bar.start(total, 0)
-  return { step: () => bar.increment(), stop: () => bar.stop() }
+  return { step: () => bar.increment(), stop }
 }

@@ -62,12 +62,21 @@ export function folderOutput(
 
 function sink(name: TableName, format: Format, width: number, isTerminal: boolean, stream: WriteStream): TableSink {
   if (format === 'csv' || format === 'jsonl') {
-    if (format === 'csv') stream.write(csvHead(name))
+    // The head waits for the first rows: a command that cannot run prints nothing.
+    let hasHead = format !== 'csv'
+    const writeHead = (): void => {
+      if (!hasHead) stream.write(csvHead(name))
+      hasHead = true
+    }
     return {
       add: (rows) => {
+        writeHead()
         if (rows.length) stream.write(format === 'csv' ? csvLines(name, rows) : jsonLines(name, rows))
       },
-      finish: () => Promise.resolve(stream.finish()),
+      finish: () => {
+        writeHead()
+        return Promise.resolve(stream.finish())
+      },
     }
   }
   const kept: Row[] = []

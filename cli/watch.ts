@@ -1,5 +1,6 @@
 import { statSync } from 'node:fs'
 import { setTimeout as wait } from 'node:timers/promises'
+import { takeInterrupt } from './interrupt.ts'
 import { findFiles, type FoundFile } from './files.ts'
 
 /** A file counts as complete when size and time of change stood still for this long. */
@@ -23,9 +24,7 @@ export async function watchFolder(
 ): Promise<void> {
   const seen = new Map<string, Seen>()
   const stop = new AbortController()
-  const interrupt = (): void => stop.abort()
-  process.once('SIGINT', interrupt)
-  process.once('SIGTERM', interrupt)
+  const giveBack = takeInterrupt(() => stop.abort())
   try {
     while (!stop.signal.aborted) {
       const ready = completeFiles(folder, seen, Date.now())
@@ -33,8 +32,7 @@ export async function watchFolder(
       await wait(LOOK_EVERY_MS, undefined, { signal: stop.signal }).catch(() => undefined)
     }
   } finally {
-    process.off('SIGINT', interrupt)
-    process.off('SIGTERM', interrupt)
+    giveBack()
   }
 }
 

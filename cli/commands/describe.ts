@@ -6,6 +6,7 @@ import { describeSpectrum } from '../../src/spectrum/describe.ts'
 import type { Options } from '../args.ts'
 import { companionFile } from '../analyse.ts'
 import { findFiles, reason, type FoundFile } from '../files.ts'
+import { printable } from '../printable.ts'
 import { openFile } from '../source.ts'
 import { UsageError } from '../../src/errors.ts'
 
@@ -16,6 +17,7 @@ export function runDescribe(options: Options): number {
   const format = options.format ?? 'table'
   if (format !== 'table' && format !== 'jsonl')
     throw new UsageError(`describe requires --format table or jsonl, got ${format}`)
+  if (options.wavelengths !== undefined) companionFile(options.wavelengths)
   let files = 0
   let isAnyUnreadable = false
   const problems: string[] = []
@@ -69,11 +71,17 @@ function describeFile({ file, path }: FoundFile, options: Options): Entry[] {
     }
     return [{ file, error: { code, message, ...where, file: undefined } }]
   } catch (error) {
+    if (error instanceof UsageError) throw error
     if (error instanceof FormatError)
       return [{ file, error: { code: error.code, message: error.message, ...error.where, file: undefined } }]
     if (error instanceof RangeError || error instanceof TypeError)
       return [{ file, error: { code: 'unforeseen', message: error.message } }]
-    throw error
+    return [
+      {
+        file,
+        error: { code: 'cannot-read', message: `file requires to be readable to its end, got ${reason(error)}` },
+      },
+    ]
   } finally {
     source.close()
   }
@@ -125,7 +133,7 @@ function inWords(entry: Entry): string {
       keyword === undefined ? '' : `keyword ${keyword}, `,
       byte === undefined ? '' : `byte ${byte}, `,
     ].join('')
-    return `${String(file)}: ${place.replace(/, $/, ': ')}${message}\n`
+    return `${printable(`${String(file)}: ${place.replace(/, $/, ': ')}${message}`)}\n`
   }
   const lines = Object.entries(rest)
     .filter(
@@ -137,7 +145,7 @@ function inWords(entry: Entry): string {
         !(Array.isArray(value) && value.length === 0),
     )
     .map(([key, value]) => `  ${key.padEnd(12)} ${valueInWords(value)}`)
-  return `${String(file)}${at}\n${lines.join('\n')}\n`
+  return `${printable(String(file))}${at}\n${lines.join('\n')}\n`
 }
 
 function valueInWords(value: unknown): string {
@@ -145,17 +153,20 @@ function valueInWords(value: unknown): string {
     const items = value.map((item) =>
       typeof item === 'object' && item !== null
         ? 'text' in item
-          ? String(item.text)
+          ? printable(String(item.text))
           : valueInWords(item)
-        : String(item),
+        : printable(String(item)),
     )
     return items.some((item) => item.length > 20) ? items.join(`\n${' '.repeat(15)}`) : items.join(' × ')
   }
   if (typeof value === 'object' && value !== null) {
     return Object.entries(value)
       .filter(([, v]) => v !== undefined && v !== '')
-      .map(([k, v]) => `${k} ${typeof v === 'object' && v !== null && 'state' in v ? String(v.state) : String(v)}`)
+      .map(
+        ([k, v]) =>
+          `${k} ${typeof v === 'object' && v !== null && 'state' in v ? String(v.state) : printable(String(v))}`,
+      )
       .join(', ')
   }
-  return String(value)
+  return printable(String(value))
 }

@@ -10,6 +10,7 @@ import { UsageError } from '../../src/errors.ts'
 import type { Options } from '../args.ts'
 import { startCrew } from '../crew.ts'
 import { count, exitStatus, gather, type Tally } from '../gather.ts'
+import { printable } from '../printable.ts'
 import { folderOutput, standardOutput, type TableSink } from '../results.ts'
 import { inForceOf, readSettings } from '../settingsFile.ts'
 
@@ -45,7 +46,7 @@ export async function runTables(options: Options, _version: string): Promise<num
       remark(outcome, options)
       for (const name of names) sinks[name]?.add(ROWS[name]?.(outcome) ?? [])
       if (options.why)
-        for (const spectrum of outcome.spectra) process.stdout.write(`${whyText(outcome.file, spectrum)}\n`)
+        for (const spectrum of outcome.spectra) process.stdout.write(`${whyText(printable(outcome.file), spectrum)}\n`)
     }
   } finally {
     await crew.close()
@@ -70,10 +71,10 @@ export function remark(outcome: Outcome, options: Options): void {
       error.keyword ? `, keyword ${error.keyword}` : '',
       error.byte === undefined ? '' : `, byte ${error.byte}`,
     ].join('')
-    process.stderr.write(`${file}${place}: ${error.message}\n`)
+    process.stderr.write(`${printable(`${file}${place}: ${error.message}`)}\n`)
   } else if (frame?.statistics && options.command !== 'check' && options.command !== 'night' && !options.quiet) {
     process.stderr.write(
-      `${file}: passed over, a 2-D ${frame.kind} frame of ${frame.statistics.width} × ${frame.statistics.height} pixels\n`,
+      `${printable(file)}: passed over, a 2-D ${frame.kind} frame of ${frame.statistics.width} × ${frame.statistics.height} pixels\n`,
     )
   }
 }

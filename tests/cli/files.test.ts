@@ -19,6 +19,7 @@ for (const name of [
 ])
   writeFileSync(join(root, name), 'x')
 writeFileSync(join(root, 'a/frame0001'), 'SIMPLE  =                    T')
+symlinkSync('self', join(root, 'self'))
 symlinkSync(root, join(root, 'b/circle'))
 symlinkSync(join(root, 'nowhere'), join(root, 'b/dangling.fits'))
 
@@ -36,6 +37,7 @@ describe('findFiles', () => {
       'ROOT/a/frame0001',
       'ROOT/b.fits',
       'link-in-a-circle: ROOT/b/circle',
+      'no-such-path: ROOT/b/dangling.fits',
       'ROOT/b/deep/x.fts',
       'ROOT/b/old.fits.Z',
       'ROOT/odd/=cmd.fits',
@@ -55,5 +57,20 @@ describe('findFiles', () => {
     } finally {
       process.chdir(here)
     }
+  })
+
+  it('answers for links to themselves, names too long, paths below a file, devices, and names that are no UTF-8', () => {
+    const long = 'x'.repeat(300)
+    expect(names([`${root}/self`, `${root}/${long}`, `${root}/a.fits/b`, '/dev/null'])).toEqual([
+      'unreadable: ROOT/self',
+      `unreadable: ROOT/${long}`,
+      'unreadable: ROOT/a.fits/b',
+      'not-a-file: /dev/null',
+    ])
+    const odd = Buffer.concat([Buffer.from(join(root, 'odd/')), Buffer.of(0xff, 0x41)])
+    writeFileSync(odd, 'x')
+    // as the runtime hands over the argument: bytes that are no UTF-8 become U+FFFD
+    const [answer] = findFiles([odd.toString()])
+    expect('found' in answer && Buffer.from(answer.found.path as Buffer).equals(odd)).toBe(true)
   })
 })
