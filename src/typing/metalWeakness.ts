@@ -1,4 +1,4 @@
-import type { PeculiarityCase } from './peculiarities.ts'
+import type { PeculiarityCase } from './peculiarityCase.ts'
 import type { Peculiarity } from './types.ts'
 
 /** Metals at least this far on the way to the published metal-weak means, in their units. */
