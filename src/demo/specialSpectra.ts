@@ -100,9 +100,12 @@ const BROWN_BANDS: Places = [
   [8611, 60],
   [8692, 60],
 ]
+/** The potassium doublet's wings reach over hundreds of Å in so dense a gas. */
+const BROWN_POTASSIUM: Places = [
+  [7664.9, 200],
+  [7698.97, 200],
+]
 const BROWN_LINES: Places = [
-  [7664.9, 60],
-  [7698.97, 60],
   [7800.3, 6],
   [7947.6, 6],
   [8183.26, 4],
@@ -192,7 +195,8 @@ export function specialLight(kind: SpecialKind, lightOf: LightOf = starLight): F
   }
   if (kind === 'brown dwarf') {
     const bands = withAll(clear(), { form: 'head', reach: 110 }, BROWN_BANDS)
-    return product(blackBody(1900), withAll(bands, { form: 'winged', width: 45 }, BROWN_LINES))
+    const lines = withAll(bands, { form: 'winged', width: 45 }, BROWN_LINES)
+    return product(blackBody(1900), withAll(lines, { form: 'winged', width: 180 }, BROWN_POTASSIUM))
   }
   // a nebula: lines on a weak blue continuum
   const weak = blackBody(20000).map((value) => 0.02 * value)

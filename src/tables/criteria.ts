@@ -73,6 +73,13 @@ export const KIND_CRITERIA: KindCriteria = {
         'H9 has at least 0.39 of Hγ in ordinary stars without metals at up to 13 Å FWHM; in a white dwarf (log Ne near 17) the series ends at n = 7 to 9 by Inglis & Teller',
       source: 'inglis1939',
     },
+    seriesFirst: {
+      value: 0.25,
+      unit: '1',
+      reason:
+        'H8 over Hγ; without H8 the series ends at n = 7, log Ne of 16.9 by Inglis & Teller, which no subdwarf has',
+      source: 'inglis1939',
+    },
     seriesWidth: {
       value: 33,
       unit: 'Å',
@@ -98,6 +105,12 @@ export const KIND_CRITERIA: KindCriteria = {
       unit: 'Å',
       reason: 'widest profile at which H10 and H11 stand apart',
       source: 'common',
+    },
+    seriesFaintCoarse: {
+      value: 0.36,
+      unit: '1',
+      reason: 'the same at up to 14 Å FWHM, where ordinary hot stars keep 0.43',
+      source: 'kindsAtlas',
     },
     seriesEndFwhm: {
       value: 14,
@@ -316,6 +329,19 @@ export const KIND_CRITERIA: KindCriteria = {
       reason:
         'titanium oxide at 6230 Å, which stars earlier than K5 do not have; ripples of 3 % in the level make up to 4.5 Å',
       source: 'kindsAtlas',
+    },
+    featurelessLine: {
+      value: 0.7,
+      unit: 'Å',
+      reason:
+        'no line stronger or weaker than this, nor an error of half of it; Hα of the quietest O stars and Ca II of others exceed it',
+      source: 'kindsAtlas',
+    },
+    blueColour: {
+      value: 1.35,
+      unit: '1',
+      reason: 'flux density per Å at 4200 Å over that at 6400 Å; 1.35 for a black body of 6600 K',
+      source: 'planck',
     },
     metallicSpread: {
       value: 5,

@@ -14,6 +14,7 @@ export const SOURCES = {
   },
   inglis1939: { citation: 'Inglis & Teller 1939, ApJ 90, 439', doi: '10.1086/144118', fromMemory: true },
   martin1999: { citation: 'Martín et al. 1999, AJ 118, 2466 (PC3)', doi: '10.1086/301107', fromMemory: true },
+  planck: { citation: "Planck's law with the exact SI values of h, c and k" },
   conti1970: { citation: 'Conti 1970, PASP 82, 781', doi: '10.1086/128965', fromMemory: true },
   kindsAtlas: { citation: 'what ordinary stars of Jacoby et al. 1984 and Pickles 1998 reach, measured here' },
   memory: { citation: 'written down from memory', fromMemory: true },

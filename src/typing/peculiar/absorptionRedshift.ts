@@ -1,6 +1,6 @@
 import type { KindCriteria } from '../../tables/types.ts'
 import { breakAt4000 } from './galaxy.ts'
-import { atRedshift, type LightSums } from './lightSums.ts'
+import { atRedshift } from './lightSums.ts'
 import { lookAt, type Look } from './look.ts'
 
 /** Redshift step that the search goes by: less than half of the narrowest window. */
@@ -20,7 +20,7 @@ export function absorptionRedshift(look: Look, criteria: KindCriteria, from: num
   let best = 0
   let found: number | undefined
   for (let redshift = from; redshift < look.limit('redshiftMaximum'); redshift += STEP) {
-    const strength = oldStars(look.sums, look.fwhm, criteria, redshift)
+    const strength = oldStars(lookAt(atRedshift(look.sums, redshift), look, criteria))
     if (strength > best) {
       best = strength
       found = redshift
@@ -30,8 +30,7 @@ export function absorptionRedshift(look: Look, criteria: KindCriteria, from: num
 }
 
 /** Å of absorption in all lines together; 0 where one that is covered is missing, or too few are covered. */
-function oldStars(sums: LightSums, fwhm: number, criteria: KindCriteria, redshift: number): number {
-  const there = lookAt(atRedshift(sums, redshift), fwhm, criteria)
+function oldStars(there: Look): number {
   let total = 0
   let covered = 0
   for (const name of ['CaKGalaxy', 'CaHGalaxy', 'G4300', 'Mgb', 'NaD'] as const) {

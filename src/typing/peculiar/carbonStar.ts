@@ -1,3 +1,4 @@
+import { isBlue } from './featureless.ts'
 import type { Look, Recognised } from './look.ts'
 
 /** Windows [Å] on either side of the heads of C₂'s Swan bands, which fade to the blue. */
@@ -24,10 +25,11 @@ export function carbonStar(look: Look): Recognised | undefined {
     if (drop > limit && drop > sigma * error) drops.push(`${Math.round(100 * drop)} % at ${head} Å`)
   }
   if (drops.length < 2 || drops.length < covered) return undefined
-  return {
-    peculiarity: look.peculiarity('carbon', `the light drops bluewards of the heads of C2 by ${drops.join(', ')}`),
-    isOutside: false,
-  }
+  const text = `the light drops bluewards of the heads of C2 by ${drops.join(', ')}`
+  // Carbon stars are cool; in light this blue the bands are those of a white dwarf (DQ).
+  return isBlue(look)
+    ? { peculiarity: look.peculiarity('white dwarf', `${text}, in light bluer than an F star's`), isOutside: true }
+    : { peculiarity: look.peculiarity('carbon', text), isOutside: false }
 }
 
 function hasTitanium(look: Look): boolean {

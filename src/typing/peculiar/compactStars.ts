@@ -84,12 +84,11 @@ function brokenSeries(look: Look): Recognised | undefined {
   const eighth = look.strength('H8')
   const text = `the Balmer series breaks off: H9 has ${share(ninth.ew, gamma.ew)} of Hγ's ${inAngstrom(gamma.ew)} (ordinary hot stars at least ${Math.round(100 * limit)} %)`
   const isWide =
-    width !== undefined
-      ? width > look.limit('seriesWidth')
-      : eighth !== undefined && eighth.ew < look.limit('seriesEnd') * gamma.ew
+    (width !== undefined && width > look.limit('seriesWidth')) ||
+    (eighth !== undefined && eighth.ew + 2 * eighth.error < look.limit('seriesFirst') * gamma.ew)
   if (!isWide && (look.fwhm > look.limit('seriesEndFwhm') || hasWind(look))) return undefined
   return isWide
-    ? whiteDwarf(look, `${text}, and its lines have wide wings`)
+    ? whiteDwarf(look, `${text}, and the lines have wide wings or H8 is missing too`)
     : hotSubdwarf(look, `${text}, its lines being narrower than a white dwarf's`)
 }
 
@@ -123,13 +122,13 @@ function wingedHydrogen(look: Look): Recognised | undefined {
 }
 
 function faintSeries(look: Look): Recognised | undefined {
-  if (look.fwhm > look.limit('seriesFaintFwhm') || hasWind(look)) return undefined
+  if (look.fwhm > look.limit('seriesEndFwhm') || hasWind(look)) return undefined
   const gamma = look.strength('Hgamma')
   const tenth = look.strength('H10')
   const eleventh = look.strength('H11')
   if (!gamma || !tenth || !eleventh || gamma.ew < look.limit('seriesHydrogen')) return undefined
   if (gamma.ew > look.limit('seriesFaintHydrogen')) return undefined
-  const limit = look.limit('seriesFaint')
+  const limit = look.limit(look.fwhm > look.limit('seriesFaintFwhm') ? 'seriesFaintCoarse' : 'seriesFaint')
   const short = limit * gamma.ew - tenth.ew - eleventh.ew
   if (short < 3 * Math.hypot(limit * gamma.error, tenth.error, eleventh.error)) return undefined
   return hotSubdwarf(

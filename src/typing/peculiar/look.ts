@@ -8,6 +8,8 @@ export interface Look {
   readonly sums: LightSums
   /** Å, FWHM of the profile or, where it was told from stellar lines, an upper limit to it. */
   readonly fwhm: number
+  /** The light is a flux density per Å, so that it has a colour. */
+  readonly isFluxDensity: boolean
   /** Å in absorption; undefined where not covered. */
   readonly strength: (name: KindWindow) => Strength | undefined
   /** Central depth within ±3 Å, positive in absorption. */
@@ -27,11 +29,16 @@ export interface Recognised {
 const CORE = 3
 
 /** The spectrum behind `sums` through the windows and limits of `criteria`; strengths are measured once, when asked. */
-export function lookAt(sums: LightSums, fwhm: number, { windows, limits, sources }: KindCriteria): Look {
+export function lookAt(
+  sums: LightSums,
+  { fwhm, isFluxDensity }: Pick<Look, 'fwhm' | 'isFluxDensity'>,
+  { windows, limits, sources }: KindCriteria,
+): Look {
   const known = new Map<KindWindow, Strength | undefined>()
   return {
     sums,
     fwhm,
+    isFluxDensity,
     strength: (name) => {
       if (!known.has(name)) known.set(name, strengthOf(sums, windows[name]))
       return known.get(name)

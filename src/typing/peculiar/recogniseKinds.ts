@@ -11,6 +11,7 @@ import { compactStar, isHot } from './compactStars.ts'
 import { compositeLight } from './composite.ts'
 import { gasEmission, type GasEmission, stellarEmission } from './emissionLines.ts'
 import { metallicLine } from './metallicLine.ts'
+import { featurelessDwarf } from './featureless.ts'
 import { mixedPopulation } from './galaxy.ts'
 import { atRedshift, sumLight } from './lightSums.ts'
 import { type Look, lookAt, type Recognised } from './look.ts'
@@ -36,14 +37,14 @@ export function recogniseKinds(star: KindCase, criteria: KindCriteria, calibrati
   const velocity = restFrame.trusted ? restFrame.velocity : 0
   const isFast = Math.abs(velocity) > criteria.limits.fastestStar.value
   const sums = sumLight(spectrum, continuum, isFast ? 0 : velocity)
-  const look = lookAt(sums, resolution.fwhm, criteria)
+  const look = lookAt(sums, { fwhm: resolution.fwhm, isFluxDensity: spectrum.fluxKind === 'flux density' }, criteria)
   const gas = findGas(look, { ...star, spectrum }, criteria)
-  if (gas) return [kindOfGas(gas, look, lookAt(atRedshift(sums, gas.redshift), resolution.fwhm, criteria))]
+  if (gas) return [kindOfGas(gas, look, lookAt(atRedshift(sums, gas.redshift), look, criteria))]
   if (!restFrame.trusted || isFast) {
     const redshift = absorptionRedshift(look, criteria, criteria.limits.fastestStar.value / CLIGHT)
     if (redshift !== undefined) return [farGalaxy(look, redshift)]
   }
-  const outside = compactStar(look) ?? brownDwarf(look) ?? mixedPopulation(look)
+  const outside = compactStar(look) ?? brownDwarf(look) ?? mixedPopulation(look) ?? featurelessDwarf(look)
   if (outside) {
     const emission = stellarEmission(look)
     return emission ? [outside, emission] : [outside]
@@ -96,7 +97,7 @@ function findGas(look: Look, { spectrum, continuum }: KindCase, criteria: KindCr
   const peaks = emissionPeaks(spectrum, continuum)
   const own = gasEmission(look)
   if (own || peaks.length < 3) return own
-  const { sums, fwhm } = look
+  const { sums } = look
   const tried: number[] = []
   let best: GasEmission | undefined
   for (const peak of peaks)
@@ -105,7 +106,7 @@ function findGas(look: Look, { spectrum, continuum }: KindCase, criteria: KindCr
       if (redshift < LEAST_REDSHIFT || redshift > look.limit('redshiftMaximum')) continue
       if (tried.some((one) => Math.abs(one - redshift) < SAME)) continue
       tried.push(redshift)
-      const gas = gasEmission(lookAt(atRedshift(sums, redshift), fwhm, criteria))
+      const gas = gasEmission(lookAt(atRedshift(sums, redshift), look, criteria))
       if (!gas) continue
       const peaked = gas.lines.filter((name) =>
         peaks.some((one) => {
