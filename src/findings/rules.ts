@@ -1,6 +1,6 @@
 import type { Finding, FindingRule } from './types.ts'
 
-/** Makes a finding of a rule: the level and unit are the rule's unless given. */
+/** Makes a finding of a rule: the level and unit are the rule's unless given. Its text begins with a capital. */
 export function finding(
   rules: Readonly<Record<string, FindingRule>>,
   code: string,
@@ -13,9 +13,14 @@ export function finding(
   return {
     level: level ?? rule.level,
     code,
-    text,
+    text: sentence(text),
     ...(value === undefined ? {} : { value }),
     ...(limit === undefined ? {} : { limit }),
     ...(rule.unit === undefined ? {} : { unit: rule.unit }),
   }
+}
+
+/** The text with a capital where it begins with a plain word; names of files, keywords and columns stay as they are. */
+function sentence(text: string): string {
+  return /^[a-z]+(?=[ ,:]|$)/.test(text) ? text.charAt(0).toUpperCase() + text.slice(1) : text
 }

@@ -1,7 +1,7 @@
 import { NIGHT_RULES } from '../findings/night.ts'
 import { finding } from '../findings/rules.ts'
 import type { Finding } from '../findings/types.ts'
-import { figure } from '../quality/figures.ts'
+import { withError } from '../quality/figures.ts'
 import type { Thresholds } from '../tables/types.ts'
 import { commonOffset } from '../velocity/commonOffset.ts'
 import type { NightSpectrum } from './exposures.ts'
@@ -27,6 +27,6 @@ export function commonOffsetFindings(spectra: readonly NightSpectrum[], threshol
   if (!common?.isCommon || Math.abs(common.offset) < limit) return []
   const { offset, error, stars, isMedium } = common
   const medium = isMedium ? '; 82 to 85 km/s is the difference between air and vacuum' : ''
-  const text = `The ${stars} stars share a velocity of ${figure(offset)} ± ${figure(error)} km/s, so the wavelength scale is off${medium}`
+  const text = `The ${stars} stars share a velocity of ${withError(offset, error)} km/s, so the wavelength scale is off${medium}`
   return [finding(NIGHT_RULES, 'common-wavelength-offset', text, { value: offset, limit })]
 }

@@ -57,12 +57,13 @@ export function summariseNight(outcomes: readonly Outcome[], options: NightOptio
   for (const exposure of exposures)
     for (const found of checkPointing(exposure, thresholds, slip)) addFinding(byFile, exposure.outcome, found)
 
+  const doubted = outcomesWith(byFile, 'clock-out-of-order')
   const frames = exposures.map((exposure) => {
     const { frame } = outcomes[exposure.outcome]
     return {
       exposure,
       ...(frame?.statistics ? { statistics: frame.statistics } : {}),
-      isTimeDoubtful: (byFile.get(exposure.outcome) ?? []).some(({ code }) => code === 'clock-out-of-order'),
+      isTimeDoubtful: doubted.has(exposure.outcome),
       isUsable: frame?.quality !== 'unusable' && !repeats.has(exposure.outcome),
     }
   })
@@ -86,20 +87,35 @@ export function summariseNight(outcomes: readonly Outcome[], options: NightOptio
   })
   nightFindings.push(...findings)
 
-  const times = exposures.flatMap(({ mjd }) => mjd ?? [])
+  const apart = outcomesWith(byFile, 'another-night')
+  const times = exposures.flatMap(({ mjd, outcome }) => (doubted.has(outcome) || apart.has(outcome) ? [] : (mjd ?? [])))
+  // what is followed through the night needs a clock that holds and light that was measured
+  const followed = spectra.map(({ ref }, i) => !doubted.has(ref.outcome) && judged[i].quality !== 'unusable')
   return {
     spectra: judged,
     targets: summaries,
     notObserved,
     observeAgain,
     cover: calibrationCover(frames, coverRules),
-    drifts: driftsOf(spectra, frames, keys, thresholds),
-    log: observingLog(exposures),
+    drifts: driftsOf(
+      spectra.filter((_, i) => followed[i]),
+      frames.filter(({ isTimeDoubtful }) => !isTimeDoubtful),
+      keys.filter((_, i) => followed[i]),
+      thresholds,
+    ),
+    log: observingLog(exposures, doubted),
     findings: gravestFirst(nightFindings),
     frameFindings: new Map([...byFile].filter(([outcome]) => outcomes[outcome].spectra.length === 0)),
     ...(times.length ? { mjdFirst: least(times), mjdLast: -least(times.map((time) => -time)) } : {}),
     counts: countsOf(outcomes, judged),
   }
+}
+
+/** Outcomes that have a finding of a code. */
+function outcomesWith(byFile: FileFindings, wanted: string): ReadonlySet<number> {
+  return new Set(
+    [...byFile].flatMap(([outcome, found]) => (found.some(({ code }) => code === wanted) ? [outcome] : [])),
+  )
 }
 
 /** Usable raw frames of each listed target, by its plain name. */

@@ -50,6 +50,8 @@ export interface TargetSummary {
   readonly expectedProbability?: number
   readonly snrWanted?: number
   readonly snrReached?: number
+  /** Of the type of all spectra together, at the samples of each one's curves (as `spectra`); for pages. */
+  readonly expected?: readonly (Float32Array | undefined)[]
   readonly observeAgain: boolean
   readonly reason?: string
   readonly exposureNeeded?: number
@@ -91,6 +93,8 @@ export interface Drift {
 export interface LogEntry {
   readonly file: string
   readonly mjd?: number
+  /** True where the time does not follow the order of the files. */
+  readonly isTimeDoubtful?: true
   readonly kind: string
   readonly object: string
   readonly exposure?: number
@@ -116,7 +120,7 @@ export interface NightSummary {
   /** Listed but without any spectrum. */
   readonly notObserved: readonly Target[]
   /** Targets of the list never observed and targets to be observed again, the most urgent first. */
-  readonly observeAgain?: readonly ObserveAgain[]
+  readonly observeAgain: readonly ObserveAgain[]
   readonly cover: readonly SetupCover[]
   readonly drifts: readonly Drift[]
   readonly log: readonly LogEntry[]

@@ -1,7 +1,9 @@
 import type { Continuum } from '../continuum/types.ts'
 import type { Curves } from '../quality/types.ts'
 import type { Spectrum } from '../spectrum/types.ts'
+import type { ExpectedSpectrum } from '../typing/expected.ts'
 import type { RestFrame } from '../velocity/types.ts'
+import { levelMatched } from './levelMatched.ts'
 
 const CLIGHT = 299792.458
 /** Points a page can show across its width; each bin keeps its lowest and highest sample, so that no line is lost. */
@@ -12,7 +14,7 @@ export function thinnedCurves(
   spectrum: Spectrum,
   continuum: Continuum,
   frame: RestFrame,
-  expected?: { readonly wavelength: ArrayLike<number>; readonly normalised: ArrayLike<number> },
+  expected?: Pick<ExpectedSpectrum, 'wavelength' | 'normalised'>,
 ): Curves {
   const kept = extremes(spectrum)
   const n = kept.length
@@ -36,8 +38,18 @@ export function thinnedCurves(
     flux,
     continuum: level,
     normalised,
-    ...(expected ? { expected: Float32Array.from(restWavelength, (x) => interpolated(expected, x)) } : {}),
+    ...(expected ? { expected: expectedCurve(restWavelength, normalised, expected) } : {}),
   }
+}
+
+/** An expected spectrum at the samples of a measured one, its level matched to it. */
+export function expectedCurve(
+  restWavelength: Float64Array,
+  normalised: Float32Array,
+  expected: Pick<ExpectedSpectrum, 'wavelength' | 'normalised'>,
+): Float32Array {
+  const values = Float32Array.from(restWavelength, (x) => interpolated(expected, x))
+  return levelMatched(restWavelength, normalised, values)
 }
 
 /** Indices that keep the lowest and highest usable sample of each of MOST_POINTS / 2 runs, and both ends. */

@@ -1,11 +1,13 @@
 import type { Finding } from '../findings/types.ts'
 import { NO_TYPE } from '../night/nightTyping.ts'
 import { summariseNight } from '../night/summariseNight.ts'
-import type { NightSummary, Target } from '../night/types.ts'
+import type { NightSummary, Target, TargetSummary } from '../night/types.ts'
 import type { Outcome } from '../quality/types.ts'
 import { CALIBRATION } from '../tables/calibration.ts'
 import { combineTypes } from '../typing/combineTypes.ts'
+import { expectedSpectrum } from '../typing/expected.ts'
 import { expectedProbability } from '../typing/expectedProbability.ts'
+import { expectedCurve } from './curves.ts'
 import type { InForce } from './settingsInForce.ts'
 
 /** Name of the calibration that types rest on. */
@@ -34,5 +36,20 @@ export function nightOf(outcomes: readonly Outcome[], { inForce, targets, findin
       probability: expectedProbability,
     },
   })
-  return { ...night, findings: [...findings, ...night.findings] }
+  const withCurves = night.targets.map((one) => withExpected(one, outcomes))
+  return { ...night, targets: withCurves, findings: [...findings, ...night.findings] }
+}
+
+/** A target of several spectra with the spectrum expected of their common type at the samples of each one's curves. */
+function withExpected(target: TargetSummary, outcomes: readonly Outcome[]): TargetSummary {
+  const { typeNumber, luminosityNumber } = target.type
+  if (target.spectra.length < 2 || typeNumber === undefined) return target
+  const expected = expectedSpectrum(CALIBRATION, typeNumber, luminosityNumber ?? 5)
+  if (!expected) return target
+  const curves = target.spectra.map(({ outcome, spectrum }) => outcomes[outcome]?.spectra[spectrum]?.curves)
+  if (curves.every((one) => one === undefined)) return target
+  return {
+    ...target,
+    expected: curves.map((one) => (one ? expectedCurve(one.restWavelength, one.normalised, expected) : undefined)),
+  }
 }

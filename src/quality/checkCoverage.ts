@@ -41,7 +41,11 @@ function checkRange({ wavelength, flux, usable }: Spectrum, limit: Limits): Find
   const covered =
     Math.max(0, Math.min(last, CLASSICAL[1]) - Math.max(first, CLASSICAL[0])) / (CLASSICAL[1] - CLASSICAL[0])
   if (covered >= 0.5) return []
-  const text = `${percent(covered)} of the range ${CLASSICAL[0]} to ${CLASSICAL[1]} Å is covered, in which types are defined`
+  const classical = `${CLASSICAL[0]} to ${CLASSICAL[1]} Å, in which types are defined`
+  const text =
+    covered === 0
+      ? `The spectrum does not cover ${classical}`
+      : `The spectrum covers only ${percent(covered)} of ${classical}`
   return [finding(QUALITY_RULES, 'classical-region-missing', text, { value: covered, limit: 0.5 })]
 }
 

@@ -1,7 +1,7 @@
 import { QUALITY_RULES } from '../findings/quality.ts'
 import { finding } from '../findings/rules.ts'
 import type { Finding } from '../findings/types.ts'
-import { figure } from './figures.ts'
+import { figure, withError } from './figures.ts'
 import type { Limits, Samples, SpectrumInput } from './samples.ts'
 
 const LIGHT = 299792.458
@@ -19,7 +19,7 @@ function checkZeroPoint({ zeroPoint, resolution }: SpectrumInput, { step }: Samp
   if (!zeroPoint || !(Math.abs(zeroPoint.offset) > limit('zeroPointSigma') * zeroPoint.error)) return []
   const { offset, error, from } = zeroPoint
   const shift = (Math.abs(offset) / LIGHT) * MIDDLE
-  const said = `${figure(offset)} ± ${figure(error)} km/s, by ${shortList(from)}`
+  const said = `${withError(offset, error)} km/s, by ${shortList(from)}`
   if (Math.abs(offset) >= AIR_VACUUM.from && Math.abs(offset) <= AIR_VACUUM.to && error < 5) {
     const text = `The wavelengths are off by ${said}: the difference between air and vacuum is 82 to 85 km/s`
     return [finding(QUALITY_RULES, 'air-vacuum-mix-up', text, { value: offset, limit: AIR_VACUUM.from })]
@@ -70,6 +70,6 @@ function checkVelocity({ restFrame }: SpectrumInput, limit: Limits): Finding[] {
       : []
   const { velocity, error } = restFrame
   if (Math.abs(velocity) <= limit('velocityMaximum')) return []
-  const text = `The velocity is ${figure(velocity)}${error === undefined ? '' : ` ± ${figure(error)}`} km/s, more than ${limit('velocityMaximum')} km/s`
+  const text = `The velocity is ${error === undefined ? figure(velocity) : withError(velocity, error)} km/s, more than ${limit('velocityMaximum')} km/s`
   return [finding(QUALITY_RULES, 'velocity-unlikely', text, { value: velocity, limit: limit('velocityMaximum') })]
 }

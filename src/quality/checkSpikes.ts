@@ -1,3 +1,4 @@
+import { featureName } from '../features/featureName.ts'
 import { QUALITY_RULES } from '../findings/quality.ts'
 import { finding } from '../findings/rules.ts'
 import type { Finding } from '../findings/types.ts'
@@ -99,7 +100,7 @@ export function checkSpikes(input: SpectrumInput, samples: Samples, limit: Limit
           spike.height * samples.step > 2 * (ewErr ?? 0),
       )
       if (!hit) continue
-      const line = `${hit.feature} (${hit.wavelengthRest.toFixed(0)} Å)`
+      const line = `${featureName(hit.feature)} (${hit.wavelengthRest.toFixed(0)} Å)`
       const words = `A cosmic-ray hit of ${figure(spike.sigma)} times the noise at ${spike.wavelength.toFixed(1)} Å falls on the line ${line}`
       found.push(
         finding(QUALITY_RULES, 'cosmic-ray-on-line', words, { value: spike.sigma, limit: limit('spikeSigma') }),

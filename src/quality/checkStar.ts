@@ -1,8 +1,9 @@
+import { featureName } from '../features/featureName.ts'
 import { QUALITY_RULES } from '../findings/quality.ts'
 import { finding } from '../findings/rules.ts'
 import type { Finding } from '../findings/types.ts'
 import type { HeaderFacts } from '../spectrum/types.ts'
-import { figure } from './figures.ts'
+import { figure, withError } from './figures.ts'
 import type { Limits, SpectrumInput } from './samples.ts'
 
 /** Å of emission below which a line is not called one. */
@@ -26,7 +27,7 @@ export function checkStar({ measurements, type, spectrum }: SpectrumInput, limit
   const inEmission = emission.filter(({ feature }) => !isCool || /alpha|α/i.test(feature))
   if (inEmission.length) {
     const strongest = inEmission.reduce((most, line) => ((line.ew ?? 0) < (most.ew ?? 0) ? line : most))
-    const text = `${strongest.feature} stands above the continuum by ${figure(-(strongest.ew ?? 0))} ± ${figure(strongest.ewErr ?? 0)} Å`
+    const text = `${featureName(strongest.feature)} stands in emission, ${withError(-(strongest.ew ?? 0), strongest.ewErr ?? 0)} Å above the continuum`
     found.push(finding(QUALITY_RULES, 'emission-lines', text, { value: strongest.ew, limit: -FAINTEST_EMISSION }))
   }
   if (type.state === 'none')

@@ -7,6 +7,13 @@ export function figure(value: number, digits = 3): string {
   return String(Number(value.toPrecision(digits)))
 }
 
+/** A value with its standard error, both to the second digit of the error: '251.3 ± 7.5'. */
+export function withError(value: number, error: number): string {
+  if (!(error > 0) || !Number.isFinite(error)) return figure(value)
+  const decimals = Math.min(4, Math.max(0, 1 - Math.floor(Math.log10(error))))
+  return `${value.toFixed(decimals)} ± ${error.toFixed(decimals)}`
+}
+
 /** A share as a percentage with at most two significant digits. */
 export function percent(share: number): string {
   return `${figure(100 * share, 2)} %`

@@ -8,11 +8,13 @@ import { PALETTE } from './palette.ts'
 import { posteriorFigure } from './posteriorFigure.ts'
 import type { Area } from './spectrumFigure.ts'
 import { ABSENT_HEIGHT, figureHeading, isDrawable, spectrumFigure } from './spectrumFigure.ts'
+import type { Shown } from './shownSpectrum.ts'
+import { shownSpectrum } from './shownSpectrum.ts'
 import type { TargetView } from './targetView.ts'
 import type { Typeface } from './typeface.ts'
 import type { Answer } from './verdict.ts'
-import { findingsOf, verdictOf } from './verdict.ts'
-import { shortNumber, typeNumberOf } from './words.ts'
+import { fileName, findingsOf, verdictOf } from './verdict.ts'
+import { duration, shortNumber, typeNumberOf } from './words.ts'
 
 /** Draws page 1 of a target: verdict, spectrum, normalised spectrum, probability, what to watch. */
 export function drawFirstPage(face: Typeface, flow: Flow, view: TargetView): void {
@@ -20,16 +22,16 @@ export function drawFirstPage(face: Typeface, flow: Flow, view: TargetView): voi
   flow.area(34, (area) => [title(face, area, view)])
   const known = face.wrap(face.clean(factsText(view)), flow.width, { size: 7.5, weight: 'regular' }).slice(0, 2)
   flow.area(5 + known.length * 10, (area) => [facts(face, area, known)])
-  const lines = face
-    .wrap(face.clean(capital(verdict.sentence)), flow.width - 10, { size: 12, weight: 'bold' })
-    .slice(0, 3)
+  const whole = face.wrap(face.clean(capital(verdict.sentence)), flow.width - 10, { size: 12, weight: 'bold' })
+  const lines = whole.slice(0, 3)
+  if (whole.length > 3) lines[2] += ' …'
   flow.area(lines.length * 15 + 8, (area) => [sentence(face, area, lines)])
   flow.area(76, (area) => answers(face, area, verdict.answers))
-  const { spectrum } = view.exposures[view.best]
+  const { spectrum, parts } = shownSpectrum(view)
   const room = flow.room()
   const bottom = view.type.grid ? 148 : 90
   const [first, second] = heights(spectrum, room - bottom - 24)
-  flow.area(first, (area) => [spectrumFigure(face, area, spectrum)])
+  flow.area(first, (area) => [spectrumFigure(face, area, spectrum, partsText(parts))])
   flow.space(12)
   flow.area(second, (area) => [normalisedFigure(face, area, spectrum, view.type)])
   flow.space(11)
@@ -38,6 +40,14 @@ export function drawFirstPage(face: Typeface, flow: Flow, view: TargetView): voi
     const right = { ...area, x: area.x + area.width * 0.6, width: area.width * 0.4 }
     return [posteriorFigure(face, left, view.type, expectedOf(view)), watch(face, right, view)]
   })
+}
+
+/** Which files stand side by side in the figures, and by what their flux was multiplied; nothing for one file. */
+function partsText(parts: Shown['parts']): string {
+  if (parts.length < 2) return ''
+  return parts
+    .map(({ exposure, factor }) => `${fileName(exposure.file)}${factor === 1 ? '' : ` × ${shortNumber(factor)}`}`)
+    .join(', ')
 }
 
 /** Heights of the spectrum and of the normalised one; what cannot be drawn takes a line of words, no empty box. */
@@ -66,13 +76,13 @@ function title(face: Typeface, area: Area, view: TargetView): Block {
 function factsText(view: TargetView): string {
   const { facts: header, setup, resolution } = view.exposures[view.best].spectrum
   const parts = [
-    view.exposures.length > 1 ? `best of ${view.exposures.length} exposures` : '',
+    view.exposures.length > 1 ? `${view.exposures.length} exposures, of the one that decided most` : '',
     header.ra === undefined || header.dec === undefined
       ? ''
       : `RA ${header.ra.toFixed(4)}°, Dec ${header.dec.toFixed(4).replace(/^-/, '−')}°`,
     header.dateObs ?? '',
     header.exposure === undefined ? '' : `${shortNumber(header.exposure)} s`,
-    header.airmass === undefined ? '' : `air mass ${header.airmass.toFixed(2)}`,
+    header.airmass === undefined ? '' : `airmass ${header.airmass.toFixed(2)}`,
     setup,
     resolution === undefined ? '' : `FWHM ${resolution.fwhm.toFixed(1)} Å`,
   ].filter((part) => part !== '')
@@ -114,15 +124,20 @@ function answers(face: Typeface, area: Area, given: readonly Answer[]): Block[] 
   })
 }
 
+/** How the file was read: told on page 2, nothing to watch. */
+const HOUSEKEEPING: ReadonlySet<string> = new Set(['medium-declared', 'noise-not-in-file', 'velocity-frame', 'joined'])
+
 /** What to watch: doubts and faults in plain words, then notes, as many as there is room for. */
 function watch(face: Typeface, area: Area, view: TargetView): Block {
   const items: Item[] = [figureHeading(face, area, 'What to watch')]
-  const findings = findingsOf(view)
+  const findings = findingsOf(view).filter(({ code }) => !HOUSEKEEPING.has(code))
   const size = 7.5
   const bottom = area.y + area.height - 10
   let y = area.y + 22
   if (view.summary?.observeAgain) {
-    const text = `Observe again: ${view.summary.reason ?? 'no reason given'}`
+    const { exposureNeeded } = view.summary
+    const needs = exposureNeeded === undefined ? '' : ` (needs ${duration(exposureNeeded)})`
+    const text = `Observe again: ${view.summary.reason ?? 'no reason given'}${needs}`
     for (const line of face.wrap(face.clean(text), area.width, { size, weight: 'bold' })) {
       items.push(face.text(area.x, y, line, { size, weight: 'bold' }))
       y += 9.6

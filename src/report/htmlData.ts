@@ -1,6 +1,6 @@
 import type { Curves } from '../quality/types.ts'
 import type { TargetView } from './targetView.ts'
-import { findingsOf, qualityOf, verdictOf } from './verdict.ts'
+import { expectedChance, findingsOf, qualityOf, verdictOf } from './verdict.ts'
 import { featureWord, percent, typeFound, typeRange, withError } from './words.ts'
 
 /** A curve as base64 of 16-bit steps between `low` and `high`, little-endian; 65535 where there is no value. */
@@ -108,7 +108,7 @@ export function htmlTargets(
       typeNumber: type.typeNumber ?? null,
       range: type.low68 === undefined || type.high68 === undefined ? '' : typeRange(type.low68, type.high68),
       expected: summary?.listed?.expectedType ?? best.night?.expectedType ?? '',
-      probability: summary?.expectedProbability ?? best.night?.expectedProbability ?? null,
+      probability: expectedChance(view) ?? null,
       snr: summary?.snrReached ?? best.spectrum.snr.visual ?? null,
       quality: qualityOf(view),
       again: summary?.observeAgain ? (summary.reason ?? 'no reason given') : null,

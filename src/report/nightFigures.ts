@@ -106,6 +106,12 @@ export function foundAgainstExpected(face: Typeface, area: Area, pairs: readonly
 /** Least half height of a drift's axis as a part of its middle, so that rounding does not look like a drift. */
 const LEAST_SPAN = 0.02
 
+/** What stands above a drift: the quantity with its unit, where it has one. */
+function driftTitle({ quantity, unit }: Drift): string {
+  const name = quantity === 'seeing' ? 'seeing, as the width of the stars along the slit' : quantity
+  return `${name.charAt(0).toUpperCase()}${name.slice(1)}${unit === '1' ? '' : `, ${unit}`}`
+}
+
 /** One quantity through the night: points with errors against time, UTC. */
 export function driftFigure(face: Typeface, area: Area, drift: Drift, times: readonly [number, number]): Block {
   const values = drift.points.flatMap((p) => [p.value - (p.error ?? 0), p.value + (p.error ?? 0)])
@@ -125,7 +131,7 @@ export function driftFigure(face: Typeface, area: Area, drift: Drift, times: rea
   }
   const bottom = frame.y + frame.height
   const items: Item[] = [
-    figureHeading(face, area, `${drift.quantity.charAt(0).toUpperCase()}${drift.quantity.slice(1)}, ${drift.unit}`),
+    figureHeading(face, area, driftTitle(drift)),
     face.text(area.x + area.width, area.y + 8, drift.setup, {
       size: 7,
       colour: PALETTE.quiet,
@@ -165,7 +171,7 @@ export function driftFigure(face: Typeface, area: Area, drift: Drift, times: rea
     items.push(mark(x, heldY(frame, point.value), 1.8, 'good'))
   }
   const alt =
-    `${drift.quantity} in ${drift.unit} for ${drift.setup}: ${drift.points.length} points, from ${shortNumber(inTime[0].value)} at ` +
+    `${driftTitle(drift)} for ${drift.setup}: ${drift.points.length} points, from ${shortNumber(inTime[0].value)} at ` +
     `${clockTime(inTime[0].mjd)} to ${shortNumber(inTime[inTime.length - 1].value)} at ${clockTime(inTime[inTime.length - 1].mjd)} UTC`
   return { role: 'Figure', alt, items }
 }

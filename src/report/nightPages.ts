@@ -1,7 +1,9 @@
 import type { Finding } from '../findings/types.ts'
-import type { NightSummary, TargetSummary } from '../night/types.ts'
+import type { Drift, NightSummary, TargetSummary } from '../night/types.ts'
 import type { Outcome, Quality } from '../quality/types.ts'
-import type { Drawing, LinkTarget } from './drawing.ts'
+import type { Doubt } from './doubts.ts'
+import { countsText, doubtsOf, doubtText, nightFindings } from './doubts.ts'
+import type { Drawing, Item, LinkTarget } from './drawing.ts'
 import { box } from './drawing.ts'
 import { errorFinding } from './errorFinding.ts'
 import type { Flow } from './flow.ts'
@@ -13,13 +15,16 @@ import type { TypePair } from './nightFigures.ts'
 import { driftFigure, foundAgainstExpected, smallSpectrum } from './nightFigures.ts'
 import { PALETTE } from './palette.ts'
 import { provenanceLine } from './provenance.ts'
+import { shownExposures } from './shownSpectrum.ts'
+import { shortSetups } from './setupWords.ts'
+import type { Area } from './spectrumFigure.ts'
 import type { PageOptions } from './targetPages.ts'
 import type { TargetView } from './targetView.ts'
 import { targetViews } from './targetView.ts'
 import { clockTime, dateAndTime, nightDates } from './timeWords.ts'
 import type { Standing } from './verdict.ts'
-import { qualityOf, verdictOf } from './verdict.ts'
-import { percent, shortNumber, typeFound, typeNumberOf, typeRange } from './words.ts'
+import { expectedChance, fileName, qualityOf, verdictOf } from './verdict.ts'
+import { duration, percent, shortNumber, typeFound, typeNumberOf, typeRange } from './words.ts'
 
 /** How the night's pages are laid out, and where their links lead. */
 export interface NightPageOptions extends PageOptions {
@@ -49,8 +54,9 @@ export function layoutNightPages(
   const views = targetViews(outcomes, night)
   flow.heading(dates === undefined ? `Night ${name}` : `Night of ${dates}`, { level: 1 })
   opening(flow, night, options)
-  observeAgain(flow, night, options)
-  findingList(flow, 'What holds for the whole night', night.findings)
+  observeAgain(flow, night, views, options)
+  doubtTable(flow, doubtsOf(outcomes, night, views), options)
+  findingList(flow, 'What holds for the whole night', nightFindings(night))
   targetTable(flow, views, options)
   expectedFigure(flow, views, options)
   inventory(flow, outcomes, options)
@@ -64,16 +70,8 @@ export function layoutNightPages(
 }
 
 function opening(flow: Flow, night: NightSummary, { face, name }: NightPageOptions): void {
-  const { counts, targets, notObserved, mjdFirst, mjdLast } = night
-  const again = targets.filter((t) => t.observeAgain).length
-  const total = counts.usable + counts.doubtful + counts.unusable
-  const parts = [
-    `${plural(targets.length, 'target')} observed, ${again === 0 ? 'none' : again} to be observed again`,
-    ...(notObserved.length ? [`${plural(notObserved.length, 'listed target')} not reached`] : []),
-    `${plural(total, 'spectrum', 'spectra')}: ${counts.usable} usable, ${counts.doubtful} doubtful, ${counts.unusable} unusable`,
-    ...(counts.unreadable ? [`${plural(counts.unreadable, 'file')} could not be read`] : []),
-  ]
-  const lines = face.wrap(face.clean(parts.join('; ')), flow.width - 10, { size: 11, weight: 'bold' })
+  const { mjdFirst, mjdLast } = night
+  const lines = face.wrap(face.clean(countsText(night)), flow.width - 10, { size: 11, weight: 'bold' })
   flow.area(lines.length * 14 + 8, (area) => [
     {
       role: 'P',
@@ -87,59 +85,66 @@ function opening(flow: Flow, night: NightSummary, { face, name }: NightPageOptio
   flow.paragraph(`${name}${when}`, { size: 7.5, colour: PALETTE.quiet })
 }
 
-const plural = (n: number, one: string, many = `${one}s`): string => `${n} ${n === 1 ? one : many}`
-
 function targetLink(options: NightPageOptions, target: string): { readonly link?: LinkTarget } {
   const address = options.pagesOf?.(target)
   return address === undefined ? {} : { link: { to: 'pages', address } }
 }
 
-function observeAgain(flow: Flow, night: NightSummary, options: NightPageOptions): void {
+function observeAgain(flow: Flow, night: NightSummary, views: readonly TargetView[], options: NightPageOptions): void {
   flow.heading('Observe again first', { place: 'again' })
-  const again = night.targets.filter((t) => t.observeAgain).sort((a, b) => (b.urgency ?? 0) - (a.urgency ?? 0))
-  if (again.length === 0) flow.paragraph('Nothing that was observed has to be observed again.')
-  else
-    flow.table(
-      [
-        { head: 'urgency', width: 34, align: 'end' },
-        { head: 'target', width: 110 },
-        { head: 'found', width: 62 },
-        { head: 'S/N', width: 46, align: 'end' },
-        { head: 'needs, s', width: 40, align: 'end' },
-        { head: 'why', width: 1, share: true, wrap: true },
-      ],
-      again.map((t) => [
-        cell(t.urgency === undefined ? '' : t.urgency.toFixed(2), { bold: true }),
-        cell(t.target, { bold: true, ...targetLink(options, t.target) }),
-        cell(typeFound(t.type)),
-        cell(snrText(t)),
-        cell(t.exposureNeeded === undefined ? '' : shortNumber(Math.round(t.exposureNeeded))),
-        cell(t.reason ?? 'no reason given'),
-      ]),
-    )
-  if (night.notObserved.length === 0) return
-  flow.heading('Listed, but not reached')
+  if (night.observeAgain.length === 0) return flow.paragraph('Nothing has to be observed again.')
+  const known = new Map(views.map((view) => [view.name, view]))
   flow.table(
     [
-      { head: 'priority', width: 34, align: 'end' },
-      { head: 'target', width: 150 },
-      { head: 'expected', width: 62 },
-      { head: 'S/N wanted', width: 46, align: 'end' },
-      { head: 'note', width: 1, share: true, wrap: true },
+      { head: 'urgency', width: 34, align: 'end' },
+      { head: 'target', width: 100 },
+      { head: 'found', width: 62 },
+      { head: 'expected', width: 42 },
+      { head: 'S/N', width: 46, align: 'end' },
+      { head: 'needs', width: 34, align: 'end' },
+      { head: 'why', width: 1, share: true, wrap: true },
     ],
-    [...night.notObserved]
-      .sort((a, b) => (a.priority ?? Infinity) - (b.priority ?? Infinity))
-      .map((t) => [
-        cell(t.priority === undefined ? '' : String(t.priority)),
-        cell(t.object),
-        cell(t.expectedType ?? ''),
-        cell(t.wantedSnr === undefined ? '' : shortNumber(t.wantedSnr)),
-        cell(t.note ?? ''),
-      ]),
+    night.observeAgain.map((t) => {
+      const view = known.get(t.target)
+      return [
+        cell(t.urgency.toFixed(2), { bold: true }),
+        cell(t.target, { bold: true, ...(view ? targetLink(options, t.target) : {}) }),
+        cell(view ? typeFound(view.type) : 'not observed', view ? {} : { colour: PALETTE.quiet }),
+        cell(t.listed?.expectedType ?? ''),
+        cell(snrText({ snrReached: view?.summary?.snrReached, snrWanted: t.listed?.wantedSnr })),
+        cell(t.exposureNeeded === undefined ? '' : duration(t.exposureNeeded), { bold: true }),
+        cell(t.reason),
+      ]
+    }),
+  )
+  if (night.observeAgain.some((t) => t.exposureNeeded !== undefined))
+    flow.paragraph(NEEDS, { size: 7, colour: PALETTE.quiet })
+}
+
+const NEEDS =
+  'Needs: exposure still wanted, from the signal-to-noise reached (of a target never observed: from its magnitude and what the other stars of the night gave). Urgency: 1 is first, from the gravity of the reason and the priority of the list.'
+
+function doubtTable(flow: Flow, doubts: readonly Doubt[], options: NightPageOptions): void {
+  if (doubts.length === 0) return
+  flow.heading('Not to be observed again, but look at')
+  flow.table(
+    [
+      { head: 'level', width: 30 },
+      { head: 'target or file', width: 100, middle: true },
+      { head: 'gravest finding', width: 1, share: true, wrap: true },
+    ],
+    doubts.map((doubt) => {
+      const { name, isTarget, level } = doubt
+      return [
+        cell(level, { bold: level !== 'note' }),
+        cell(isTarget ? name : fileName(name), isTarget ? targetLink(options, name) : fileLink(options, name)),
+        cell(doubtText(doubt, isTarget ? undefined : fileName)),
+      ]
+    }),
   )
 }
 
-function snrText(t: TargetSummary): string {
+function snrText(t: Pick<TargetSummary, 'snrReached' | 'snrWanted'>): string {
   if (t.snrReached === undefined) return t.snrWanted === undefined ? '' : `– of ${t.snrWanted.toFixed(0)}`
   return t.snrReached.toFixed(0) + (t.snrWanted === undefined ? '' : ` of ${t.snrWanted.toFixed(0)}`)
 }
@@ -159,7 +164,7 @@ function findingList(flow: Flow, heading: string, findings: readonly Finding[]):
 function targetTable(flow: Flow, views: readonly TargetView[], options: NightPageOptions): void {
   flow.heading('Targets', { place: 'targets', keep: 60 })
   if (views.length === 0) return flow.paragraph('No spectrum of a star was found.')
-  const bests = views.flatMap((v) => v.exposures[v.best].spectrum.curves ?? [])
+  const bests = views.flatMap((v) => shownExposures(v).flatMap((e) => e.spectrum.curves ?? []))
   const firsts = bests.map((c) => c.restWavelength[0])
   const lasts = bests.map((c) => c.restWavelength[c.restWavelength.length - 1])
   const range = [Math.min(...firsts), Math.max(...lasts)] as const
@@ -182,7 +187,7 @@ function targetTable(flow: Flow, views: readonly TargetView[], options: NightPag
     views.map((view): TableCell[] => {
       const best = view.exposures[view.best]
       const expected = view.summary?.listed?.expectedType ?? best.night?.expectedType
-      const probability = view.summary?.expectedProbability ?? best.night?.expectedProbability
+      const probability = expectedChance(view)
       const surely = probability !== undefined && probability < 0.01
       const quality = qualityOf(view)
       const count = view.exposures.length
@@ -194,7 +199,7 @@ function targetTable(flow: Flow, views: readonly TargetView[], options: NightPag
         cell(expected ?? ''),
         cell(probability === undefined ? '' : percent(probability), { bold: surely }),
         cell(view.summary ? snrText(view.summary) : (best.spectrum.snr.visual?.toFixed(0) ?? '')),
-        cell('', { draw: (area) => smallSpectrum(area, range, best.spectrum.curves) }),
+        cell('', { draw: (area) => smallSpectra(area, range, view) }),
       ]
     }),
     { rowHeight: 18 },
@@ -208,6 +213,11 @@ function targetTable(flow: Flow, views: readonly TargetView[], options: NightPag
   )
 }
 
+/** The shown exposures of a target side by side, each scaled to its own deepest line. */
+function smallSpectra(area: Area, range: readonly [number, number], view: TargetView): Item[] {
+  return shownExposures(view).flatMap((e) => smallSpectrum(area, range, e.spectrum.curves))
+}
+
 /** The 68 % range of a star that was typed; nothing where no ordinary type fits. */
 function rangeText({ type: { state, low68, high68 } }: TargetView): string {
   const isTyped = state === 'typed' || state === 'wide'
@@ -219,7 +229,7 @@ function expectedFigure(flow: Flow, views: readonly TargetView[], { face }: Nigh
     const { typeNumber, low68, high68 } = view.type
     const word = view.summary?.listed?.expectedType ?? view.exposures[view.best].night?.expectedType
     const expected = word === undefined ? undefined : typeNumberOf(word)
-    if (expected === undefined || typeNumber === undefined) return []
+    if (expected === undefined || typeNumber === undefined || qualityOf(view) === 'unusable') return []
     const standing = verdictOf(view).answers[1].standing
     return [
       { name: view.name, expected, found: typeNumber, low: low68 ?? typeNumber, high: high68 ?? typeNumber, standing },
@@ -280,7 +290,7 @@ function cover(flow: Flow, night: NightSummary): void {
   const number = (n: number): TableCell => cell(n === 0 ? 'none' : String(n), { bold: n === 0 })
   flow.table(
     [
-      { head: 'set-up', width: 1, share: true },
+      { head: 'set-up', width: 1, share: true, wrap: true },
       ...['science', 'bias', 'dark', 'flat', 'arc', 'standard'].map((head): TableColumn => ({
         head,
         width: 42,
@@ -300,11 +310,13 @@ function cover(flow: Flow, night: NightSummary): void {
 
 function drifts(flow: Flow, night: NightSummary, { face }: NightPageOptions): void {
   flow.heading('Through the night', { place: 'drifts', keep: 110 })
+  const short = shortSetups(night.drifts.map((d) => d.setup))
+  const named = (d: Drift): Drift => ({ ...d, setup: short.get(d.setup) ?? d.setup })
   const drawn = night.drifts.filter((d) => d.points.length > 0)
   const times = drawn.flatMap((d) => d.points.map((p) => p.mjd))
   const range = [Math.min(...times), Math.max(...times)] as const
   for (const drift of drawn) {
-    flow.area(92, (area) => [driftFigure(face, area, drift, range)])
+    flow.area(92, (area) => [driftFigure(face, area, named(drift), range)])
     for (const f of drift.findings) flow.paragraph(`${f.level}: ${f.text}`, { size: 7.5 })
     flow.space(6)
   }
@@ -317,23 +329,30 @@ function drifts(flow: Flow, night: NightSummary, { face }: NightPageOptions): vo
 function log(flow: Flow, night: NightSummary, options: NightPageOptions): void {
   flow.heading('Log', { place: 'log' })
   if (night.log.length === 0) return flow.paragraph('No frame was read.')
+  const short = shortSetups(night.log.map((e) => e.setup))
+  const isOne = short.size < 2
+  if (isOne) flow.paragraph(`All with one set-up: ${night.log[0].setup}.`, { size: 7.5 })
+  if (night.log.some((e) => e.isTimeDoubtful))
+    flow.paragraph('A time with a question mark does not follow the order of the files.', { size: 7.5 })
   flow.table(
     [
       { head: 'UTC', width: 30 },
       { head: 'kind', width: 46 },
       { head: 'object', width: 1, share: true },
       { head: 's', width: 34, align: 'end' },
-      { head: 'air mass', width: 34, align: 'end' },
-      { head: 'set-up', width: 1, share: true },
+      { head: 'airmass', width: 34, align: 'end' },
+      ...(isOne ? [] : [{ head: 'set-up', width: 1, share: true as const }]),
       { head: 'file', width: 1.3, share: true, middle: true },
     ],
     night.log.map((e) => [
-      cell(e.mjd === undefined ? '' : clockTime(e.mjd)),
+      cell(e.mjd === undefined ? '' : `${clockTime(e.mjd)}${e.isTimeDoubtful ? ' ?' : ''}`, {
+        bold: e.isTimeDoubtful === true,
+      }),
       cell(e.kind),
       cell(e.object),
       cell(e.exposure === undefined ? '' : shortNumber(e.exposure)),
       cell(e.airmass === undefined ? '' : e.airmass.toFixed(2)),
-      cell(e.setup, { colour: PALETTE.quiet }),
+      ...(isOne ? [] : [cell(short.get(e.setup) ?? e.setup, { colour: PALETTE.quiet })]),
       cell(e.file, fileLink(options, e.file)),
     ]),
     { size: 7, rowHeight: 10 },

@@ -1,39 +1,39 @@
 import type { NightSummary } from '../night/types.ts'
 import type { Outcome } from '../quality/types.ts'
+import type { Doubt } from './doubts.ts'
+import { countsText, doubtsOf, doubtText, nightFindings } from './doubts.ts'
 import { columnWidth, cutToWidth, padToWidth, wrapToWidth } from './columnWidth.ts'
 import { errorFinding } from './errorFinding.ts'
 import { plainText } from './plainText.ts'
 import type { TerminalStyle } from './terminalTable.ts'
 import { strong, tinted } from './terminalTable.ts'
 import { dateAndTime, nightDates } from './timeWords.ts'
+import type { TargetView } from './targetView.ts'
 import { targetViews } from './targetView.ts'
-import { qualityOf } from './verdict.ts'
-import { percent, typeFound } from './words.ts'
+import { expectedChance, qualityOf } from './verdict.ts'
+import { duration, percent, typeFound } from './words.ts'
 
 /** Lines of a list on the terminal before it says how many more there are. */
 const MOST = 40
 
 /**
- * The night as an observer reads it at dawn, for a terminal of the given width: what to observe again, what was not
- * reached, what holds for the whole night, every target in a line, what calibrations lack, what could not be read.
+ * The night as an observer reads it at dawn, for a terminal of the given width: what to observe again, what is doubtful
+ * and why, what could not be read, what holds for the whole night, every target in a line, what calibrations lack.
  */
 export function nightSummaryText(night: NightSummary, outcomes: readonly Outcome[], style: TerminalStyle): string {
+  const views = targetViews(outcomes, night)
   const sections = [
     opening(night, style),
     again(night, style),
-    list(
-      'Listed, but not reached',
-      night.notObserved.map((t) => t.object),
-      style,
-    ),
-    findings(night, style),
-    targets(night, outcomes, style),
-    cover(night, style),
+    doubts(doubtsOf(outcomes, night, views), style),
     list(
       'Files that could not be read',
       outcomes.flatMap((o) => (o.error ? [`${o.file}: ${errorFinding(o.error).text}`] : [])),
       style,
     ),
+    findings(night, style),
+    targets(views, style),
+    cover(night, style),
   ]
   return sections
     .filter((section) => section.length > 0)
@@ -42,37 +42,40 @@ export function nightSummaryText(night: NightSummary, outcomes: readonly Outcome
 }
 
 function opening(night: NightSummary, { width, colour }: TerminalStyle): string[] {
-  const { counts, mjdFirst, mjdLast } = night
+  const { mjdFirst, mjdLast } = night
   const last = mjdLast ?? mjdFirst
   const title =
     mjdFirst === undefined || last === undefined
       ? 'Night without times'
       : `Night of ${nightDates(mjdFirst, last)} (${dateAndTime(mjdFirst)} to ${dateAndTime(last)} UTC)`
-  const count =
-    `${night.targets.length} targets; spectra: ${counts.usable} usable, ${counts.doubtful} doubtful, ` +
-    `${counts.unusable} unusable; files not read: ${counts.unreadable}`
-  return [strong(cutToWidth(title, width), colour), ...wrapToWidth(count, width)]
+  return [strong(cutToWidth(title, width), colour), ...wrapToWidth(countsText(night), width)]
 }
 
-function again(night: NightSummary, { width, colour }: TerminalStyle): string[] {
-  const rows = night.targets.filter((t) => t.observeAgain).sort((a, b) => (b.urgency ?? 0) - (a.urgency ?? 0))
-  if (rows.length === 0)
-    return [
-      strong(cutToWidth('Observe again first', width), colour),
-      ...wrapToWidth('nothing that was observed', width - 2).map((line) => `  ${line}`),
-    ]
-  const lines = rows.slice(0, MOST).flatMap((t) => {
-    const needs = t.exposureNeeded === undefined ? '' : ` (needs ${t.exposureNeeded.toFixed(0)} s)`
-    const name = plainText(t.target)
-    const text = `${name}: ${plainText(t.reason ?? 'no reason given')}${needs}`
-    const urgency = padToWidth(t.urgency === undefined ? '' : t.urgency.toFixed(2), 4)
+function again({ observeAgain }: NightSummary, { width, colour }: TerminalStyle): string[] {
+  if (observeAgain.length === 0) return [strong('Nothing has to be observed again', colour)]
+  const lines = observeAgain.slice(0, MOST).flatMap((t) => {
+    const needs = t.exposureNeeded === undefined ? '' : ` (needs ${duration(t.exposureNeeded)})`
+    const text = `${plainText(t.target)}: ${plainText(t.reason)}${needs}`
+    const urgency = padToWidth(t.urgency.toFixed(2), 4)
     return wrapToWidth(text, Math.max(10, width - 8)).map((line, i) => `  ${i === 0 ? urgency : '    '}  ${line}`)
   })
   return [
     strong(cutToWidth('Observe again first (urgency 1 is the highest)', width), colour),
     ...lines,
-    ...rest(rows.length),
+    ...rest(observeAgain.length),
   ]
+}
+
+function doubts(all: readonly Doubt[], { width, colour }: TerminalStyle): string[] {
+  if (all.length === 0) return []
+  const lines = all.slice(0, MOST).flatMap((doubt) => {
+    const { name, level } = doubt
+    const said = `${plainText(name)}: ${plainText(doubtText(doubt))}`
+    return wrapToWidth(said, Math.max(10, width - 9)).map(
+      (line, i) => `  ${i === 0 ? tinted(padToWidth(level, 5), colour) : '     '}  ${line}`,
+    )
+  })
+  return [strong(cutToWidth('Not to be observed again, but look at', width), colour), ...lines, ...rest(all.length)]
 }
 
 const rest = (n: number): string[] => (n > MOST ? [`  … and ${n - MOST} more`] : [])
@@ -88,7 +91,7 @@ function list(heading: string, lines: readonly string[], { width, colour }: Term
 }
 
 function findings(night: NightSummary, { width, colour }: TerminalStyle): string[] {
-  const all = [...night.findings, ...night.drifts.flatMap((d) => d.findings)]
+  const all = nightFindings(night)
   if (all.length === 0) return []
   const lines = all.flatMap((f) =>
     wrapToWidth(plainText(f.text), Math.max(10, width - 9)).map(
@@ -98,8 +101,7 @@ function findings(night: NightSummary, { width, colour }: TerminalStyle): string
   return [strong(cutToWidth('What holds for the whole night', width), colour), ...lines]
 }
 
-function targets(night: NightSummary, outcomes: readonly Outcome[], { width, colour }: TerminalStyle): string[] {
-  const views = targetViews(outcomes, night)
+function targets(views: readonly TargetView[], { width, colour }: TerminalStyle): string[] {
   if (views.length === 0) return []
   const rows = views.map((view) => {
     const { type, summary, name } = view
@@ -107,7 +109,7 @@ function targets(night: NightSummary, outcomes: readonly Outcome[], { width, col
     const error = type.typeNumberErr === undefined || !isTyped ? '' : `± ${type.typeNumberErr.toFixed(1)}`
     const expected = summary?.listed?.expectedType
     const against = expected === undefined ? '' : `expected ${plainText(expected)}`
-    const odds = summary?.expectedProbability === undefined ? '' : percent(summary.expectedProbability)
+    const odds = expectedChance(view) === undefined ? '' : percent(expectedChance(view) ?? 0)
     const snr = summary?.snrReached === undefined ? '' : `S/N ${summary.snrReached.toFixed(0)}`
     return [plainText(name), `${typeFound(type)} ${error}`.trim(), qualityOf(view), snr, `${against} ${odds}`.trim()]
   })

@@ -20,14 +20,22 @@ const PLATE_HEIGHT = 9
 /** Features named: the first ones by share until they hold this part of the decision. */
 const NAMED_SHARE = 0.95
 const MOST_NAMED = 14
+/** Part in the decision below which a feature is not named. */
+const LEAST_NAMED = 0.01
+/** Å within which measures are of one line. */
+const SAME_LINE = 4
 
 interface Named {
-  readonly evidence: Evidence
+  /** Of all measures of the line in the decision. */
+  readonly share: number
   readonly wavelength: number
   readonly label: string
 }
 
-/** The features that decided and lie inside the frame, in order of wavelength, no more than their labels have room. */
+/**
+ * The features that decided and lie inside the frame, several measures of one line as one, in order of wavelength, no
+ * more than their labels have room.
+ */
 export function namedFeatures(
   face: Typeface,
   spectrum: SpectrumOutcome,
@@ -35,21 +43,31 @@ export function namedFeatures(
   frame: Frame,
 ): Named[] {
   const places = new Map(spectrum.measurements.map((m) => [m.feature, m.wavelengthRest]))
+  const groups: Named[] = []
+  for (const one of evidence) {
+    const wavelength = places.get(one.feature)
+    if (wavelength === undefined || wavelength < frame.xRange[0] || wavelength > frame.xRange[1]) continue
+    const k = groups.findIndex((g) => Math.abs(g.wavelength - wavelength) < SAME_LINE)
+    if (k < 0) groups.push({ share: one.share, wavelength, label: featureWord(one.feature) })
+    else groups[k] = { ...groups[k], share: groups[k].share + one.share, label: lineWord(groups[k].label) }
+  }
+  const ranked = groups.sort((a, b) => b.share - a.share)
+  const whole = evidence.reduce((total, one) => total + one.share, 0)
   const named: Named[] = []
   let room = frame.width
   let sum = 0
-  for (const one of evidence) {
-    if (sum >= NAMED_SHARE || named.length >= MOST_NAMED) break
+  for (const one of ranked) {
+    if (sum >= NAMED_SHARE * whole || named.length >= MOST_NAMED || one.share < LEAST_NAMED) break
     sum += one.share
-    const wavelength = places.get(one.feature)
-    if (wavelength === undefined || wavelength < frame.xRange[0] || wavelength > frame.xRange[1]) continue
-    const label = featureWord(one.feature)
-    room -= labelWidth(face, label)
+    room -= labelWidth(face, one.label)
     if (room < 0) break
-    named.push({ evidence: one, wavelength, label })
+    named.push(one)
   }
   return named.sort((a, b) => a.wavelength - b.wavelength)
 }
+
+/** The line's own name, where several measures of one line share a label: 'Hδ' of 'HδA', 'Ca K' of 'Ca K core'. */
+const lineWord = (label: string): string => label.replace(/ (core|wide|narrow)$/, '').replace(/^(H[αβγδε])[A-Z]$/, '$1')
 
 const labelWidth = (face: Typeface, label: string): number =>
   Math.max(face.width(label, NAME_SIZE, 'bold'), face.width('88 %', 6.5, 'regular')) + 5
@@ -85,7 +103,7 @@ function nameItems(face: Typeface, frame: Frame, named: readonly Named[], curves
     const foot = Math.max(frame.y + 2, heldY(frame, fluxNear(curves, n.wavelength)) - 2)
     return [
       face.text(centres[i], top + 7, n.label, { size: NAME_SIZE, weight: 'bold', anchor: 'middle' }),
-      face.text(centres[i], top + 15, percent(n.evidence.share), {
+      face.text(centres[i], top + 15, percent(n.share), {
         size: 6.5,
         colour: PALETTE.quiet,
         anchor: 'middle',
@@ -105,7 +123,7 @@ function nameItems(face: Typeface, frame: Frame, named: readonly Named[], curves
  * place with their part in the decision, and both spectra once more as strips of grey, one above the other.
  */
 export function normalisedFigure(face: Typeface, area: Area, spectrum: SpectrumOutcome, type: TypePosterior): Block {
-  const heading = 'Normalised, at rest, with the features that decided'
+  const heading = 'Normalised, at rest, and what decided'
   const curves = spectrum.curves
   if (!curves || !isDrawable(curves.normalised)) {
     const why = curves ? 'not drawn: there is no continuum to divide by' : 'not drawn: no curves were kept'
@@ -127,9 +145,9 @@ export function normalisedFigure(face: Typeface, area: Area, spectrum: SpectrumO
   const isTyped = type.state === 'typed' || type.state === 'wide'
   const best = isTyped
     ? `at ${type.spectralType ?? typeFound(type)} ${type.luminosityClass ?? ''}`.trim()
-    : 'of the nearest ordinary type'
+    : 'of the nearest type'
   const measured = { label: 'this spectrum', stroke: PALETTE.ink, width: 0.5 }
-  const model = { label: `expected ${best}`, stroke: PALETTE.sky, width: 2 }
+  const model = { label: `expected ${best}, smoothed, level matched`, stroke: PALETTE.sky, width: 2 }
   const one = heldY(frame, 1)
   const items: Item[] = [
     figureHeading(face, area, heading),
@@ -146,8 +164,8 @@ export function normalisedFigure(face: Typeface, area: Area, spectrum: SpectrumO
     (expected ? `, over the spectrum expected ${best}` : '; no expected spectrum is known for the type') +
     (named.length
       ? `. Features that decided: ${[...named]
-          .sort((a, b) => b.evidence.share - a.evidence.share)
-          .map((n) => `${n.label} ${percent(n.evidence.share)}`)
+          .sort((a, b) => b.share - a.share)
+          .map((n) => `${n.label} ${percent(n.share)}`)
           .join(', ')}`
       : '')
   return { role: 'Figure', alt, items }

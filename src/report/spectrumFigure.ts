@@ -45,8 +45,8 @@ function fluxRange(flux: ArrayLike<number>, continuum: ArrayLike<number>): reado
   return high > low ? [low, low + (high - low) * 1.08] : [low - 1, low + 1]
 }
 
-/** The spectrum as observed with its continuum; a line of words where there is nothing to draw. */
-export function spectrumFigure(face: Typeface, area: Area, spectrum: SpectrumOutcome): Block {
+/** The spectrum as observed with its continuum; `parts` names the files of several arms; words where nothing is drawn. */
+export function spectrumFigure(face: Typeface, area: Area, spectrum: SpectrumOutcome, parts = ''): Block {
   const heading = 'Spectrum as observed, with its continuum'
   const curves = spectrum.curves
   if (!curves || !isDrawable(curves.flux))
@@ -70,6 +70,7 @@ export function spectrumFigure(face: Typeface, area: Area, spectrum: SpectrumOut
   const dashed = { label: 'continuum', stroke: PALETTE.vermillion, width: 1.1, dash: [5, 2.5] }
   const items: Item[] = [
     figureHeading(face, area, heading),
+    ...(parts === '' ? [] : [partsItem(face, area, heading, parts)]),
     ...legend(face, area.x + area.width, area.y + 8, hasContinuum ? [line, dashed] : [line]),
     ...xAxis(face, frame, 'wavelength in air, Å'),
     ...yAxis(
@@ -87,6 +88,12 @@ export function spectrumFigure(face: Typeface, area: Area, spectrum: SpectrumOut
     `Flux against wavelength from ${first.toFixed(0)} to ${last.toFixed(0)} Å` +
     (hasContinuum ? ', with the continuum as a dashed line' : '; no continuum could be set')
   return { role: 'Figure', alt, items }
+}
+
+/** The files shown side by side, behind the heading. */
+function partsItem(face: Typeface, area: Area, heading: string, parts: string): Item {
+  const x = area.x + face.width(heading, 8.5, 'bold') + 8
+  return face.text(x, area.y + 8, parts, { size: 7, colour: PALETTE.quiet, fit: area.x + area.width - 130 - x })
 }
 
 /** True where at least two values are finite: enough for a line. */

@@ -3,8 +3,9 @@ import { COLUMNS } from './columns.ts'
 import type { Row } from './row.ts'
 import { tidyRow } from './row.ts'
 
-/** Rows of `targets`: those with spectra, then those listed but not observed. */
+/** Rows of `targets`: those with spectra, then those listed but not observed, with what each needs. */
 export function targetRows(night: NightSummary): Row[] {
+  const again = new Map(night.observeAgain.map((one) => [one.target, one]))
   const observed = night.targets.map((t) =>
     tidyRow(COLUMNS.targets, {
       target: t.target,
@@ -30,7 +31,9 @@ export function targetRows(night: NightSummary): Row[] {
       expected_type: t.expectedType,
       snr_wanted: t.wantedSnr,
       observe_again: 'yes',
-      reason: 'listed but not observed',
+      reason: again.get(t.object)?.reason ?? 'listed but not observed',
+      exposure_needed_s: again.get(t.object)?.exposureNeeded,
+      urgency: again.get(t.object)?.urgency,
     }),
   )
   return [...observed, ...missed]

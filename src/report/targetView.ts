@@ -59,6 +59,13 @@ export function measurementsOf({ exposures, best }: TargetView): readonly Measur
   return [...found.values()].sort((a, b) => a.wavelengthRest - b.wavelengthRest)
 }
 
+/** The exposure with the spectrum expected of the target's type in place of that of its own. */
+function withExpected(exposure: Exposure, expected: Float32Array | undefined): Exposure {
+  const { curves } = exposure.spectrum
+  if (!curves || !expected) return exposure
+  return { ...exposure, spectrum: { ...exposure.spectrum, curves: { ...curves, expected } } }
+}
+
 /** One view a target of the night, and one for every spectrum that belongs to no target, in order of first input. */
 export function targetViews(outcomes: readonly Outcome[], night?: NightSummary): TargetView[] {
   const nightOf = new Map((night?.spectra ?? []).map((s) => [`${s.ref.outcome} ${s.ref.spectrum}`, s]))
@@ -76,9 +83,10 @@ export function targetViews(outcomes: readonly Outcome[], night?: NightSummary):
   }
   const taken = new Set<string>()
   const views = (night?.targets ?? []).flatMap((summary): TargetView[] => {
-    const exposures = summary.spectra.flatMap((ref) => {
+    const exposures = summary.spectra.flatMap((ref, i) => {
       taken.add(`${ref.outcome} ${ref.spectrum}`)
-      return exposureOf(ref.outcome, ref.spectrum) ?? []
+      const exposure = exposureOf(ref.outcome, ref.spectrum)
+      return exposure ? withExpected(exposure, summary.expected?.[i]) : []
     })
     if (exposures.length === 0) return []
     const inTime = [...exposures].sort((a, b) => (a.spectrum.facts.mjdMid ?? 0) - (b.spectrum.facts.mjdMid ?? 0))

@@ -30,15 +30,32 @@ const PERHAPS = 0.05
 
 const WORST: readonly Quality[] = ['usable', 'doubtful', 'unusable']
 
-/** Findings of the shown exposure, of the night and of the target, each once, the gravest first. */
+/** What one arm lacks and another may have: told only where every exposure of the target lacks it. */
+const LACKS = new Set(['classical-region-missing', 'short-coverage', 'no-type'])
+
+/**
+ * Findings of every exposure, of the night and of the target, each once, the gravest first. What holds for only some of
+ * several exposures names their file.
+ */
 export function findingsOf(view: TargetView): readonly Finding[] {
-  const all = view.exposures.flatMap((e) => [...e.spectrum.findings, ...(e.night?.findings ?? [])])
+  const each = view.exposures.map((e) => [...e.spectrum.findings, ...(e.night?.findings ?? [])])
+  const isCommon = (f: Finding): boolean =>
+    each.every((list) => list.some((g) => g.code === f.code && g.text === f.text))
+  const isLacking = (code: string): boolean => each.every((list) => list.some((g) => g.code === code))
+  const all = view.exposures.flatMap((e, i) =>
+    each[i]
+      .filter((f) => !LACKS.has(f.code) || isLacking(f.code))
+      .map((f) => (isCommon(f) ? f : { ...f, text: `${f.text} (${fileName(e.file)})` })),
+  )
   const rank = { fault: 0, doubt: 1, note: 2 } as const
   const seen = new Set<string>()
   return [...(view.summary?.findings ?? []), ...all]
     .filter((f) => !seen.has(f.code + f.text) && seen.add(f.code + f.text))
     .sort((a, b) => rank[a.level] - rank[b.level])
 }
+
+/** The last part of a path. */
+export const fileName = (file: string): string => file.slice(file.lastIndexOf('/') + 1)
 
 /** Quality of the best exposure of a target. */
 export function qualityOf(view: TargetView): Quality {
@@ -51,7 +68,7 @@ export function verdictOf(view: TargetView): Verdict {
   const what = whatIsIt(view)
   const expected = asExpected(view)
   const trusted = canBeTrusted(view)
-  const next = view.summary?.observeAgain ? `observe again: ${view.summary.reason ?? 'reason not given'}` : ''
+  const next = view.summary?.observeAgain ? 'observe again' : ''
   const sentence = [what.said, expected.said, trusted.said, next].filter((part) => part !== '').join('; ')
   return { sentence, answers: [what.answer, expected.answer, trusted.answer] }
 }
@@ -89,11 +106,16 @@ function whatIsIt({ type }: TargetView): Said {
   return { answer: { question, answer: found, standing, details }, said: `${found}${sure}${odd}` }
 }
 
+/** Probability of the expected type from the spectra that can be used; that of the one spectrum where no night is known. */
+export function expectedChance(view: TargetView): number | undefined {
+  return view.summary ? view.summary.expectedProbability : view.exposures[view.best]?.night?.expectedProbability
+}
+
 function asExpected(view: TargetView): Said {
   const question = 'Is it what was expected?'
   const shown = view.exposures[view.best]?.night
   const type = view.summary?.listed?.expectedType ?? shown?.expectedType
-  const probability = view.summary?.expectedProbability ?? shown?.expectedProbability
+  const probability = expectedChance(view)
   const separation = shown?.separationArcsec
   const place = separation === undefined ? [] : [`${shortNumber(separation)}″ from the position in the list`]
   if (type === undefined) {
@@ -108,7 +130,9 @@ function asExpected(view: TargetView): Said {
     }
   }
   if (probability === undefined) {
-    const details = [`the list expects ${type}`, 'the spectrum gives no probability to hold against it', ...place]
+    const why =
+      qualityOf(view) === 'unusable' ? 'the spectrum cannot be used' : 'the spectrum gives no probability for it'
+    const details = [`the list expects ${type}`, why, ...place]
     return { answer: { question, answer: 'cannot be told', standing: 'unknown', details }, said: '' }
   }
   const details = [`the list expects ${type}`, `its probability is ${percent(probability)}`, ...place]

@@ -18,7 +18,7 @@ export function typeRange(low: number, high: number): string {
 /** A probability as a person reads it: '62 %', '>99 %', '0.3 %', '<0.1 %'. */
 export function percent(probability: number): string {
   if (probability > 0.99 && probability < 1) return '>99 %'
-  if (probability >= 0.1 || probability === 0) return `${Math.round(probability * 100)} %`
+  if (probability >= 0.095 || probability === 0) return `${Math.round(probability * 100)} %`
   if (probability >= 0.001) return `${(probability * 100).toPrecision(1)} %`
   return '<0.1 %'
 }
@@ -36,6 +36,14 @@ export function shortNumber(value: number): string {
   if (value === 0) return '0'
   if (size >= 1e6 || size < 1e-4) return minus(value.toExponential(2))
   return minus(size >= 1000 ? value.toFixed(0) : String(Number(value.toPrecision(3))))
+}
+
+/** A time to expose as an observer plans it: '27 s', '35 min', '12 h'. */
+export function duration(seconds: number): string {
+  if (seconds < 600) return `${Math.round(seconds)} s`
+  if (seconds < 2 * 3600) return `${Math.ceil(seconds / 60)} min`
+  const hours = seconds / 3600
+  return `${hours < 10 ? Number(hours.toFixed(1)) : Math.ceil(hours)} h`
 }
 
 /** A typographic minus sign in front of a negative number. */
@@ -58,22 +66,8 @@ export function typeFound(type: TypePosterior): string {
   return `${type.spectralType ?? (type.typeNumber === undefined ? '?' : typeWord(type.typeNumber))}${luminosity}`
 }
 
-const GREEK: Readonly<Record<string, string>> = { alpha: 'α', beta: 'β', gamma: 'γ', delta: 'δ', epsilon: 'ε' }
-
 /** A feature's key as a person writes it: 'Hβ', 'Ca K', 'Fe I 5270', 'TiO 7050'. */
-export function featureWord(feature: string): string {
-  return feature
-    .replace(/^H(alpha|beta|gamma|delta|epsilon)/, (_, name: string) => `H${GREEK[name]}`)
-    .replace(/^([A-Z][a-z]?)(IV|I{1,3})(?=\d|$)/, '$1 $2')
-    .replace(/([A-Za-z])(\d{4})/, '$1 $2')
-    .replace(/^(Ca|Na)([A-Z])$/, '$1 $2')
-    .replace(/^Gband$/, 'G band')
-    .replace(/^CaHHepsilon$/, 'Ca H + Hε')
-    .replace(/(Core|core|Wide|Narrow)$/, (word) => ` ${word.toLowerCase()}`)
-    .replace(/^Ca([HK]) /, 'Ca $1 ')
-    .replace(/^Paschen(\d)/, 'Paschen $1')
-    .replace(/^Mgb$/, 'Mg b')
-}
+export { featureName as featureWord } from '../features/featureName.ts'
 
 /** Type number of a published type that begins 'G2', 'K0.5' ...; undefined when it does not. */
 export function typeNumberOf(word: string): number | undefined {

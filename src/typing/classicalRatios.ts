@@ -1,3 +1,4 @@
+import { featureName } from '../features/featureName.ts'
 import type { Measurement } from '../features/types.ts'
 import type { ClassicalRatio } from './types.ts'
 
@@ -168,9 +169,9 @@ export function classicalRatios(measurements: readonly Measurement[], typeNumber
     const top = byName.get(upper)
     const bottom = byName.get(lower)
     const absent = (reason: string): ClassicalRatio => ({ name, reason, reading: '', source })
-    if (top?.ew === undefined || top.ewErr === undefined) return absent(`${upper} was not measured`)
-    if (bottom?.ew === undefined || bottom.ewErr === undefined) return absent(`${lower} was not measured`)
-    if (bottom.ew < DETECTED * bottom.ewErr) return absent(`${lower} is not detected`)
+    if (top?.ew === undefined || top.ewErr === undefined) return absent(`${featureName(upper)} was not measured`)
+    if (bottom?.ew === undefined || bottom.ewErr === undefined) return absent(`${featureName(lower)} was not measured`)
+    if (bottom.ew < DETECTED * bottom.ewErr) return absent(`${featureName(lower)} is not detected`)
     const value = top.ew / bottom.ew
     const error = Math.hypot(top.ewErr, value * bottom.ewErr) / bottom.ew
     const reading = readings.find(([limit]) => value < limit)?.[1] ?? ''

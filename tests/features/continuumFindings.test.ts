@@ -26,7 +26,7 @@ describe('continuumFindings', () => {
     expect(codes(fitContinuum(dark))).toEqual(['no-continuum'])
     const weak = { ...fitContinuum(madeSpectrum({ kind: 'A0', withSigma: true }).spectrum), supported: 0.1 }
     expect(continuumFindings(weak)).toMatchObject([
-      { level: 'doubt', value: 0.1, limit: 0.15, text: 'the continuum rests on 10 % of the spectrum, under 15 %' },
+      { level: 'doubt', value: 0.1, limit: 0.15, text: 'The continuum rests on 10 % of the spectrum, under 15 %' },
     ])
   })
 })

@@ -123,7 +123,7 @@ describe('checkSpectrum', () => {
     const hit = changed(healthy(), (value, _, k) => (k === i ? 3 * value : value))
     const found = check(hit, { measurements: [HBETA] })
     expect(said(found)).toEqual(['doubt cosmic-ray-on-line', 'note cosmic-ray-hits'])
-    expect(found.findings[0].text).toContain('Hbeta')
+    expect(found.findings[0].text).toContain('Hβ')
     expect(
       said(
         check(

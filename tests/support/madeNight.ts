@@ -1,6 +1,14 @@
 import type { Finding } from '../../src/findings/types.ts'
 import type { Measurement } from '../../src/features/types.ts'
-import type { Drift, LogEntry, NightSummary, SpectrumNight, TargetSummary } from '../../src/night/types.ts'
+import type {
+  Drift,
+  LogEntry,
+  NightSummary,
+  ObserveAgain,
+  SpectrumNight,
+  Target,
+  TargetSummary,
+} from '../../src/night/types.ts'
 import { seededNormal } from '../../src/numeric/random.ts'
 import type { Curves, FrameKind, Outcome, SpectrumOutcome } from '../../src/quality/types.ts'
 import type { Evidence, TypeGrid, TypePosterior } from '../../src/typing/types.ts'
@@ -426,10 +434,29 @@ export function madeNight(
   const kinds: readonly FrameKind[] = ['bias', 'bias', 'bias', 'flat', 'flat', 'arc', 'arc', 'acquisition']
   kinds.forEach((kind, i) => outcomes.push(madeFrame(kind, i + 1)))
   outcomes.push(UNREADABLE)
-  return { outcomes, night: { ...madeSummary(outcomes, spectra), spectra, targets } }
+  const summary = madeSummary(outcomes, spectra)
+  return { outcomes, night: { ...summary, spectra, targets, observeAgain: againOf(targets, summary.notObserved) } }
 }
 
-function madeSummary(outcomes: readonly Outcome[], spectra: readonly SpectrumNight[]): Omit<NightSummary, 'targets'> {
+function againOf(targets: readonly TargetSummary[], missed: readonly Target[]): ObserveAgain[] {
+  return [
+    ...targets.flatMap(({ target, listed, observeAgain, reason = '', exposureNeeded, urgency = 0 }) =>
+      observeAgain ? [{ target, listed, reason, exposureNeeded, urgency }] : [],
+    ),
+    ...missed.map((listed) => ({
+      target: listed.object,
+      listed,
+      reason: 'listed but not observed',
+      exposureNeeded: 1500,
+      urgency: 0.7,
+    })),
+  ].sort((a, b) => b.urgency - a.urgency)
+}
+
+function madeSummary(
+  outcomes: readonly Outcome[],
+  spectra: readonly SpectrumNight[],
+): Omit<NightSummary, 'targets' | 'observeAgain'> {
   const normal = seededNormal(99)
   const setup = '600 l/mm, slit 1.5, 2x2'
   const point = (i: number, value: number, error?: number) => ({
