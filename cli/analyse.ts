@@ -4,6 +4,7 @@ import { analyseFile, openBytes, type OpenedFile } from '../src/pipeline/analyse
 import type { InForce } from '../src/pipeline/settingsInForce.ts'
 import type { Outcome } from '../src/quality/types.ts'
 import { reason } from './files.ts'
+import { type NormalizedPlan, writeNormalized } from './normalized.ts'
 import { openFile } from './source.ts'
 
 /** One file to analyse; plain data, it crosses into a worker thread. */
@@ -13,6 +14,8 @@ export interface AnalyseTask {
   readonly inForce: InForce
   readonly wantsCurves: boolean
   readonly wantsAllLines: boolean
+  /** Where each normalised spectrum is written, if they are wanted. */
+  readonly normalized?: NormalizedPlan
   /** File that holds the wavelengths. */
   readonly wavelengths?: string
 }
@@ -36,6 +39,7 @@ export function analysePath(task: AnalyseTask): Outcome {
       inForce: task.inForce,
       wantsCurves: task.wantsCurves,
       wantsAllLines: task.wantsAllLines,
+      wantsNormalised: task.normalized !== undefined,
       companion: task.wavelengths === undefined ? undefined : companionFile(task.wavelengths),
     })
     const sha256 = source.size <= task.inForce.hashLimitBytes ? source.sha256() : undefined
@@ -50,7 +54,8 @@ export function analysePath(task: AnalyseTask): Outcome {
         },
       }
     }
-    return sha256 === undefined ? outcome : { ...outcome, sha256 }
+    const hashed = sha256 === undefined ? outcome : { ...outcome, sha256 }
+    return task.normalized ? writeNormalized(hashed, task.normalized) : hashed
   } catch (error) {
     return {
       ...nothing,

@@ -6,6 +6,7 @@ import type { Options } from './args.ts'
 import { inOrder } from './batch.ts'
 import type { Crew } from './crew.ts'
 import { findFiles, type PathAnswer } from './files.ts'
+import type { NormalizedPlan } from './normalized.ts'
 import { startProgress } from './progress.ts'
 
 /** What decides the exit status. */
@@ -13,6 +14,13 @@ export interface Tally {
   files: number
   unreadable: number
   unusable: number
+}
+
+/** What is wanted of every file. */
+export interface Wanted {
+  readonly inForce: InForce
+  readonly wantsCurves: boolean
+  readonly normalized?: NormalizedPlan
 }
 
 /** 1 when something could not be read or is unusable, else 0. */
@@ -36,8 +44,7 @@ export function count(tally: Tally, outcome: Outcome): void {
 export async function* gather(
   options: Options,
   crew: Crew,
-  inForce: InForce,
-  wantsCurves: boolean,
+  { inForce, wantsCurves, normalized }: Wanted,
 ): AsyncGenerator<Outcome> {
   if (options.wavelengths !== undefined) companionFile(options.wavelengths)
   const answers = firstChecked(options.paths)
@@ -48,7 +55,7 @@ export async function* gather(
   )
   try {
     yield* inOrder(answers, crew.atOnce, async (answer) => {
-      const outcome = await outcomeOf(answer, options, crew, { inForce, wantsCurves })
+      const outcome = await outcomeOf(answer, options, crew, { inForce, wantsCurves, normalized })
       progress.step()
       return outcome
     })
@@ -61,7 +68,7 @@ function outcomeOf(
   answer: PathAnswer,
   options: Options,
   crew: Crew,
-  { inForce, wantsCurves }: { inForce: InForce; wantsCurves: boolean },
+  { inForce, wantsCurves, normalized }: Wanted,
 ): Promise<Outcome> {
   if ('problem' in answer) {
     const { file, code, message } = answer.problem
@@ -74,6 +81,7 @@ function outcomeOf(
     inForce,
     wantsCurves,
     wantsAllLines: options.allLines,
+    ...(normalized ? { normalized } : {}),
     wavelengths: options.wavelengths,
   })
 }

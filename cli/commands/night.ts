@@ -13,6 +13,7 @@ import { tableRows } from '../../src/report/tableRows.ts'
 import type { Options } from '../args.ts'
 import { startCrew, type Crew } from '../crew.ts'
 import { count, exitStatus, gather, type Tally } from '../gather.ts'
+import { type NormalizedPlan, normalizedPlan } from '../normalized.ts'
 import { drawPages } from '../pages.ts'
 import { folderOutput, wantsColour } from '../results.ts'
 import { inForceOf, readSettings, readText } from '../settingsFile.ts'
@@ -27,6 +28,7 @@ interface Plan {
   readonly targets?: readonly Target[]
   readonly targetFindings: readonly Finding[]
   readonly out: string
+  readonly normalized?: NormalizedPlan
 }
 
 /** The whole job on one folder. */
@@ -39,19 +41,25 @@ export async function runNight(options: Options, version: string): Promise<numbe
   const inForce = inForceOf(readSettings(options))
   const list =
     options.targets === undefined ? undefined : parseTargets(readText(options.targets, '--targets'), options.targets)
+  const out = options.out ?? join('reports', basename(resolve(folder)))
   const plan: Plan = {
     options,
     version,
     inForce,
     ...(list ? { targets: list.targets } : {}),
     targetFindings: list?.findings ?? [],
-    out: options.out ?? join('reports', basename(resolve(folder))),
+    out,
+    normalized: normalizedPlan(options, out, inForce, version),
   }
   const crew = startCrew(options.workers)
   try {
     if (options.watch) return await watch(plan, crew)
     const outcomes: Outcome[] = []
-    for await (const outcome of gather(options, crew, inForce, options.pages)) {
+    for await (const outcome of gather(options, crew, {
+      inForce,
+      wantsCurves: options.pages,
+      normalized: plan.normalized,
+    })) {
       remark(outcome, options)
       outcomes.push(outcome)
     }
@@ -111,6 +119,7 @@ async function watch(plan: Plan, crew: Crew): Promise<number> {
           inForce: plan.inForce,
           wantsCurves: plan.options.pages,
           wantsAllLines: false,
+          normalized: plan.normalized,
           wavelengths: plan.options.wavelengths,
         }),
       ),

@@ -10,6 +10,7 @@ import { UsageError } from '../../src/errors.ts'
 import type { Options } from '../args.ts'
 import { startCrew } from '../crew.ts'
 import { count, exitStatus, gather, type Tally } from '../gather.ts'
+import { normalizedPlan } from '../normalized.ts'
 import { printable } from '../printable.ts'
 import { folderOutput, standardOutput, type TableSink } from '../results.ts'
 import { inForceOf, readSettings } from '../settingsFile.ts'
@@ -23,7 +24,7 @@ const ROWS: Readonly<Partial<Record<TableName, (outcome: Outcome) => Row[]>>> = 
 }
 
 /** `classify`, `measure` and `check`: one table on standard output, or all of them in a folder, row by row. */
-export async function runTables(options: Options, _version: string): Promise<number> {
+export async function runTables(options: Options, version: string): Promise<number> {
   if (options.saveNormalized && options.out === undefined)
     throw new UsageError('--save-normalized requires --out FOLDER, got none')
   const inForce = inForceOf(readSettings(options))
@@ -38,10 +39,11 @@ export async function runTables(options: Options, _version: string): Promise<num
         ? {}
         : { [main]: standardOutput(main, options.format ?? 'table') }
       : folderOutput(options.out, names, options.format ? [options.format] : ['csv', 'jsonl'])
+  const normalized = normalizedPlan(options, options.out, inForce, version)
   const crew = startCrew(options.workers)
   const tally: Tally = { files: 0, unreadable: 0, unusable: 0 }
   try {
-    for await (const outcome of gather(options, crew, inForce, false)) {
+    for await (const outcome of gather(options, crew, { inForce, wantsCurves: false, normalized })) {
       count(tally, outcome)
       remark(outcome, options)
       for (const name of names) sinks[name]?.add(ROWS[name]?.(outcome) ?? [])

@@ -40,6 +40,8 @@ export interface AnalyseOptions {
   readonly wantsCurves: boolean
   /** Find every line without being told where to look. */
   readonly wantsAllLines: boolean
+  /** Keep every sample with its continuum, to write the normalised spectrum. */
+  readonly wantsNormalised?: boolean
 }
 
 const CLIGHT = 299792.458
@@ -174,6 +176,7 @@ function outcomeOf(spectrum: Spectrum, found: Found, options: AnalyseOptions): S
           }),
         }
       : {}),
+    ...(options.wantsNormalised ? { normalised: { spectrum, continuum } } : {}),
     ...(options.wantsCurves ? { curves: thinnedCurves(spectrum, continuum, restFrame, expectedOf(type)) } : {}),
   }
 }

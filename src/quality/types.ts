@@ -1,6 +1,7 @@
+import type { Continuum } from '../continuum/types.ts'
 import type { Finding } from '../findings/types.ts'
 import type { FoundLine, Measurement } from '../features/types.ts'
-import type { FluxKind, HeaderFacts, Medium, MediumHow, UncertaintyKind } from '../spectrum/types.ts'
+import type { FluxKind, HeaderFacts, Medium, MediumHow, Spectrum, UncertaintyKind } from '../spectrum/types.ts'
 import type { TypePosterior } from '../typing/types.ts'
 import type { TypingInput } from '../typing/typingInput.ts'
 import type { Resolution, RestFrame, ZeroPoint } from '../velocity/types.ts'
@@ -59,6 +60,8 @@ export interface SpectrumOutcome {
   /** Median flux in the visual band per second, for throughput. */
   readonly countsPerSecond?: number
   readonly curves?: Curves
+  /** All samples with their continuum, on the scale that was measured; kept only when they are to be written. */
+  readonly normalised?: { readonly spectrum: Spectrum; readonly continuum: Continuum }
 }
 
 export type FrameKind =

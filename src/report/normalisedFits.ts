@@ -16,7 +16,8 @@ export interface NormalisedInput {
   readonly spectrum: Spectrum
   readonly continuum: Continuum
   readonly restFrame: RestFrame
-  readonly provenance: Provenance
+  /** Without a date: the same input gives the same bytes. */
+  readonly provenance: Omit<Provenance, 'date'>
 }
 
 /**
@@ -108,6 +109,5 @@ function cards({ file, sha256, spectrum, continuum, restFrame, provenance }: Nor
     ...card('PSEUDO', continuum.isPseudo, 'normalised by a pseudo-continuum'),
     ...card('CREATOR', `darkline ${provenance.version}`, 'program'),
     ...card('SETTINGS', provenance.settingsDigest, 'digest of the settings'),
-    ...card('DATE', provenance.date.toISOString().slice(0, 19), 'when this was made, UTC'),
   ]
 }
