@@ -11,7 +11,11 @@ import { buildCalibration, calibrationModel, leftOutFor, measureStars } from '..
 import { DEGRADATIONS } from '../support/typing/degrade.ts'
 import { type Scored, scoreOf } from '../support/typing/score.ts'
 import { inputOf, readStar } from '../support/typing/sharedStars.ts'
+import { validationPages } from '../support/typing/validationPages.ts'
 import { validationText } from '../support/typing/validationText.ts'
+import { pageFonts } from '../../cli/pageFonts.ts'
+import { encodePdf } from '../../src/report/pdf.ts'
+import { makeTypeface } from '../../src/report/typeface.ts'
 
 const chosen = process.argv.includes('--quick') ? DEGRADATIONS.slice(0, 1) : DEGRADATIONS
 const model = calibrationModel(measureStars())
@@ -27,10 +31,14 @@ model.stars.forEach(({ star }, seed) => {
     results[d].push({ star, posterior: typeSpectrum(inputOf(degrade(spectrum, seed + 1)).input, calibration) })
   })
 })
-const text = validationText(
-  chosen.map((degradation, d) => ({ degradation, scored: results[d], score: scoreOf(results[d]) })),
-)
+const rows = chosen.map((degradation, d) => ({ degradation, scored: results[d], score: scoreOf(results[d]) }))
+const text = validationText(rows)
 console.log(text)
 const folder = fileURLToPath(new URL('../../reports/', import.meta.url))
 mkdirSync(folder, { recursive: true })
 if (chosen.length > 1) writeFileSync(`${folder}validation.md`, text)
+const drawing = validationPages(rows, makeTypeface(pageFonts()), CALIBRATION.digest)
+writeFileSync(
+  `${folder}validation.pdf`,
+  await encodePdf(drawing, pageFonts(), { date: new Date(0), version: 'validation' }),
+)
