@@ -89,7 +89,7 @@ export function validationPages(rows: readonly ValidationRow[], face: Typeface, 
       'Brier',
     ]
     flow.table(
-      heads.map((head, i) => (i === 0 ? { head, width: 130 } : { head, width: 34, align: 'end' as const })),
+      heads.map((head, i) => (i === 0 ? { head, width: 96 } : { head, width: 33, align: 'end' as const })),
       list.map(([name, s]) =>
         [
           name,
