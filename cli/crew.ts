@@ -1,8 +1,10 @@
 import { availableParallelism } from 'node:os'
+import { setImmediate as nextTurn } from 'node:timers/promises'
 import { Piscina } from 'piscina'
 import type { Outcome } from '../src/quality/types.ts'
 import { analysePath, type AnalyseTask } from './analyse.ts'
 import { drawTask, type DrawTask } from './draw.ts'
+import { listenForInterrupts } from './interrupt.ts'
 
 /** Those who do the work: worker threads, or this thread for a handful of files. */
 export interface Crew {
@@ -13,16 +15,21 @@ export interface Crew {
   close(): Promise<void>
 }
 
-/** A file that takes longer than this is given up: nothing an observer brings home needs it. */
-const LIMIT_MS = 300_000
+/** A file that takes longer than this is given up: 20,000 spectra in one file need a third of it. */
+const LIMIT_MS = 900_000
 
 /** Starts `workers` threads (undefined: one a core); 0 does everything in this thread. */
 export function startCrew(workers: number | undefined): Crew {
+  listenForInterrupts()
   const threads = workers ?? availableParallelism()
   if (threads === 0 || import.meta.url.endsWith('.ts')) {
     return {
       atOnce: 1,
-      analyse: (task) => Promise.resolve().then(() => analysePath(task)),
+      async analyse(task) {
+        // An interrupt is heard only between turns of the event loop.
+        await nextTurn()
+        return analysePath(task)
+      },
       draw: (task) => drawTask(task),
       close: () => Promise.resolve(),
     }
@@ -32,7 +39,7 @@ export function startCrew(workers: number | undefined): Crew {
     minThreads: 1,
     maxThreads: threads,
     idleTimeout: 30_000,
-    resourceLimits: { maxOldGenerationSizeMb: 1024 },
+    resourceLimits: { maxOldGenerationSizeMb: 1024, maxYoungGenerationSizeMb: 64 },
   })
   async function run<Result>(name: 'analyse' | 'draw', task: AnalyseTask | DrawTask): Promise<Result> {
     const giveUp = new AbortController()

@@ -2,7 +2,6 @@
 import { readFileSync } from 'node:fs'
 import { FormatError, placeAndMessage, UsageError } from '../src/errors.ts'
 import { readArguments } from './args.ts'
-import { listenForInterrupts } from './interrupt.ts'
 import { printable } from './printable.ts'
 import { runCommand } from './commands.ts'
 
@@ -33,7 +32,6 @@ process.stdout.on('error', (error: NodeJS.ErrnoException) => {
 })
 // Nobody listens to the remarks any more: the results are still wanted.
 process.stderr.on('error', () => undefined)
-listenForInterrupts()
 
 try {
   process.exitCode = await main(process.argv.slice(2))

@@ -12,6 +12,7 @@ import { CALIBRATION_NAME } from '../src/pipeline/nightOf.ts'
 import { inOrder } from './batch.ts'
 import type { Crew } from './crew.ts'
 import { pageTypeface, type DrawTask } from './draw.ts'
+import { fileNames } from './fileNames.ts'
 import { pageFonts } from './pageFonts.ts'
 import { printable } from './printable.ts'
 import { startProgress } from './progress.ts'
@@ -91,21 +92,4 @@ function dateOf(night: NightSummary): Date {
   const MJD_OF_UNIX_EPOCH = 40587
   const mjd = night.mjdLast ?? night.mjdFirst
   return new Date(mjd === undefined ? 0 : Math.round((mjd - MJD_OF_UNIX_EPOCH) * 86400) * 1000)
-}
-
-/** A file name for each target: letters, digits, + - . kept, the rest as '-'; names that would fall together get a number. */
-function fileNames(names: readonly string[]): string[] {
-  const used = new Map<string, number>()
-  return names.map((name) => {
-    const plain =
-      name
-        .normalize('NFKC')
-        .replace(/[^\p{L}\p{N}+.-]+/gu, '-')
-        .replace(/^[-.]+|[-.]+$/g, '')
-        .slice(0, 80) || 'target'
-    const key = plain.toLowerCase()
-    const before = used.get(key) ?? 0
-    used.set(key, before + 1)
-    return before === 0 ? plain : `${plain}-${before + 1}`
-  })
 }

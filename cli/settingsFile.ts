@@ -17,8 +17,24 @@ export function readSettings(options: Options): Settings {
   )
 }
 
+/** What site.longitude and site.latitude are where nobody gave them. */
+const NOT_KNOWN = 999
+
 /** The settings as the stages take them. */
 export function inForceOf(settings: Settings): InForce {
+  const [longitude, latitude] = [
+    Number(settings.get('site.longitude')?.value),
+    Number(settings.get('site.latitude')?.value),
+  ]
+  const [isLongitude, isLatitude] = [Math.abs(longitude) <= 360, Math.abs(latitude) <= 90]
+  if (!isLongitude && longitude !== NOT_KNOWN)
+    throw new UsageError(`site.longitude requires -180 to 360 °, or ${NOT_KNOWN} for not known, got ${longitude}`)
+  if (!isLatitude && latitude !== NOT_KNOWN)
+    throw new UsageError(`site.latitude requires -90 to 90 °, or ${NOT_KNOWN} for not known, got ${latitude}`)
+  if (isLongitude !== isLatitude)
+    throw new UsageError(
+      `site requires longitude and latitude together, got ${isLongitude ? 'longitude' : 'latitude'} alone`,
+    )
   return settingsInForce(Object.fromEntries([...settings].map(([key, { value }]) => [key, value])))
 }
 

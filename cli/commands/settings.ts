@@ -3,11 +3,12 @@ import { settingsToml } from '../../src/settings/resolveSettings.ts'
 import type { Settings } from '../../src/settings/types.ts'
 import type { Options } from '../args.ts'
 import { UsageError } from '../../src/errors.ts'
-import { readSettings } from '../settingsFile.ts'
+import { inForceOf, readSettings } from '../settingsFile.ts'
 
 /** Prints every setting in force: as TOML to start a file from, or one a line with its origin. */
 export function runSettings(options: Options): number {
   const settings = readSettings(options)
+  inForceOf(settings)
   const format = options.format ?? 'toml'
   if (format === 'toml') process.stdout.write(settingsToml(settings))
   else if (format === 'jsonl') for (const line of records(settings)) process.stdout.write(`${JSON.stringify(line)}\n`)
