@@ -10,8 +10,15 @@ import { expectedProbability } from '../typing/expectedProbability.ts'
 import { expectedCurve } from './curves.ts'
 import type { InForce } from './settingsInForce.ts'
 
-/** Name of the calibration that types rest on. */
-export const CALIBRATION_NAME: string = CALIBRATION.digest
+/** Name of the calibration that types rest on: what it was fitted on, and its digest in brackets. */
+export const CALIBRATION_NAME: string = calibrationName()
+
+function calibrationName(): string {
+  const { inputs, digest } = CALIBRATION
+  const spectra = inputs.reduce((sum, { stars }) => sum + stars, 0)
+  const works = inputs.map(({ reference }) => /^.*?\b\d{4}\b/.exec(reference)?.[0] ?? reference)
+  return `${spectra} spectra of ${works.join('; ')} (${digest})`
+}
 
 /** What the night's pass is given beside the outcomes. */
 export interface NightInput {

@@ -15,8 +15,8 @@ import { featureWord, percent, signed, typeFound, withError } from './words.ts'
 const MOST_IN_FULL = 24
 
 /**
- * The features of the shown exposure: those with the largest part in the decision in full, in order of wavelength, and
- * the rest three in a row.
+ * The features of a target: those with the largest part in the decision in full, the largest first, and the rest three
+ * in a row. Of several exposures the value that decided the type is that of all together.
  */
 export function featureTable(flow: Flow, view: TargetView): void {
   const measurements = measurementsOf(view)
@@ -26,7 +26,7 @@ export function featureTable(flow: Flow, view: TargetView): void {
   if (measurements.length === 0) return flow.paragraph('No feature was measured.')
   flow.paragraph(
     isTyped
-      ? `Strengths are positive in absorption. Expected: at the best type, ${type}, with the scatter between stars of that type. Pull: measured less expected in units of the total error. Part: share of the feature in the decision.`
+      ? `Strengths are positive in absorption. Expected: at the best type, ${type}, with the scatter between stars of that type. Pull: measured less expected in units of the total error. Part: share of the feature in the decision, the largest first.${view.exposures.length > 1 ? ` Of ${view.exposures.length} exposures, the value that decided is that of all together.` : ''}`
       : 'Strengths are positive in absorption. No type was found, so none is expected.',
     { size: 7.5, colour: PALETTE.quiet },
   )
@@ -34,7 +34,8 @@ export function featureTable(flow: Flow, view: TargetView): void {
   const shareOf = (m: Measurement): number => evidence.get(m.feature)?.share ?? (m.ew === undefined ? -1 : 0)
   const ranked = measurements.filter((m) => m.ew !== undefined).sort((a, b) => shareOf(b) - shareOf(a))
   const chosen = new Set(ranked.slice(0, MOST_IN_FULL))
-  const full = measurements.filter((m) => chosen.has(m))
+  // the deciding ones first
+  const full = ranked.filter((m) => chosen.has(m))
   const rest = measurements.filter((m) => !chosen.has(m) && m.status !== 'uncovered')
   const uncovered = measurements.filter((m) => !chosen.has(m) && m.status === 'uncovered')
   flow.table(
@@ -57,7 +58,7 @@ export function featureTable(flow: Flow, view: TargetView): void {
         cell(featureWord(m.feature), { bold: decided }),
         cell(m.species),
         cell(m.wavelengthRest.toFixed(1)),
-        cell(m.ew === undefined ? '–' : withError(m.ew, m.ewErr), { bold: decided }),
+        cell(strengthOf(m, view, e), { bold: decided }),
         cell(m.unit === '1' ? '' : m.unit),
         cell(e ? withError(e.expected, e.expectedScatter) : ''),
         cell(e ? signed(e.pull, 1) : ''),
@@ -74,6 +75,12 @@ export function featureTable(flow: Flow, view: TargetView): void {
       size: 7,
       colour: PALETTE.quiet,
     })
+}
+
+/** The strength that decided, of all exposures together where there are several; else as the shown exposure has it. */
+function strengthOf(m: Measurement, { exposures }: TargetView, e: Evidence | undefined): string {
+  if (e && exposures.length > 1) return withError(e.measured, e.error)
+  return m.ew === undefined ? '–' : withError(m.ew, m.ewErr)
 }
 
 /** Features with a small part: name, strength and pull, three in a row. */

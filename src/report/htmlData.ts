@@ -1,5 +1,7 @@
 import type { Curves } from '../quality/types.ts'
+import { shownSpectrum } from './shownSpectrum.ts'
 import type { TargetView } from './targetView.ts'
+import { measurementsOf } from './targetView.ts'
 import { expectedChance, findingsOf, qualityOf, verdictOf } from './verdict.ts'
 import { featureWord, percent, typeFound, typeRange, withError } from './words.ts'
 
@@ -115,20 +117,26 @@ export function htmlTargets(
       urgency: summary?.observeAgain ? (summary.urgency ?? null) : null,
       verdict: sentence.charAt(0).toUpperCase() + sentence.slice(1),
       findings: findingsOf(view).map((f) => [f.level, f.text] as const),
-      features: best.spectrum.measurements.map((m) => {
-        const e = evidence.get(m.feature)
-        const unit = m.unit === '1' ? '' : ` ${m.unit}`
-        return [
-          featureWord(m.feature),
-          m.wavelengthRest,
-          m.ew === undefined ? m.status : withError(m.ew, m.ewErr) + unit,
-          e ? withError(e.expected, e.expectedScatter) + unit : '',
-          e ? percent(e.share) : '',
-          e?.share ?? 0,
-        ] as const
-      }),
+      features: [...measurementsOf(view)]
+        .sort((a, b) => (evidence.get(b.feature)?.share ?? -1) - (evidence.get(a.feature)?.share ?? -1))
+        .map((m) => {
+          const e = evidence.get(m.feature)
+          const unit = m.unit === '1' ? '' : ` ${m.unit}`
+          return [
+            featureWord(m.feature),
+            m.wavelengthRest,
+            e && view.exposures.length > 1
+              ? withError(e.measured, e.error) + unit
+              : m.ew === undefined
+                ? m.status
+                : withError(m.ew, m.ewErr) + unit,
+            e ? withError(e.expected, e.expectedScatter) + unit : '',
+            e ? percent(e.share) : '',
+            e?.share ?? 0,
+          ] as const
+        }),
       pages: pagesOf(name) ?? null,
-      curves: packCurves(best.spectrum.curves, most),
+      curves: packCurves(shownSpectrum(view).spectrum.curves, most),
     }
   })
 }

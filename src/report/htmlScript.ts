@@ -293,7 +293,7 @@ function axes({ low, high, px, py, width, height, isNormalised }) {
   pen.fillStyle = '#5c5c5c'
   pen.fillText(isNormalised ? 'rest wavelength in air, Å' : 'wavelength in air, Å', LEFT + width, TOP + height + 31)
   pen.textAlign = 'left'
-  pen.fillText(isNormalised ? 'flux ÷ continuum' + (curves.expected ? '; wide pale line: expected' : '') : 'flux; dashed: continuum', LEFT, TOP + height + 31)
+  pen.fillText(isNormalised ? 'flux ÷ continuum' + (curves.expected ? '; wide pale line: expected, smoothed, level matched' : '') : 'flux; dashed: continuum', LEFT, TOP + height + 31)
 }
 function line(x, y, px, py, style) {
   pen.strokeStyle = style.color
@@ -336,5 +336,11 @@ function describe(target, isEmpty) {
   told = words
 }
 filter()
-if (rows.length) choose(Number(rows[0].dataset.index))
+for (const jump of document.querySelectorAll('.jump')) jump.addEventListener('click', () => {
+  choose(Number(jump.dataset.jump))
+  $('detail').focus()
+  $('detail').scrollIntoView({ block: 'nearest' })
+})
+const urgent = document.querySelector('table.brief .jump')
+if (rows.length) choose(Number(urgent ? urgent.dataset.jump : rows[0].dataset.index))
 `

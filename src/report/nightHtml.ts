@@ -1,6 +1,8 @@
 import { createHash } from 'node:crypto'
 import type { NightSummary } from '../night/types.ts'
 import type { Outcome } from '../quality/types.ts'
+import type { Doubt } from './doubts.ts'
+import { countsText, doubtsOf, doubtText, nightFindings } from './doubts.ts'
 import type { HtmlTarget } from './htmlData.ts'
 import { htmlTargets } from './htmlData.ts'
 import { HTML_SCRIPT } from './htmlScript.ts'
@@ -10,7 +12,7 @@ import { provenanceLine } from './provenance.ts'
 import { targetViews } from './targetView.ts'
 import { dateAndTime, nightDates } from './timeWords.ts'
 import { xmlText } from './votable.ts'
-import { percent } from './words.ts'
+import { duration, percent } from './words.ts'
 
 /** What the page says beside the night, and where its links lead. */
 export interface HtmlOptions {
@@ -59,7 +61,9 @@ const TOOLS: readonly (readonly [string, string])[] = [
  */
 export function nightHtml(outcomes: readonly Outcome[], night: NightSummary, options: HtmlOptions): string {
   const { name, provenance, pagesOf = () => undefined } = options
-  const targets = htmlTargets(targetViews(outcomes, night), pagesOf)
+  const views = targetViews(outcomes, night)
+  const targets = htmlTargets(views, pagesOf)
+  const shown = new Map(targets.map((target, i) => [target.name, i]))
   const last = night.mjdLast ?? night.mjdFirst
   const title =
     night.mjdFirst === undefined || last === undefined
@@ -79,7 +83,7 @@ export function nightHtml(outcomes: readonly Outcome[], night: NightSummary, opt
 <a class="skip" href="#detail">Skip to the spectrum</a>
 <header>
 <h1>${xmlText(title)}</h1>
-${opening(night, name)}
+${opening(night, name, doubtsOf(outcomes, night, views), shown)}
 </header>
 <main>
 <div class="panes">
@@ -98,7 +102,7 @@ ${opening(night, name)}
 ${targets.map(row).join('')}</tbody>
 </table>
 </div>
-${missed(night)}</section>
+</section>
 ${DETAIL}
 </div>
 </main>
@@ -110,17 +114,41 @@ ${DETAIL}
 `
 }
 
-function opening({ counts, targets, mjdFirst, mjdLast, findings }: NightSummary, name: string): string {
-  const again = targets.filter((t) => t.observeAgain).length
+function opening(
+  night: NightSummary,
+  name: string,
+  doubts: readonly Doubt[],
+  shown: ReadonlyMap<string, number>,
+): string {
+  const { mjdFirst, mjdLast, observeAgain } = night
   const when = mjdFirst === undefined ? '' : `, ${dateAndTime(mjdFirst)} to ${dateAndTime(mjdLast ?? mjdFirst)} UTC`
-  const lead = `${targets.length} targets observed, ${again} to be observed again; spectra: ${counts.usable} usable, ${counts.doubtful} doubtful, ${counts.unusable} unusable; files not read: ${counts.unreadable}`
-  const list = findings.map((f) => `<li>${xmlText(`${f.level}: ${f.text}`)}</li>`).join('')
-  return `<p class="lead">${xmlText(lead)}</p>\n<p class="quiet">${xmlText(name + when)}</p>\n${list === '' ? '' : `<ul>${list}</ul>\n`}`
-}
-
-function missed(night: NightSummary): string {
-  if (night.notObserved.length === 0) return ''
-  return `<h2>Listed, but not reached</h2>\n<ul>${night.notObserved.map((t) => `<li>${xmlText(t.object)}</li>`).join('')}</ul>\n`
+  const nameCell = (target: string): string => {
+    const index = shown.get(target)
+    return index === undefined
+      ? xmlText(target)
+      : `<button type="button" class="jump" data-jump="${index}">${xmlText(target)}</button>`
+  }
+  const again = observeAgain.map(
+    (t) =>
+      `<tr><td class="number">${t.urgency.toFixed(2)}</td><th scope="row">${nameCell(t.target)}</th>` +
+      `<td class="number">${t.exposureNeeded === undefined ? '' : xmlText(duration(t.exposureNeeded))}</td><td>${xmlText(t.reason)}</td></tr>`,
+  )
+  const list = (heading: string, items: readonly string[]): string =>
+    items.length === 0 ? '' : `<h2>${heading}</h2>\n<ul>${items.map((item) => `<li>${item}</li>`).join('')}</ul>\n`
+  return (
+    `<p class="lead">${xmlText(countsText(night))}</p>\n<p class="quiet">${xmlText(name + when)}</p>\n` +
+    (again.length === 0
+      ? ''
+      : `<h2>Observe again first</h2>\n<table class="brief"><thead><tr>${['urgency', 'target', 'needs', 'why'].map((head) => `<th scope="col">${head}</th>`).join('')}</tr></thead><tbody>${again.join('')}</tbody></table>\n`) +
+    list(
+      'Not to be observed again, but look at',
+      doubts.map((d) => `${d.level}: ${d.isTarget ? nameCell(d.name) : xmlText(d.name)}: ${xmlText(doubtText(d))}`),
+    ) +
+    list(
+      'What holds for the whole night',
+      nightFindings(night).map((f) => xmlText(`${f.level}: ${f.text}`)),
+    )
+  )
 }
 
 const DETAIL = `<section id="detail" class="detail" aria-labelledby="name" tabindex="-1" hidden>

@@ -11,7 +11,7 @@ import { provenanceLine } from './provenance.ts'
 import type { Area } from './spectrumFigure.ts'
 import type { TargetView } from './targetView.ts'
 import type { Typeface } from './typeface.ts'
-import { findingsOf } from './verdict.ts'
+import { fileName, findingsOf } from './verdict.ts'
 import { minus, percent, typeFound, withError } from './words.ts'
 
 /** How target pages are laid out. */
@@ -51,10 +51,10 @@ function exposureTable(flow: Flow, view: TargetView): void {
       { head: 'velocity, km/s', width: 58, align: 'end' },
       { head: 'type', width: 48 },
       { head: 'quality', width: 40 },
-      { head: 'normalised, at rest', width: 1, share: true },
+      { head: 'at rest', width: 1.4, share: true },
     ],
     view.exposures.map(({ file, spectrum, night }, i) => [
-      cell(place(file, spectrum.hdu, spectrum.row), { bold: i === view.best }),
+      cell(place(fileName(file), spectrum.hdu, spectrum.row), { bold: i === view.best }),
       cell(spectrum.facts.dateObs?.slice(0, 16).replace('T', ' ') ?? ''),
       cell(spectrum.facts.exposure?.toFixed(0) ?? ''),
       cell(spectrum.snr.visual?.toFixed(0) ?? ''),
@@ -143,7 +143,12 @@ function provenanceTable(flow: Flow, view: TargetView, provenance: Provenance): 
     ['program', `darkline ${provenance.version}`],
     ['calibration', provenance.calibration],
     ['settings', provenance.settingsDigest],
-    ['made on', provenance.date.toISOString()],
+    [
+      'data until',
+      provenance.date.getTime() === 0
+        ? 'no time known'
+        : `${provenance.date.toISOString().slice(0, 19).replace('T', ' ')} UTC`,
+    ],
   ]
   flow.heading('Provenance', { keep: 70 })
   flow.table(

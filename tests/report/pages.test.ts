@@ -145,7 +145,7 @@ describe('layoutTargetPages', () => {
       'darkline 0.1.0',
       PROVENANCE.settingsDigest,
       'made up',
-      '2026-12-01T08:00:00.000Z',
+      '2026-12-01 08:00:00 UTC',
     ])
       expect(text).toContain(part)
   })
