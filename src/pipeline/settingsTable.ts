@@ -20,6 +20,7 @@ function fromLimits(section: string, limits: Readonly<Record<string, Limit>>): S
     key: `${section}.${hyphenated(name)}`,
     default: value,
     ...(unit === '1' ? {} : { unit }),
+    ...(value >= 0 ? { min: 0 } : {}),
     meaning: reason[0].toUpperCase() + reason.slice(1),
     source: (SOURCES as Readonly<Record<string, { readonly citation: string }>>)[source]?.citation ?? source,
   }))

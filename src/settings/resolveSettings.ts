@@ -25,7 +25,7 @@ export function resolveSettings(
     const line = fromFile.get(spec.key)
     if (spec.key in given) {
       const problem = broken(spec, given[spec.key])
-      if (problem) throw new UsageError(`${spec.key} requires ${problem}, got ${JSON.stringify(given[spec.key])}`)
+      if (problem) throw new UsageError(`${spec.key} requires ${problem}, got ${shown(given[spec.key])}`)
       settings.set(spec.key, { spec, value: given[spec.key], origin: 'command line' })
     } else if (line) settings.set(spec.key, { spec, value: line.value, origin: 'file', line: line.line })
     else settings.set(spec.key, { spec, value: spec.default, origin: 'default' })
@@ -73,37 +73,60 @@ function splitKey(key: string): [string, string] {
   return [key.slice(0, dot), key.slice(dot + 1)]
 }
 
-function readFile(specs: readonly SettingSpec[], file: SettingsFile): Map<string, { value: SettingValue; line?: number }> {
+function readFile(
+  specs: readonly SettingSpec[],
+  file: SettingsFile,
+): Map<string, { value: SettingValue; line?: number }> {
   let document: Record<string, unknown>
   try {
     document = parse(file.text)
   } catch (error) {
     if (!(error instanceof TomlError)) throw error
     const [what] = error.message.split('\n')
-    throw new UsageError(`${file.name}, line ${error.line}, column ${error.column}: ${what.replace(/^Invalid TOML document: /, 'TOML requires valid syntax, got ')}`, { cause: error })
+    throw new UsageError(
+      `${file.name}, line ${error.line}, column ${error.column}: ${what.replace(/^Invalid TOML document: /, 'TOML requires valid syntax, got ')}`,
+      { cause: error },
+    )
   }
   const known = new Map(specs.map((spec) => [spec.key, spec]))
   const sections = new Set(specs.map((spec) => splitKey(spec.key)[0]))
   const values = new Map<string, { value: SettingValue; line?: number }>()
   for (const [section, body] of Object.entries(document)) {
-    if (!sections.has(section) || typeof body !== 'object' || body === null || Array.isArray(body)) {
-      throw new UsageError(`${place(file, section)}: settings require one of the sections ${[...sections].join(', ')}, got ${section}${nearest(section, [...sections])}`)
+    if (sections.has(section) && (typeof body !== 'object' || body === null || Array.isArray(body))) {
+      throw new UsageError(
+        `${place(file, section)}: settings require [${section}] once as a table, got ${Array.isArray(body) ? 'a list of tables' : shown(body)}`,
+      )
+    }
+    if (!sections.has(section) || typeof body !== 'object' || body === null) {
+      throw new UsageError(
+        `${place(file, section)}: settings require one of the sections ${[...sections].join(', ')}, got ${section}${nearest(section, [...sections])}`,
+      )
     }
     for (const [name, value] of Object.entries(body)) {
       const key = `${section}.${name}`
       const spec = known.get(key)
-      if (!spec) throw new UsageError(`${place(file, section, name)}: settings require a known key, got ${key}${nearest(key, [...known.keys()])}`)
+      if (!spec)
+        throw new UsageError(
+          `${place(file, section, name)}: settings require a known key, got ${key}${nearest(key, [...known.keys()])}`,
+        )
       const problem = broken(spec, value)
-      if (problem) throw new UsageError(`${place(file, section, name)}: ${key} requires ${problem}, got ${JSON.stringify(value)}`)
+      if (problem)
+        throw new UsageError(`${place(file, section, name)}: ${key} requires ${problem}, got ${shown(value)}`)
       values.set(key, { value: value as SettingValue, line: position(file.text, section, name)?.line })
     }
   }
   return values
 }
 
+/** A value as the user wrote it, near enough: JSON has no word for numbers that are not finite. */
+function shown(value: unknown): string {
+  return typeof value === 'number' ? String(value) : JSON.stringify(value)
+}
+
 /** What the rule is that a value breaks, or undefined when it is fine. */
 function broken(spec: SettingSpec, value: unknown): string | undefined {
-  if (typeof value !== typeof spec.default) return `a ${typeof spec.default === 'string' ? 'text' : typeof spec.default}`
+  if (typeof value !== typeof spec.default)
+    return `a ${typeof spec.default === 'string' ? 'text' : typeof spec.default}`
   if (spec.choices && !spec.choices.includes(value as string)) return `one of ${spec.choices.join(', ')}`
   if (typeof value !== 'number') return undefined
   const unit = spec.unit ? ` ${spec.unit}` : ''
@@ -131,7 +154,8 @@ function position(text: string, section: string, name?: string): { line: number;
     if (!key) continue
     const full = inside ? `${inside}.${key[2]}` : key[2]
     const wanted = name === undefined ? section : `${section}.${name}`
-    if (full === wanted || (name === undefined && full.startsWith(`${section}.`))) return { line: i + 1, column: raw.indexOf(key[2]) + 1 }
+    if (full === wanted || (name === undefined && full.startsWith(`${section}.`)))
+      return { line: i + 1, column: raw.indexOf(key[2]) + 1 }
   }
   return undefined
 }
@@ -152,7 +176,8 @@ function editDistance(a: string, b: string): number {
   let previous = Array.from({ length: b.length + 1 }, (_, j) => j)
   for (let i = 1; i <= a.length; i++) {
     const row = [i]
-    for (let j = 1; j <= b.length; j++) row[j] = Math.min(previous[j] + 1, row[j - 1] + 1, previous[j - 1] + (a[i - 1] === b[j - 1] ? 0 : 1))
+    for (let j = 1; j <= b.length; j++)
+      row[j] = Math.min(previous[j] + 1, row[j - 1] + 1, previous[j - 1] + (a[i - 1] === b[j - 1] ? 0 : 1))
     previous = row
   }
   return previous[b.length]
