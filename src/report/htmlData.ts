@@ -111,7 +111,7 @@ export function htmlTargets(
       range: type.low68 === undefined || type.high68 === undefined ? '' : typeRange(type.low68, type.high68),
       expected: summary?.listed?.expectedType ?? best.night?.expectedType ?? '',
       probability: expectedChance(view) ?? null,
-      snr: summary?.snrReached ?? best.spectrum.snr.visual ?? null,
+      snr: (summary ? summary.snrReached : best.spectrum.snr.visual) ?? null,
       quality: qualityOf(view),
       again: summary?.observeAgain ? (summary.reason ?? 'no reason given') : null,
       urgency: summary?.observeAgain ? (summary.urgency ?? null) : null,

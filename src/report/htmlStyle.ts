@@ -44,7 +44,7 @@ canvas { display: block; width: 100%; height: 21rem; cursor: crosshair; touch-ac
 .tools button { border: 1px solid var(--quiet); border-radius: 3px; background: #fff; padding: .12rem .55rem; cursor: pointer; }
 .tools button:hover, thead button:hover { background: var(--wash); }
 #reason { border-left: 4px solid var(--vermillion); padding-left: .6rem; }
-.brief { max-width: 75rem; } .brief td:last-child { white-space: normal; }
+.brief { max-width: 75rem; } .brief thead th { position: static; padding: .18rem .4rem; } .brief td:last-child { white-space: normal; }
 .jump { border: 0; background: none; padding: 0; color: var(--blue); text-decoration: underline; cursor: pointer; font-weight: 600; }
 header ul { margin: .2rem 0 .8rem; padding-left: 1.2rem; }
 .half { max-height: 15rem; overflow: auto; }

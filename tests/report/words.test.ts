@@ -5,6 +5,7 @@ import { plainText } from '../../src/report/plainText.ts'
 import { spread } from '../../src/report/spread.ts'
 import { clockTime, dateAndTime, nightDates } from '../../src/report/timeWords.ts'
 import {
+  duration,
   featureWord,
   percent,
   shortNumber,
@@ -118,5 +119,24 @@ describe('PALETTE', () => {
   it('sets all text with a contrast of 4.5 to 1 or more', () => {
     for (const colour of [PALETTE.ink, PALETTE.quiet, PALETTE.blue])
       expect(1.05 / (luminance(colour) + 0.05)).toBeGreaterThan(4.5)
+  })
+})
+
+describe('duration', () => {
+  it('is in the unit an observer plans with', () => {
+    expect([27, 599, 600, 5200, 7200, 43000].map(duration)).toEqual([
+      '27 s',
+      '599 s',
+      '10 min',
+      '87 min',
+      '2 h',
+      '12 h',
+    ])
+  })
+})
+
+describe('percent near ten', () => {
+  it('never falls into an exponent', () => {
+    for (let p = 0.05; p < 0.2; p += 0.0007) expect(percent(p)).toMatch(/^\d+ %$/)
   })
 })
