@@ -7,6 +7,7 @@ import type { NightSummary, Target } from '../../src/night/types.ts'
 import { nightOf } from '../../src/pipeline/nightOf.ts'
 import type { InForce } from '../../src/pipeline/settingsInForce.ts'
 import type { Outcome } from '../../src/quality/types.ts'
+import { cutToWidth } from '../../src/report/columnWidth.ts'
 import { nightSummaryText } from '../../src/report/nightText.ts'
 import { TABLE_NAMES, type TableName } from '../../src/report/row.ts'
 import { tableRows } from '../../src/report/tableRows.ts'
@@ -15,6 +16,7 @@ import { startCrew, type Crew } from '../crew.ts'
 import { count, exitStatus, gather, type Tally } from '../gather.ts'
 import { type NormalizedPlan, normalizedPlan } from '../normalized.ts'
 import { drawPages } from '../pages.ts'
+import { printable } from '../printable.ts'
 import { folderOutput, wantsColour } from '../results.ts'
 import { inForceOf, readSettings, readText } from '../settingsFile.ts'
 import { watchFolder } from '../watch.ts'
@@ -91,6 +93,9 @@ async function conclude(outcomes: readonly Outcome[], plan: Plan, crew: Crew): P
   process.stdout.write(
     `\n${pages ? `pages   ${join(out, 'night.pdf')}, ${join(out, 'night.html')}, ${pages.targets} in ${join(out, 'targets')}/\n` : ''}tables  ${join(out, 'spectra.csv').replace(/\.csv$/, options.format ? `.${options.format}` : '.csv')} and ${TABLE_NAMES.length - 2} more in ${out}/\n`,
   )
+  // the last line is what stands on the screen when the rest has scrolled by
+  const again = night.observeAgain.map(({ target }) => target).join(', ')
+  if (again !== '') process.stdout.write(`${cutToWidth(printable(`again   ${again}`), width)}\n`)
   const tally: Tally = { files: 0, unreadable: 0, unusable: 0 }
   outcomes.forEach((outcome) => count(tally, outcome))
   tally.unusable += night.spectra.filter((s) => s.quality === 'unusable').length

@@ -76,7 +76,9 @@ function title(face: Typeface, area: Area, view: TargetView): Block {
 function factsText(view: TargetView): string {
   const { facts: header, setup, resolution } = view.exposures[view.best].spectrum
   const parts = [
-    view.exposures.length > 1 ? `${view.exposures.length} exposures, of the one that decided most` : '',
+    view.exposures.length > 1
+      ? `${view.exposures.length} exposures, here ${fileName(view.exposures[view.best].file)}`
+      : '',
     header.ra === undefined || header.dec === undefined
       ? ''
       : `RA ${header.ra.toFixed(4)}°, Dec ${header.dec.toFixed(4).replace(/^-/, '−')}°`,

@@ -101,6 +101,8 @@ function factorTo(best: Exposure, other: Exposure): number {
   if (!a || !b) return 1
   const overlap: readonly [number, number] = [Math.max(a[0], b[0]), Math.min(a[1], b[1])]
   const isApart = overlap[1] - overlap[0] < 10
+  // the side of the best one where the other goes on
+  const edge = b[1] - a[1] > a[0] - b[0] ? a[1] : a[0]
   const middle = isApart ? (b[0] > a[1] ? [a[1], b[0]] : [a[0], b[1]]) : undefined
   const level = (e: Exposure, from: number, to: number): number => {
     const curves = e.spectrum.curves
@@ -113,7 +115,7 @@ function factorTo(best: Exposure, other: Exposure): number {
   }
   const factor = middle
     ? level(best, middle[0] - JOIN, middle[0] + JOIN) / level(other, middle[1] - JOIN, middle[1] + JOIN)
-    : level(best, overlap[0], overlap[1]) / level(other, overlap[0], overlap[1])
+    : level(best, edge - JOIN, edge + JOIN) / level(other, Math.max(a[0], edge - JOIN), Math.min(a[1], edge + JOIN))
   return factor > 0 && Number.isFinite(factor) ? factor : 1
 }
 

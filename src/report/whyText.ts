@@ -2,6 +2,7 @@ import type { SpectrumOutcome } from '../quality/types.ts'
 import type { ClassicalRatio, Evidence } from '../typing/types.ts'
 import { cutToWidth, padToWidth } from './columnWidth.ts'
 import { plainText } from './plainText.ts'
+import { featureWord } from './words.ts'
 
 /** Features listed; those below this share in the decision are summed up in one line. */
 const LEAST_SHARE = 0.01
@@ -61,7 +62,7 @@ function typeLine({ type }: SpectrumOutcome): string {
 
 function evidenceLine(e: Evidence): string {
   const cells = [
-    e.feature,
+    featureWord(e.feature),
     number(e.measured),
     number(e.error),
     number(e.expected),
