@@ -6,6 +6,7 @@ import { type Bins, binSpectrum } from './bins.ts'
 import { noiseOf } from './noise.ts'
 import type { Continuum } from './types.ts'
 import { weakLines } from './weakLines.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
 export interface ContinuumOptions {
   /** Å at 5000 Å: the level is set by stretches of this width, whatever the resolution of the spectrum. */
@@ -153,11 +154,9 @@ const HYDROGEN = [
   [4101.7, 40],
   [3970.1, 30],
 ] as const
-const CLIGHT = 299792.458
-
 function hydrogenWeight(wavelength: number, { velocity = 0, kind }: ContinuumOptions): number {
   if (kind === 'cool') return 1
-  const rest = wavelength / (1 + velocity / CLIGHT)
+  const rest = wavelength / (1 + velocity / SPEED_OF_LIGHT)
   for (const [centre, half] of HYDROGEN) if (Math.abs(rest - centre) < half) return 0.05
   return 1
 }

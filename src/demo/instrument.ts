@@ -2,8 +2,7 @@ import { DEMO_INSTRUMENT } from '../tables/demoNight.ts'
 import type { DemoSetup } from '../tables/demoNight.ts'
 import { blurredAt, FINE_FIRST, FINE_SAMPLES, FINE_STEP, valueAt } from './grid.ts'
 import { airBands, extinction, nightSky } from './sky.ts'
-
-const LIGHT_SPEED_KMS = 299792.458
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
 /** True wavelength [Å, air] of every pixel along the dispersion, shape (width). */
 export function pixelWavelengths(setup: DemoSetup): Float64Array {
@@ -33,7 +32,7 @@ export function starElectrons(
   const shifted = new Float64Array(FINE_SAMPLES)
   for (let i = 0; i < FINE_SAMPLES; i++) {
     const wavelength = FINE_FIRST + FINE_STEP * i
-    const atRest = wavelength / (1 + velocity / LIGHT_SPEED_KMS)
+    const atRest = wavelength / (1 + velocity / SPEED_OF_LIGHT)
     shifted[i] = valueAt(light, atRest) * extinction(wavelength, airmass) * bands[i]
   }
   const scale = DEMO_INSTRUMENT.zeroRate * 10 ** (-0.4 * mag) * exposure

@@ -1,6 +1,7 @@
 import { seededNormal } from '../numeric/random.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 import { blurredAt } from './grid.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
 /** How a made spectrum is sampled. */
 export interface MadeOptions {
@@ -16,8 +17,6 @@ export interface MadeOptions {
   readonly velocity?: number
 }
 
-const LIGHT_SPEED_KMS = 299792.458
-
 /**
  * Light on the fine grid as a spectrum in air, with its noise in `sigma`: what a reader of files would hand on. For
  * tests that want a spectrum of known content without a file.
@@ -26,7 +25,7 @@ export function madeSpectrum(light: Float64Array, options: MadeOptions = {}): Sp
   const { first = 3700, last = 9000, step = 1.5, fwhm = 5, snr, seed = 1, velocity = 0 } = options
   const samples = Math.floor((last - first) / step) + 1
   const wavelength = Float64Array.from({ length: samples }, (_, i) => first + step * i)
-  const atRest = wavelength.map((x) => x / (1 + velocity / LIGHT_SPEED_KMS))
+  const atRest = wavelength.map((x) => x / (1 + velocity / SPEED_OF_LIGHT))
   const clean = blurredAt(light, atRest, fwhm)
   const mean = clean.reduce((sum, value) => sum + value, 0) / samples
   const normal = seededNormal(seed)

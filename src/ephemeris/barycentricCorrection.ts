@@ -1,8 +1,7 @@
 import { BaryState, Body, C_AUDAY, ObserverState } from 'astronomy-engine'
 import type { Site } from '../spectrum/types.ts'
 import { observerOf, timeOf, unitVector } from './place.ts'
-
-const SPEED_OF_LIGHT = 299792.458
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
 /**
  * Velocity to add to a measured velocity to refer it to the barycentre of the solar system [km/s]: the observer's

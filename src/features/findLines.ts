@@ -8,6 +8,7 @@ import { fitProfiles } from './fitProfiles.ts'
 import { type Detection, type NamingOptions, nameLines } from './identify.ts'
 import { type Pixels, firstPixelAbove, pixelsOf } from './pixels.ts'
 import type { FoundLine } from './types.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
 export interface FindOptions {
   /** Lines that a found one may be. */
@@ -19,7 +20,6 @@ export interface FindOptions {
   readonly threshold?: number
 }
 
-const CLIGHT = 299792.458
 /** With white noise, one false line in about five spectra of 4,000 samples. */
 const THRESHOLD = 4
 /** No more lines than this are fitted at once; a longer run is cut at its shallowest gap. */
@@ -54,7 +54,13 @@ export function findLines(
   )
   const peaks = hidden.length ? [...first, ...hidden].sort((a, b) => a.centre - b.centre) : first
   const detections = measurePeaks(settled, peaks, fwhm)
-  return nameLines(detections, { lines, telluric, stretch: 1 + frame.velocity / CLIGHT, resolution: fwhm, range })
+  return nameLines(detections, {
+    lines,
+    telluric,
+    stretch: 1 + frame.velocity / SPEED_OF_LIGHT,
+    resolution: fwhm,
+    range,
+  })
 }
 
 /** A line hidden in the flank of another must lie this many FWHM from it. */

@@ -5,6 +5,7 @@ import type { BandWindow } from '../tables/types.ts'
 import type { RestFrame } from '../velocity/types.ts'
 import { type Pixels, type WindowMean, firstPixelAbove, partMean, pixelsOf, windowMean } from './pixels.ts'
 import type { Measurement } from './types.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
 export interface BandOptions {
   readonly windows: readonly BandWindow[]
@@ -12,7 +13,6 @@ export interface BandOptions {
   readonly resolution?: { readonly current?: number; readonly common: number }
 }
 
-const CLIGHT = 299792.458
 /** A window that has less than this share of itself inside the data is `uncovered`. */
 const COVERED = 0.98
 /** A window with less than this share of usable samples is `masked`. */
@@ -42,7 +42,7 @@ export function measureBands(
         to: resolution.common,
       })
     : pixels.flux
-  return windows.map((window) => measureBand(pixels, flux, 1 + frame.velocity / CLIGHT, window))
+  return windows.map((window) => measureBand(pixels, flux, 1 + frame.velocity / SPEED_OF_LIGHT, window))
 }
 
 function measureBand(pixels: Pixels, flux: Float64Array, stretch: number, window: BandWindow): Measurement {

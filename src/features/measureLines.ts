@@ -6,6 +6,7 @@ import { type FittedProfile, type ProfileFit, type ProfileStart, fitProfiles } f
 import { type Integral, integrateLine } from './integrateLine.ts'
 import { type Pixels, pixelsOf, windowMean } from './pixels.ts'
 import type { Measurement } from './types.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
 export interface LineOptions {
   readonly lines: readonly SpectralLine[]
@@ -15,7 +16,6 @@ export interface LineOptions {
   readonly methods?: readonly ('integration' | 'profile')[]
 }
 
-const CLIGHT = 299792.458
 /** Half of a line's window, in FWHM, where the table gives none: holds 99.96 % of a Gaussian. */
 const WINDOW = 1.5
 /** Lines closer than this many FWHM are one feature; see facts on blends in DEVELOPERS.md. */
@@ -48,7 +48,7 @@ export function measureLines(
   { lines, resolution, methods = ['integration', 'profile'] }: LineOptions,
 ): Measurement[] {
   const pixels = pixelsOf(spectrum, continuum)
-  const placed = placeLines(lines, pixels, 1 + frame.velocity / CLIGHT, resolution)
+  const placed = placeLines(lines, pixels, 1 + frame.velocity / SPEED_OF_LIGHT, resolution)
   const integrals = placed.map(({ window }) => integrateLine(pixels, window[0], window[1]))
   const fits = methods.includes('profile') ? fitGroups(pixels, placed, integrals) : undefined
   const measurements: Measurement[] = []
@@ -138,7 +138,7 @@ function fitMembers(
       shape: one.line.profile ?? ('gaussian' as const),
       fwhm: broad && area * depth > 0 ? Math.min(width / 2, Math.max(one.fwhm, (0.75 * area) / depth)) : one.fwhm,
       reach: Math.max(one.fwhm, 2),
-      widest: broad ? width : Math.hypot(one.fwhm, (one.centre * BROADEST) / CLIGHT),
+      widest: broad ? width : Math.hypot(one.fwhm, (one.centre * BROADEST) / SPEED_OF_LIGHT),
       weak: Math.abs(depth) < FREE_FIT * Math.sqrt(core.variance),
     }
   })

@@ -239,5 +239,3 @@ export const QUALITY_RULES = {
   'kind-unknown': { level: 'note', meaning: 'The frame is of no kind known here', source: COMMON },
   'frame-nonfinite': { level: 'note', meaning: 'Pixels of the frame have no value', unit: '1', source: COMMON },
 } as const satisfies Readonly<Record<string, FindingRule>>
-
-export type QualityCode = keyof typeof QUALITY_RULES

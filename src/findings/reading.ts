@@ -1,4 +1,4 @@
-import type { FindingRule } from './types.ts'
+import type { Finding, FindingRule, Note } from './types.ts'
 
 const note = (meaning: string, remedy?: string): FindingRule => ({
   level: 'note',
@@ -72,9 +72,8 @@ export const READING_RULES = {
   'truncated-data': doubt('the file ends before its data do', 'copy the file again'),
   'gzip-check': doubt('the check value of the compressed file is wrong', 'copy the file again'),
   'gzip-cut': doubt('the compressed file ends early', 'copy the file again'),
-  checksum: doubt('the checksum of an HDU is wrong', 'copy the file again'),
+  'inflate-cut': doubt('the compressed file holds more than is read of it'),
   heap: doubt('an array of a table lies outside its heap', 'copy the file again'),
-  'format-note': note('something about the format of the file was noticed'),
   // Reasons why a file has no spectrum
   'no-data': fault('the file holds no image and no table with data'),
   'no-wavelength-axis': fault('nothing in the file gives wavelengths'),
@@ -97,3 +96,14 @@ export const READING_RULES = {
   cube: fault('the image is a data cube'),
   'two-dimensional': fault('the image is a two-dimensional frame, not a spectrum'),
 } as const satisfies Readonly<Record<string, FindingRule>>
+
+const RULES: Readonly<Record<string, FindingRule | undefined>> = READING_RULES
+
+/**
+ * A note of the reader as a finding, as grave as its rule says. What would have stopped the reading is a doubt where a
+ * spectrum came of it all the same; a code without a rule is a note.
+ */
+export function noteFinding({ code, text }: Note): Finding {
+  const level = RULES[code]?.level ?? 'note'
+  return { level: level === 'fault' ? 'doubt' : level, code, text }
+}

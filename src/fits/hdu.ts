@@ -2,7 +2,7 @@ import { FormatError } from '../errors.ts'
 import { asciiColumns, binaryColumns } from './columns.ts'
 import { booleanValue, integerValue, numberValue, textValue } from './header.ts'
 import { imageHeader, tableHeader } from './storedHeader.ts'
-import type { Bitpix, Column, FitsFault, FitsNote, Hdu, HduKind, Header } from './types.ts'
+import type { Bitpix, FitsFault, FitsNote, Hdu, HduKind, Header } from './types.ts'
 
 const BITPIX: readonly number[] = [8, 16, 32, 64, -32, -64]
 const MOST_AXES = 999
@@ -185,10 +185,4 @@ function scalingOf(header: Header, bitpix: Bitpix, notes: FitsNote[]): Pick<Hdu,
   const number = typeof blank === 'bigint' ? blank : numberValue(header, 'BLANK')
   if (typeof number === 'bigint') return { scale, zero, blank: number }
   return number !== undefined && Number.isInteger(number) ? { scale, zero, blank: BigInt(number) } : { scale, zero }
-}
-
-/** The columns of an HDU that bear a name, upper and lower case alike (FITS 4.0, section 7.3.2). */
-export function columnsNamed(hdu: Hdu, name: string): readonly Column[] {
-  const wanted = name.toLowerCase()
-  return hdu.columns.filter((column) => column.name.toLowerCase() === wanted)
 }

@@ -23,13 +23,6 @@ export function choleskyFactor(matrix: Float64Array, n: number): Float64Array {
   return lower
 }
 
-/** Twice the sum of the logarithms of the diagonal: ln det A. */
-export function logDeterminant(lower: Float64Array, n: number): number {
-  let sum = 0
-  for (let i = 0; i < n; i++) sum += Math.log(lower[i * n + i])
-  return 2 * sum
-}
-
 /** Solution of L x = b by forward substitution, written into `out` (which may be `b`). */
 export function forwardSolve(lower: Float64Array, n: number, b: Float64Array, out: Float64Array): Float64Array {
   for (let i = 0; i < n; i++) {

@@ -1,5 +1,5 @@
 import { FormatError } from '../errors.ts'
-import type { Finding } from '../findings/types.ts'
+import { noteFinding } from '../findings/reading.ts'
 import { inflateSource } from '../fits/inflate.ts'
 import { openFits } from '../fits/open.ts'
 import type { ByteSource, FitsFile } from '../fits/types.ts'
@@ -50,11 +50,7 @@ export function analyseFile(
   const base = { file: name, size: bytes.size, spectra: [], notes: [] }
   try {
     const opened = openBytes(bytes)
-    const notes = opened.file.notes.map(({ code, text }): Finding => ({
-      level: code.startsWith('truncated') ? 'doubt' : 'note',
-      code,
-      text,
-    }))
+    const notes = opened.file.notes.map(noteFinding)
     const result = spectraOf(opened, name, { companion: options.companion, maxSpectra: options.inForce.spectraLimit })
     const facts = withSite(result.facts, options)
     if (result.frame2d) {

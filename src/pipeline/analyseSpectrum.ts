@@ -32,6 +32,7 @@ import { measureZeroPoint } from '../velocity/measureZeroPoint.ts'
 import type { Resolution, RestFrame, ZeroPoint } from '../velocity/types.ts'
 import { thinnedCurves } from './curves.ts'
 import type { InForce } from './settingsInForce.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
 /** How one file's spectra are analysed. */
 export interface AnalyseOptions {
@@ -43,8 +44,6 @@ export interface AnalyseOptions {
   /** Keep every sample with its continuum, to write the normalised spectrum. */
   readonly wantsNormalised?: boolean
 }
-
-const CLIGHT = 299792.458
 
 /** Å: the range this program knows lines, bands and continua of; what lies beyond is listed but not measured. */
 const OPTICAL = [3000, 11000] as const
@@ -200,6 +199,6 @@ function barycentric(
   return {
     barycentricCorrection: correction,
     // Wright & Eastman 2014: the redshifts multiply, so the velocities do not simply add.
-    ...(trusted ? { barycentricVelocity: velocity + correction + (velocity * correction) / CLIGHT } : {}),
+    ...(trusted ? { barycentricVelocity: velocity + correction + (velocity * correction) / SPEED_OF_LIGHT } : {}),
   }
 }

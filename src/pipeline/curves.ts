@@ -4,8 +4,8 @@ import type { Spectrum } from '../spectrum/types.ts'
 import type { ExpectedSpectrum } from '../typing/expected.ts'
 import type { RestFrame } from '../velocity/types.ts'
 import { levelMatched } from './levelMatched.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
-const CLIGHT = 299792.458
 /** Points a page can show across its width; each bin keeps its lowest and highest sample, so that no line is lost. */
 const MOST_POINTS = 1800
 
@@ -23,7 +23,7 @@ export function thinnedCurves(
   const flux = new Float32Array(n)
   const level = new Float32Array(n)
   const normalised = new Float32Array(n)
-  const shift = 1 + frame.velocity / CLIGHT
+  const shift = 1 + frame.velocity / SPEED_OF_LIGHT
   for (let j = 0; j < n; j++) {
     const i = kept[j]
     wavelength[j] = spectrum.wavelength[i]

@@ -3,8 +3,8 @@ import { finding } from '../findings/rules.ts'
 import type { Finding } from '../findings/types.ts'
 import { figure, withError } from './figures.ts'
 import type { Limits, Samples, SpectrumInput } from './samples.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
-const LIGHT = 299792.458
 /** km/s: between air and vacuum from 4000 to 8000 Å (Ciddor 1996), with room for the error of a zero point. */
 const AIR_VACUUM = { from: 78, to: 89 } as const
 /** Å: where an offset in km/s is turned into samples. */
@@ -18,7 +18,7 @@ export function checkScale(input: SpectrumInput, samples: Samples, limit: Limits
 function checkZeroPoint({ zeroPoint, resolution }: SpectrumInput, { step }: Samples, limit: Limits): Finding[] {
   if (!zeroPoint || !(Math.abs(zeroPoint.offset) > limit('zeroPointSigma') * zeroPoint.error)) return []
   const { offset, error, from } = zeroPoint
-  const shift = (Math.abs(offset) / LIGHT) * MIDDLE
+  const shift = (Math.abs(offset) / SPEED_OF_LIGHT) * MIDDLE
   const said = `${withError(offset, error)} km/s, by ${shortList(from)}`
   if (Math.abs(offset) >= AIR_VACUUM.from && Math.abs(offset) <= AIR_VACUUM.to && error < 5) {
     const text = `The wavelengths are off by ${said}: the difference between air and vacuum is 82 to 85 km/s`
@@ -29,7 +29,7 @@ function checkZeroPoint({ zeroPoint, resolution }: SpectrumInput, { step }: Samp
   const widths = resolution ? shift / resolution.fwhm : pixels / 2.5
   const level = widths > limit('zeroPointWidths') ? 'doubt' : 'note'
   const text = `The wavelengths are ${offset > 0 ? 'too long' : 'too short'} by ${said}: ${figure(pixels)} samples`
-  const allowed = (limit('zeroPointPixels') * step * LIGHT) / MIDDLE
+  const allowed = (limit('zeroPointPixels') * step * SPEED_OF_LIGHT) / MIDDLE
   return [finding(QUALITY_RULES, 'wavelength-zero-point', text, { value: offset, limit: allowed, level })]
 }
 

@@ -1,5 +1,5 @@
-import { READING_RULES } from '../findings/reading.ts'
-import type { Finding, FindingRule } from '../findings/types.ts'
+import { noteFinding } from '../findings/reading.ts'
+import type { Finding } from '../findings/types.ts'
 import type { Thresholds } from '../tables/types.ts'
 import { checkCoverage } from './checkCoverage.ts'
 import { checkJoins } from './checkJoins.ts'
@@ -22,15 +22,6 @@ export interface SpectrumCheck {
   readonly quality: Quality
 }
 
-/** A remark of the reader is as grave as its rule says; one without a rule (damage of the file's frame) is a note. */
-function graveness(code: string): Finding['level'] {
-  return (READING_RULES as Readonly<Record<string, FindingRule | undefined>>)[code]?.level === 'note'
-    ? 'note'
-    : code in READING_RULES
-      ? 'doubt'
-      : 'note'
-}
-
 /**
  * Every check of one spectrum: signal-to-noise, coverage, saturation, dead and hit samples, sky and telluric residues,
  * joins, ringing, wavelength scale, resolution, emission, missing header facts. Notes of the reader become findings.
@@ -49,11 +40,7 @@ export function checkSpectrum(input: SpectrumInput, thresholds: Thresholds): Spe
     ...checkJoins(input, samples, limit),
     ...checkScale(input, samples, limit),
     ...checkStar(input, limit),
-    ...spectrum.notes.map(({ code, text }): Finding => ({
-      level: graveness(code),
-      code,
-      text,
-    })),
+    ...spectrum.notes.map(noteFinding),
   ])
   return { findings, snr, quality: qualityOf(findings) }
 }

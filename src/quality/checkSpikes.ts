@@ -5,8 +5,7 @@ import type { Finding } from '../findings/types.ts'
 import { median, robustSigma } from '../numeric/median.ts'
 import { figure } from './figures.ts'
 import type { Limits, Samples, SpectrumInput } from './samples.ts'
-
-const LIGHT = 299792.458
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
 /** Height of a spike over the range of the six samples around. */
 const CALM = 1.5
@@ -90,7 +89,7 @@ export function checkSpikes(input: SpectrumInput, samples: Samples, limit: Limit
     const level = up.length > limit('spikeCount') ? 'doubt' : 'note'
     found.push(finding(QUALITY_RULES, 'cosmic-ray-hits', text, { value: up.length, limit: limit('spikeCount'), level }))
     for (const spike of up) {
-      const rest = spike.wavelength / (1 + (restFrame.trusted ? restFrame.velocity : 0) / LIGHT)
+      const rest = spike.wavelength / (1 + (restFrame.trusted ? restFrame.velocity : 0) / SPEED_OF_LIGHT)
       const reach = Math.max(isWidthKnown ? resolution.fwhm : 0, 2 * samples.step)
       const hit = input.measurements.find(
         ({ status, wavelengthRest, ewErr, unit }) =>

@@ -5,9 +5,7 @@ import type { Spectrum } from '../spectrum/types.ts'
 import type { RestFrame } from '../velocity/types.ts'
 import { asciiText } from './asciiText.ts'
 import type { Provenance } from './provenance.ts'
-
-/** Speed of light, km/s (exact, SI 2019). */
-const LIGHT_KMS = 299792.458
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
 /** What a normalised spectrum is written from. */
 export interface NormalisedInput {
@@ -34,7 +32,7 @@ export function normalisedFits({
   provenance,
 }: NormalisedInput): Uint8Array {
   const n = spectrum.wavelength.length
-  const shift = restFrame.trusted ? 1 + restFrame.velocity / LIGHT_KMS : 1
+  const shift = restFrame.trusted ? 1 + restFrame.velocity / SPEED_OF_LIGHT : 1
   const wave = spectrum.wavelength.map((w) => w / shift)
   const over = (values: Float64Array): Float64Array => values.map((v, i) => v / continuum.level[i])
   const quality = Uint8Array.from({ length: n }, (_, i) =>

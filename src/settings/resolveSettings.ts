@@ -33,20 +33,6 @@ export function resolveSettings(
   return settings
 }
 
-/** The value of a numeric setting. */
-export function numberSetting(settings: Settings, key: string): number {
-  const value = settings.get(key)?.value
-  if (typeof value !== 'number') throw new RangeError(`settings require a number at ${key}, got ${String(value)}`)
-  return value
-}
-
-/** The value of a setting that is a word. */
-export function textSetting(settings: Settings, key: string): string {
-  const value = settings.get(key)?.value
-  if (typeof value !== 'string') throw new RangeError(`settings require a text at ${key}, got ${String(value)}`)
-  return value
-}
-
 /** One TOML document that gives every setting with its meaning, unit, source and value: a file to start from. */
 export function settingsToml(settings: Settings): string {
   const lines: string[] = []

@@ -1,5 +1,6 @@
 import { airToVacuum, vacuumToAir } from './air.ts'
-import { HC_EV_ANGSTROM, LIGHT_KMS } from './unit.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
+import { HC_EV_ANGSTROM } from './unit.ts'
 
 /**
  * A type of spectral axis of FITS WCS Paper III (Greisen et al. 2006, A&A 446, 747, table 1): how its value gives the
@@ -22,7 +23,7 @@ const inverse = (constant: number): Pick<SpectralCode, 'toVacuum' | 'slope'> => 
 
 /** The codes by their four letters. */
 export const SPECTRAL_CODES: Readonly<Record<string, SpectralCode>> = {
-  FREQ: { quantity: 'frequency', words: 'frequency axis', needsRest: false, ...inverse(LIGHT_KMS * 1e13) },
+  FREQ: { quantity: 'frequency', words: 'frequency axis', needsRest: false, ...inverse(SPEED_OF_LIGHT * 1e13) },
   ENER: { quantity: 'energy', words: 'photon energy axis', needsRest: false, ...inverse(HC_EV_ANGSTROM) },
   WAVN: { quantity: 'wavenumber', words: 'wavenumber axis', needsRest: false, ...inverse(1e8) },
   WAVE: {
@@ -43,15 +44,15 @@ export const SPECTRAL_CODES: Readonly<Record<string, SpectralCode>> = {
     quantity: 'velocity',
     words: 'radio velocity axis',
     needsRest: true,
-    toVacuum: (value, rest) => rest / (1 - value / LIGHT_KMS),
-    slope: (value, rest) => rest / LIGHT_KMS / (1 - value / LIGHT_KMS) ** 2,
+    toVacuum: (value, rest) => rest / (1 - value / SPEED_OF_LIGHT),
+    slope: (value, rest) => rest / SPEED_OF_LIGHT / (1 - value / SPEED_OF_LIGHT) ** 2,
   },
   VOPT: {
     quantity: 'velocity',
     words: 'optical velocity axis',
     needsRest: true,
-    toVacuum: (value, rest) => rest * (1 + value / LIGHT_KMS),
-    slope: (_value, rest) => rest / LIGHT_KMS,
+    toVacuum: (value, rest) => rest * (1 + value / SPEED_OF_LIGHT),
+    slope: (_value, rest) => rest / SPEED_OF_LIGHT,
   },
   ZOPT: {
     quantity: 'ratio',
@@ -64,8 +65,8 @@ export const SPECTRAL_CODES: Readonly<Record<string, SpectralCode>> = {
     quantity: 'velocity',
     words: 'relativistic velocity axis',
     needsRest: true,
-    toVacuum: (value, rest) => doppler(value / LIGHT_KMS, rest),
-    slope: (value, rest) => dopplerSlope(value / LIGHT_KMS, rest) / LIGHT_KMS,
+    toVacuum: (value, rest) => doppler(value / SPEED_OF_LIGHT, rest),
+    slope: (value, rest) => dopplerSlope(value / SPEED_OF_LIGHT, rest) / SPEED_OF_LIGHT,
   },
   BETA: {
     quantity: 'ratio',

@@ -1,3 +1,5 @@
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
+
 /** What a spectral unit measures. */
 export type SpectralQuantity = 'wavelength' | 'frequency' | 'wavenumber' | 'energy' | 'velocity'
 
@@ -78,8 +80,6 @@ export function guessedWavelengthUnit(low: number, high: number): string | undef
   return PLAUSIBLE.find(([, least, most, reach]) => low >= least && high <= most && high >= reach)?.[0]
 }
 
-/** Speed of light [km/s], exact (SI). */
-export const LIGHT_KMS = 299792.458
 /** Planck constant × speed of light [eV Å], from the exact SI values. */
 export const HC_EV_ANGSTROM = (6.62607015e-34 * 299792458 * 1e10) / 1.602176634e-19
 
@@ -92,7 +92,7 @@ export function toAngstrom(value: number, unit: SpectralUnit): number {
   const plain = unit.log === 'log10' ? 10 ** value : unit.log === 'ln' ? Math.exp(value) : value
   const scaled = plain * unit.scale
   if (unit.quantity === 'wavelength') return scaled
-  if (unit.quantity === 'frequency') return (LIGHT_KMS * 1e13) / scaled
+  if (unit.quantity === 'frequency') return (SPEED_OF_LIGHT * 1e13) / scaled
   if (unit.quantity === 'wavenumber') return 1e8 / scaled
   if (unit.quantity === 'energy') return HC_EV_ANGSTROM / scaled
   throw new RangeError('toAngstrom requires a unit of wavelength, frequency, wavenumber or energy, got velocity')

@@ -1,5 +1,3 @@
-import type { SourceKey } from './types.ts'
-
 /** Strength [Å] at a type number, straight lines between. */
 export type StrengthCurve = readonly (readonly [type: number, strength: number])[]
 
@@ -28,8 +26,7 @@ export interface DemoFeature {
   readonly supergiant?: StrengthCurve
 }
 
-/** Where the round figures below come from: read off published equivalent widths, rounded, gaps filled by eye. */
-export const DEMO_STRENGTHS_SOURCE: SourceKey = 'pickles1998'
+// The round figures below are read off the published equivalent widths of Pickles 1998, rounded, gaps filled by eye.
 
 /**
  * Strengths from which a made star starts. They are round figures for invented stars, no calibration: the strengths

@@ -43,7 +43,6 @@ export const SOURCES = {
   },
   worthey1997: { citation: 'Worthey & Ottaviani 1997, ApJS 111, 377', doi: '10.1086/313021' },
   windows: { citation: 'windows chosen for this program on published stars, by cross-validation' },
-  cardelli1989: { citation: 'Cardelli, Clayton & Mathis 1989, ApJ 345, 245', doi: '10.1086/167900' },
   fraunhofer: {
     citation: 'extents of the Fraunhofer bands A, B and a; of the water bands: handbook values',
     fromMemory: true,

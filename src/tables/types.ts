@@ -12,15 +12,6 @@ export interface Source {
   readonly fromMemory?: boolean
 }
 
-/** A number that says where it comes from. */
-export interface Sourced<T = number> {
-  readonly value: T
-  readonly unit: string
-  readonly uncertainty?: number
-  readonly source: SourceKey
-  readonly note?: string
-}
-
 /** A side-band feature: mean level of the band against the line through two side bands [Å, air, rest]. */
 export interface BandWindow {
   /** Key used in tables and pages: letters and digits. */

@@ -1,12 +1,11 @@
 import { correlate, correlateCentred } from '../numeric/correlate.ts'
 import { subtractRunningMean } from '../numeric/runningMean.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 import type { LinePattern } from '../tables/types.ts'
 import type { LogGrid } from './logGrid.ts'
 import { patternDepth } from './pattern.ts'
 import { findPeak } from './peak.ts'
 import type { CorrelationPeak } from './peak.ts'
-
-export const SPEED_OF_LIGHT = 299792.458
 
 /** Full window of the running mean that takes out slopes, in ln wavelength: 120 Å at 4000 Å. */
 const WINDOW = 0.03

@@ -2,7 +2,7 @@ import type { Continuum } from '../continuum/types.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 import type { LinePattern } from '../tables/types.ts'
 import { findRestFrame } from './findRestFrame.ts'
-import { SPEED_OF_LIGHT } from './matchPattern.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 import type { RestFrame } from './types.ts'
 
 /** Windows [Å] whose velocity is found: their middles are this far apart, and they reach this far on either side. */

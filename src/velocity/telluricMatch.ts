@@ -2,7 +2,8 @@ import type { Continuum } from '../continuum/types.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 import type { LinePattern } from '../tables/types.ts'
 import { toLogGrid } from './logGrid.ts'
-import { matchPattern, SPEED_OF_LIGHT, velocityOf } from './matchPattern.ts'
+import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
+import { matchPattern, velocityOf } from './matchPattern.ts'
 import type { Match } from './matchPattern.ts'
 
 /** How a band of the air lies on a spectrum. */

@@ -1,8 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { fitContinuum } from '../../src/continuum/fitContinuum.ts'
-import { normalise } from '../../src/continuum/normalise.ts'
 import { extinctionCcm89 } from '../support/extinction.ts'
-import { median } from '../../src/numeric/median.ts'
 import { type MadeKind, type MadeOptions, asSpectrum, madeSpectrum } from '../support/madeSpectrum.ts'
 
 /** Relative errors of the level over a range of a made spectrum. */
@@ -119,14 +117,5 @@ describe('fitContinuum', () => {
       expect(level.every((value) => !(value > 0))).toBe(true)
       expect(supported).toBe(0)
     }
-  })
-})
-
-describe('normalise', () => {
-  it('divides by the level and leaves out what is masked', () => {
-    const made = madeSpectrum({ kind: 'bare', gaps: [[5000, 5010]] })
-    const flux = normalise(made.spectrum, fitContinuum(made.spectrum))
-    expect(median(flux)).toBeCloseTo(1, 2)
-    expect(flux[made.spectrum.wavelength.findIndex((w) => w > 5005)]).toBeNaN()
   })
 })

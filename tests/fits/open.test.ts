@@ -1,6 +1,5 @@
 import { describe, expect, it } from 'vitest'
 import { FormatError } from '../../src/errors.ts'
-import { columnsNamed } from '../../src/fits/hdu.ts'
 import { readImage } from '../../src/fits/image.ts'
 import { openFits } from '../../src/fits/open.ts'
 import { memorySource } from '../../src/fits/source.ts'
@@ -119,12 +118,6 @@ describe('readColumn', () => {
     const hdu = hduAt(file, 1)
     const values = readColumn(source, hdu, hdu.columns[0] as never)
     expect(numbersOf(values)).toEqual(Float64Array.of(15, 0.25, 0.035, -7, NaN, NaN))
-  })
-
-  it('finds columns by name in either case', () => {
-    const columns = [{ name: 'WaveLength', letter: 'D' as const, values: [1] }]
-    const { file } = openBytes(encodeFits([{ kind: 'table', rows: 1, columns }]))
-    expect(columnsNamed(hduAt(file, 1), 'WAVELENGTH')).toHaveLength(1)
   })
 
   it('refuses rows outside the table as a broken contract', () => {

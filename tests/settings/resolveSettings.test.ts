@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { numberSetting, resolveSettings, settingsToml } from '../../src/settings/resolveSettings.ts'
+import { resolveSettings, settingsToml } from '../../src/settings/resolveSettings.ts'
 import type { SettingSpec } from '../../src/settings/types.ts'
 
 const SPECS: readonly SettingSpec[] = [
@@ -34,7 +34,7 @@ describe('resolveSettings', () => {
       ['quality.spikes', true, 'command line', undefined],
       ['pages.paper', 'A4', 'default', undefined],
     ])
-    expect(numberSetting(settings, 'quality.low-snr')).toBe(15)
+    expect(settings.get('quality.low-snr')?.value).toBe(15)
   })
 
   it.each([

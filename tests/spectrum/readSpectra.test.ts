@@ -1,6 +1,5 @@
 import { describe, expect, it } from 'vitest'
 import { FormatError } from '../../src/errors.ts'
-import { READING_RULES } from '../../src/findings/reading.ts'
 import { openFits } from '../../src/fits/open.ts'
 import { memorySource } from '../../src/fits/source.ts'
 import type { ByteSource } from '../../src/fits/types.ts'
@@ -8,7 +7,6 @@ import { encodeFits } from '../../src/fits/write.ts'
 import { seededUniform } from '../../src/numeric/random.ts'
 import { describeSpectrum } from '../../src/spectrum/describe.ts'
 import { joinOrders } from '../../src/spectrum/joinOrders.ts'
-import { readingFindings } from '../../src/spectrum/readingFindings.ts'
 import { readSpectra } from '../../src/spectrum/readSpectra.ts'
 import { KEYWORDS } from '../../src/tables/keywords.ts'
 import { image, ramp, readMade, table } from './made.ts'
@@ -214,22 +212,6 @@ describe('describeSpectrum', () => {
       uncertainty: 'none',
       convention: 'primary image, vacuum wavelength axis',
     })
-  })
-})
-
-describe('readingFindings', () => {
-  it('gives every note the level of its rule, and one that is new the level of a note', () => {
-    const found = readingFindings([
-      { code: 'medium-guessed', text: 'A' },
-      { code: 'gzip-check', text: 'B' },
-      { code: 'never-heard', text: 'C' },
-    ])
-    expect(found.map(({ level, code, text }) => [level, code, text])).toEqual([
-      ['note', 'medium-guessed', 'A'],
-      ['doubt', 'gzip-check', 'B'],
-      ['note', 'format-note', 'C'],
-    ])
-    expect(READING_RULES['gzip-check'].level).toBe('doubt')
   })
 })
 

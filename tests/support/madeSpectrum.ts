@@ -1,6 +1,7 @@
 import { profile } from '../../src/numeric/profiles.ts'
 import { seededNormal, seededUniform } from '../../src/numeric/random.ts'
 import type { Spectrum } from '../../src/spectrum/types.ts'
+import { SPEED_OF_LIGHT } from '../../src/numeric/speedOfLight.ts'
 
 /** A line put into a made spectrum: rest wavelength [Å], equivalent width [Å, negative for emission], own FWHM [Å]. */
 export interface MadeLine {
@@ -110,8 +111,6 @@ const BANDS: readonly (readonly [number, number, number])[] = [
 ] // prettier-ignore
 
 const FINE = 0.2
-const CLIGHT = 299792.458
-
 /**
  * A made spectrum with a known continuum: black body times response, a field of thousands of weak lines, Balmer lines
  * with wings, strong metal lines and bands after the kind of star, seen through a Gaussian instrument and with noise.
@@ -208,7 +207,7 @@ function fineSpectrum(options: MadeOptions, wavelength: Float64Array): Fine {
   const size = Math.ceil((wavelength[wavelength.length - 1] + 40 - start) / FINE)
   const depth = new Float64Array(size)
   const [, weak, hydrogen, metals] = KINDS[options.kind]
-  const shift = 1 + options.velocity / CLIGHT
+  const shift = 1 + options.velocity / SPEED_OF_LIGHT
   if (weak > 0 && options.crowding > 0)
     addWeakLines(depth, start, { scale: weak * options.crowding, seed: options.star, shift })
   const optical = depth.map((tau) => Math.exp(-Math.min(tau, 3)))

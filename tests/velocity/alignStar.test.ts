@@ -5,12 +5,11 @@ import { PATTERNS } from '../../src/tables/patterns.ts'
 import { alignStar } from '../../src/velocity/alignStar.ts'
 import { hasShared, NEEDS_SHARED } from '../support/shared.ts'
 import { readStar } from '../support/typing/sharedStars.ts'
-
-const CLIGHT = 299792.458
+import { SPEED_OF_LIGHT } from '../../src/numeric/speedOfLight.ts'
 
 /** The star with the samples of one arm moved by a velocity, as a wrong arc would do. */
 function withArmMoved(star: Spectrum, [from, to]: readonly [number, number], velocity: number): Spectrum {
-  const moved = star.wavelength.map((w) => (w > from && w < to ? w * (1 + velocity / CLIGHT) : w))
+  const moved = star.wavelength.map((w) => (w > from && w < to ? w * (1 + velocity / SPEED_OF_LIGHT) : w))
   const kept = Array.from(moved.keys()).filter(
     (i) => moved[i] > Math.max(-Infinity, ...moved.slice(Math.max(0, i - 12), i)),
   )
@@ -41,7 +40,7 @@ describe.skipIf(!hasShared)(`alignStar (${NEEDS_SHARED})`, () => {
     const aligned = alignStar(bent, fitContinuum(bent), { patterns: PATTERNS })
     expect(aligned.findings.map((f) => f.code)).toContain('wavelength-scale-bent')
     const at = bent.wavelength.findIndex((w) => w > 5200)
-    const back = (aligned.spectrum.wavelength[at] / bent.wavelength[at] - 1) * CLIGHT
+    const back = (aligned.spectrum.wavelength[at] / bent.wavelength[at] - 1) * SPEED_OF_LIGHT
     // The arm is brought back within the error of a part's velocity (about 20 km/s at 4.5 Å).
     expect(Math.abs(back + 300)).toBeLessThan(60)
     expect(Math.abs(aligned.frame.velocity - before.frame.velocity)).toBeLessThan(30)

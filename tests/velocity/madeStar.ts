@@ -1,10 +1,9 @@
 import type { Continuum } from '../../src/continuum/types.ts'
 import { seededNormal, seededUniform } from '../../src/numeric/random.ts'
 import type { Spectrum } from '../../src/spectrum/types.ts'
+import { SPEED_OF_LIGHT } from '../../src/numeric/speedOfLight.ts'
 
 const SIGMAS_PER_FWHM = 2 * Math.sqrt(2 * Math.log(2))
-const SPEED_OF_LIGHT = 299792.458
-
 /** [rest wavelength Å air, equivalent width Å, own FWHM Å]; strengths invented, wavelengths of the laboratory. */
 export type MadeLine = readonly [number, number, number]
 

@@ -1,5 +1,6 @@
 import type { Continuum } from '../../continuum/types.ts'
 import type { Spectrum } from '../../spectrum/types.ts'
+import { SPEED_OF_LIGHT } from '../../numeric/speedOfLight.ts'
 
 /** Running sums of a spectrum's usable light, so that the mean over any window costs the same however wide it is. */
 export interface LightSums {
@@ -45,10 +46,8 @@ export function sumLight({ wavelength, flux, usable }: Spectrum, { noise }: Cont
     variance[i + 1] = variance[i] + (isUsed && noise[i] > 0 ? (noise[i] * step) ** 2 : 0)
     width[i + 1] = width[i] + step
   }
-  return { edges, light, variance, width, stretch: 1 + velocity / CLIGHT }
+  return { edges, light, variance, width, stretch: 1 + velocity / SPEED_OF_LIGHT }
 }
-
-const CLIGHT = 299792.458
 
 /** Mean light over [lo, hi] Å at rest; NaN with `used` 0 where nothing is usable. */
 export function meanLight({ edges, light, variance, width, stretch }: LightSums, lo: number, hi: number): MeanLight {

@@ -17,6 +17,7 @@ import { atRedshift, sumLight } from './lightSums.ts'
 import { type Look, lookAt, type Recognised } from './look.ts'
 import { emissionPeaks } from './peaks.ts'
 import { withoutSpikes } from './withoutSpikes.ts'
+import { SPEED_OF_LIGHT } from '../../numeric/speedOfLight.ts'
 
 /** A spectrum with what was measured of it so far. */
 export interface KindCase {
@@ -27,7 +28,6 @@ export interface KindCase {
   readonly typing: TypingInput
 }
 
-const CLIGHT = 299792.458
 const FEWEST_SAMPLES = 40
 /** What is peculiar about a spectrum, and whether it is no ordinary O to M star at all; most telling first. */
 export function recogniseKinds(star: KindCase, criteria: KindCriteria, calibration: Calibration): Recognised[] {
@@ -41,7 +41,7 @@ export function recogniseKinds(star: KindCase, criteria: KindCriteria, calibrati
   const gas = findGas(look, { ...star, spectrum }, criteria)
   if (gas) return [kindOfGas(gas, look, lookAt(atRedshift(sums, gas.redshift), look, criteria))]
   if (!restFrame.trusted || isFast) {
-    const redshift = absorptionRedshift(look, criteria, criteria.limits.fastestStar.value / CLIGHT)
+    const redshift = absorptionRedshift(look, criteria, criteria.limits.fastestStar.value / SPEED_OF_LIGHT)
     if (redshift !== undefined) return [farGalaxy(look, redshift)]
   }
   const outside = compactStar(look) ?? brownDwarf(look) ?? mixedPopulation(look) ?? featurelessDwarf(look)
@@ -130,7 +130,7 @@ function kindOfGas(gas: GasEmission, atRest: Look, look: Look): Recognised {
   const isBare =
     (beta !== undefined && beta.ew < look.limit('nebularHbeta')) ||
     (oxygen !== undefined && oxygen.ew < look.limit('nebularOxygen'))
-  const isFar = gas.redshift * CLIGHT > look.limit('fastestStar')
+  const isFar = gas.redshift * SPEED_OF_LIGHT > look.limit('fastestStar')
   if (isBare && !isFar)
     return {
       peculiarity: look.peculiarity('nebular', `${gas.text}, far stronger than any light of stars behind`),
@@ -156,7 +156,7 @@ function farGalaxy(look: Look, redshift: number): Recognised {
   return {
     peculiarity: look.peculiarity(
       'galaxy',
-      `Ca II, the G band, Mg b and Na D of stars stand at a redshift of ${redshift.toFixed(3)} (stars of the Galaxy stay below ${(look.limit('fastestStar') / CLIGHT).toFixed(4)})`,
+      `Ca II, the G band, Mg b and Na D of stars stand at a redshift of ${redshift.toFixed(3)} (stars of the Galaxy stay below ${(look.limit('fastestStar') / SPEED_OF_LIGHT).toFixed(4)})`,
     ),
     isOutside: true,
   }

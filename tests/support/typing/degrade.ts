@@ -3,6 +3,7 @@ import { median } from '../../../src/numeric/median.ts'
 import { seededNormal, seededUniform } from '../../../src/numeric/random.ts'
 import { smoothToFwhm } from '../../../src/numeric/smoothToFwhm.ts'
 import type { Spectrum } from '../../../src/spectrum/types.ts'
+import { SPEED_OF_LIGHT } from '../../../src/numeric/speedOfLight.ts'
 
 /** A spectrum made worse on purpose; the seed is the star's own, so that the table is the same each time. */
 export type Degrade = (spectrum: Spectrum, seed: number) => Spectrum
@@ -15,7 +16,6 @@ export interface Degradation {
   readonly fwhm?: number
 }
 
-const CLIGHT = 299792.458
 /** Å, of the atlas (Jacoby, Hunter & Christian 1984). */
 const OWN_FWHM = 4.5
 
@@ -106,7 +106,7 @@ export const DEGRADATIONS: readonly Degradation[] = [
   ...[-600, -200, 200, 600].map((v) => ({
     group: 'velocity',
     name: `${v} km/s`,
-    degrade: moved((w) => w * (1 + v / CLIGHT)),
+    degrade: moved((w) => w * (1 + v / SPEED_OF_LIGHT)),
   })),
   { group: 'wavelengths', name: '1 Å off', degrade: moved((w) => w + 1) },
   { group: 'wavelengths', name: 'stretched by 0.1 %', degrade: moved((w, middle) => middle + (w - middle) * 1.001) },

@@ -3,20 +3,19 @@ import type { Spectrum } from '../../../src/spectrum/types.ts'
 import type { CalibrationSpectra } from '../../../src/tables/types.ts'
 import type { RestFrame } from '../../../src/velocity/types.ts'
 import type { MeasuredStar } from './buildCalibration.ts'
+import { SPEED_OF_LIGHT } from '../../../src/numeric/speedOfLight.ts'
 
 /** Å: bins of the mean spectra; wide enough that no spectrum of the sources could be made again from them. */
 const STEP = 10
 const FIRST = 3805
 const BINS = 520
-const CLIGHT = 299792.458
-
 /** Flux over continuum in bins at rest; NaN where a bin is not covered. */
 export function normalisedBins(spectrum: Spectrum, continuum: Continuum, frame: RestFrame): Float64Array {
   const sum = new Float64Array(BINS)
   const count = new Float64Array(BINS)
   const { wavelength, flux, usable } = spectrum
   for (let i = 0; i < wavelength.length; i++) {
-    const bin = Math.floor((wavelength[i] / (1 + frame.velocity / CLIGHT) - FIRST + STEP / 2) / STEP)
+    const bin = Math.floor((wavelength[i] / (1 + frame.velocity / SPEED_OF_LIGHT) - FIRST + STEP / 2) / STEP)
     if (bin < 0 || bin >= BINS || !usable[i] || !(continuum.level[i] > 0)) continue
     sum[bin] += flux[i] / continuum.level[i]
     count[bin]++
