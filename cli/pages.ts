@@ -18,6 +18,7 @@ import { printable } from './printable.ts'
 import { startProgress } from './progress.ts'
 import { writeWhole } from './write.ts'
 
+/** What the pages of a night need beside its outcomes. */
 export interface PagesPlan {
   readonly out: string
   readonly folder: string

@@ -41,6 +41,7 @@ export function makeFolder(folder: string): void {
   }
 }
 
+/** A file under a temporary name in the folder of `path`, which is made where absent; it gets its name when finished. */
 export function openWrite(path: string): WriteStream {
   makeFolder(dirname(path))
   const temporary = join(dirname(path), `.${randomUUID()}.part`)

@@ -8,6 +8,7 @@ import type { Continuum } from './types.ts'
 import { weakLines } from './weakLines.ts'
 import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
+/** How a continuum is fitted; what is left out has its default. */
 export interface ContinuumOptions {
   /** Å at 5000 Å: the level is set by stretches of this width, whatever the resolution of the spectrum. */
   readonly binWidth: number

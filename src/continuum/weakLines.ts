@@ -25,6 +25,7 @@ export const GREATEST_RISE = 0.04
 /** Beyond this share it is no longer weak lines that crowd. */
 const MOST_TAKEN = 0.15
 
+/** What weak lines take from the level, block by block; arrays of one shape (m). */
 export interface WeakLines {
   /** ln λ of the middles of the blocks. */
   readonly place: Float64Array

@@ -10,6 +10,7 @@ import { targetList } from './targetList.ts'
 
 export type { DemoFile } from './exposureFiles.ts'
 
+/** Which demo night is made. */
 export interface DemoOptions {
   /** True leaves the planted troubles out. */
   readonly clean: boolean

@@ -3,6 +3,7 @@ import { angularSeparation } from './angularSeparation.ts'
 import type { Pointing } from './place.ts'
 import { observerOf, timeOf } from './place.ts'
 
+/** Where the Moon stands and how full it is. */
 export interface MoonPlace {
   /** Degrees, without refraction, seen from the site. */
   readonly altitude: number

@@ -10,6 +10,7 @@ import { type Pixels, firstPixelAbove, pixelsOf } from './pixels.ts'
 import type { FoundLine } from './types.ts'
 import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
+/** What lines are looked for with: names to give, bands of the air, the resolution. */
 export interface FindOptions {
   /** Lines that a found one may be. */
   readonly lines: readonly SpectralLine[]

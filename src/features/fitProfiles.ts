@@ -32,6 +32,7 @@ export interface FittedProfile {
   readonly free: ProfileStart['free']
 }
 
+/** Profiles fitted together, and how well they fit. */
 export interface ProfileFit {
   readonly lines: readonly FittedProfile[]
   readonly chiSquare: number

@@ -15,6 +15,7 @@ export interface Detection {
   readonly fwhm: number
 }
 
+/** What a found line is named from. */
 export interface NamingOptions {
   readonly lines: readonly SpectralLine[]
   readonly telluric: readonly { readonly species: string; readonly range: readonly [number, number] }[]

@@ -7,6 +7,7 @@ import { type Pixels, type WindowMean, firstPixelAbove, partMean, pixelsOf, wind
 import type { Measurement } from './types.ts'
 import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
+/** Which side-band features are measured, and at what resolution. */
 export interface BandOptions {
   readonly windows: readonly BandWindow[]
   /** FWHM [Å] now (0 when not known) and as wanted for all spectra alike. */

@@ -8,6 +8,7 @@ import { type Pixels, pixelsOf, windowMean } from './pixels.ts'
 import type { Measurement } from './types.ts'
 import { SPEED_OF_LIGHT } from '../numeric/speedOfLight.ts'
 
+/** Which lines are measured, and at what resolution. */
 export interface LineOptions {
   readonly lines: readonly SpectralLine[]
   /** Å, FWHM of the instrument; three samples where it is not known. */

@@ -46,6 +46,7 @@ export interface FoundLine {
   readonly candidates: readonly LineCandidate[]
 }
 
+/** One possible identification of a found line. */
 export interface LineCandidate {
   readonly species: string
   /** Å, air. */

@@ -11,6 +11,12 @@ export const NIGHT_RULES = {
     source: COMMON,
   },
   'target-list-column': { level: 'note', meaning: 'The target list has a column that is not known', source: COMMON },
+  'expected-type-unknown': {
+    level: 'note',
+    meaning: 'The expected type of a target is not one the program knows',
+    remedy: "Write it as 'G2V', 'K0 III', 'DA' or the like",
+    source: COMMON,
+  },
   'target-listed-twice': { level: 'note', meaning: 'The target list has two rows of one name', source: COMMON },
   'not-on-target-list': {
     level: 'note',

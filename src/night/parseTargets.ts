@@ -4,6 +4,7 @@ import { finding } from '../findings/rules.ts'
 import type { Finding } from '../findings/types.ts'
 import { csvCells } from './csvCells.ts'
 import type { CsvCell } from './csvCells.ts'
+import { parseType } from '../typing/typeName.ts'
 import { plainName } from './targetName.ts'
 import type { Target } from './types.ts'
 
@@ -102,6 +103,15 @@ function targetOf(
     const cell = cells[names.indexOf(column)]
     return cell && cell.text.trim() !== '' ? cell : undefined
   }
+  const typeOf = (cell: CsvCell | undefined): string | undefined => {
+    const text = cell?.text.trim()
+    // Kept all the same: it is shown beside the type found, though no probability can be given for it.
+    if (cell && text && !parseType(text)) {
+      const said = `${list}, line ${cell.line}, column ${cell.column}: '${text}' is no spectral type the program knows, so no probability is given for it`
+      findings.push(finding(NIGHT_RULES, 'expected-type-unknown', said))
+    }
+    return text
+  }
   const object = cellOf('object')
   if (!object) {
     say(cells[0], 'object', 'a name')
@@ -123,7 +133,7 @@ function targetOf(
     pmRa: numberOf('pm_ra_mas'),
     pmDec: numberOf('pm_dec_mas'),
     epoch: numberOf('epoch'),
-    expectedType: cellOf('expected_type')?.text.trim(),
+    expectedType: typeOf(cellOf('expected_type')),
     wantedSnr: numberOf('wanted_snr'),
     priority: numberOf('priority'),
     note: cellOf('note')?.text.trim(),

@@ -23,6 +23,7 @@ import { plainName } from './targetName.ts'
 import { groupByTarget } from './targetGroups.ts'
 import type { NightSummary, SpectrumNight, Target } from './types.ts'
 
+/** What the night is judged by beside its outcomes. */
 export interface NightOptions {
   readonly targets?: readonly Target[]
   readonly coverRules: CoverRules

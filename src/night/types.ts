@@ -114,6 +114,7 @@ export interface ObserveAgain {
   readonly urgency: number
 }
 
+/** What only all files of a night together can say. */
 export interface NightSummary {
   readonly spectra: readonly SpectrumNight[]
   readonly targets: readonly TargetSummary[]

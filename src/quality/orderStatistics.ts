@@ -8,6 +8,7 @@ export interface OrderHistogram {
   count: number
 }
 
+/** A histogram of the upper halves without counts. */
 export function emptyOrderHistogram(): OrderHistogram {
   return { upper: new Uint32Array(65536), count: 0 }
 }
@@ -36,6 +37,7 @@ export interface OrderPlace {
   readonly rank: number
 }
 
+/** The bin of the upper halves that holds a rank (from 0), and the rank within it; throws RangeError beyond the count. */
 export function placeOfRank(histogram: OrderHistogram, rank: number): OrderPlace {
   let before = 0
   for (let bin = 0; bin < 65536; bin++) {
@@ -49,6 +51,7 @@ export function placeOfRank(histogram: OrderHistogram, rank: number): OrderPlace
 /** Lower-half histograms for the bins asked for. */
 export type LowerHistograms = ReadonlyMap<number, Uint32Array>
 
+/** Histograms without counts of the lower halves, one for each bin that holds a rank looked for. */
 export function emptyLower(places: readonly OrderPlace[]): LowerHistograms {
   return new Map(places.map(({ bin }) => [bin, new Uint32Array(65536)]))
 }

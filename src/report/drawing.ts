@@ -43,6 +43,7 @@ export interface BoxesItem {
 
 export type Item = TextItem | PathItem | BoxesItem
 
+/** The cell of a table: what is drawn in it, and whether it is a heading. */
 export interface CellBlock {
   readonly heading: boolean
   readonly items: readonly Item[]
@@ -61,6 +62,7 @@ export interface Block {
   readonly place?: { readonly name: string; readonly y: number }
 }
 
+/** One page: its size [points] and its blocks in reading order. */
 export interface Page {
   readonly width: number
   readonly height: number

@@ -9,6 +9,7 @@ import type { Typeface } from './typeface.ts'
 /** Margins of every page [points]. */
 export const MARGIN = { left: 46, right: 40, top: 50, bottom: 44 } as const
 
+/** How a table looks where it differs from the usual. */
 export interface TableStyle {
   readonly size?: number
   /** Height of a row of one line [points]. */

@@ -8,6 +8,7 @@ export interface Structure {
   end(): void
 }
 
+/** An entry of the bookmarks, to which others are added. */
 export interface Outline {
   addItem(title: string, options: { expanded: boolean; left: number; top: number }): Outline
 }
@@ -48,6 +49,7 @@ export interface PdfDocument {
   end(): void
 }
 
+/** What a document is opened with. */
 export interface PdfDocumentOptions {
   readonly autoFirstPage: false
   readonly pdfVersion: '1.7'

@@ -1,6 +1,7 @@
 import type { Item, LinkTarget } from './drawing.ts'
 import type { Area } from './spectrumFigure.ts'
 
+/** One column: its heading, width and how its cells are set. */
 export interface TableColumn {
   readonly head: string
   /** Points, or a share of what is left when `share` is true. */
@@ -13,6 +14,7 @@ export interface TableColumn {
   readonly middle?: true
 }
 
+/** What stands in one cell. */
 export interface TableCell {
   readonly text: string
   readonly bold?: boolean

@@ -15,6 +15,7 @@ export interface Answer {
   readonly details: readonly string[]
 }
 
+/** What is said of a target first: one sentence, and the answers it is made of. */
 export interface Verdict {
   /** The whole verdict in one sentence without full stop. */
   readonly sentence: string

@@ -18,6 +18,7 @@ export interface SettingSpec {
 /** Where a value in force came from. */
 export type SettingOrigin = 'default' | 'file' | 'command line'
 
+/** One setting in force, and where its value came from. */
 export interface Setting {
   readonly spec: SettingSpec
   readonly value: SettingValue

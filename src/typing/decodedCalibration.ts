@@ -16,6 +16,7 @@ export interface DecodedCalibration {
   readonly halo: Float64Array
 }
 
+/** The scatter of features about their expected values in one zone of temperature. */
 export interface DecodedZone {
   readonly type: number
   /** shape (f × f) [unit²]. */

@@ -11,6 +11,7 @@ export interface FeatureVector {
   readonly error: Float64Array
 }
 
+/** How well each type (t) and luminosity class (c) explains the features. */
 export interface LikelihoodGrid {
   /** shape (t × c): tempered log likelihood. */
   readonly logLikelihood: Float64Array

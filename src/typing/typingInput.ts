@@ -20,6 +20,7 @@ export interface TypingInput {
   readonly samples: number
 }
 
+/** Which features a type is told from, and the resolution they are measured at. */
 export interface TypingInputOptions {
   readonly windows: readonly BandWindow[]
   /** Å, FWHM that the calibration's features are measured at. */

@@ -31,6 +31,7 @@ const PATTERN_ZERO = 5
 /** Fewest samples where the patterns have lines. */
 const FEWEST_SAMPLES = 16
 
+/** What a velocity is looked for with. */
 export interface RestFrameOptions {
   readonly patterns: readonly LinePattern[]
   /** Name of the pattern to use; the others are tried only when it is not among the patterns. */

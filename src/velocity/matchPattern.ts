@@ -23,6 +23,7 @@ export interface Match {
   readonly cells: number
 }
 
+/** Where a pattern is looked for. */
 export interface MatchOptions {
   readonly fwhm: number
   readonly maxVelocity: number

@@ -8,6 +8,7 @@ import { stellarWidth } from './stellarWidth.ts'
 import { matchTelluric } from './telluricMatch.ts'
 import type { Resolution, RestFrame } from './types.ts'
 
+/** Lines of the air and the sky whose width tells the resolution. */
 export interface ResolutionOptions {
   readonly telluric: readonly LinePattern[]
   readonly skyLines: readonly SkyLine[]

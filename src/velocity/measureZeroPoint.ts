@@ -7,6 +7,7 @@ import { findSkyLines } from './skyLines.ts'
 import { matchTelluric } from './telluricMatch.ts'
 import type { ZeroPoint } from './types.ts'
 
+/** Lines of the air and the sky whose place tells the zero point. */
 export interface ZeroPointOptions {
   /** Bands of the air, line by line. */
   readonly telluric: readonly LinePattern[]
