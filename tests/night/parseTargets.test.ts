@@ -84,4 +84,11 @@ HD 2,,,,,,,,,,
     expect(() => parseTargets('name,ra\nx,1', 'list')).toThrow('target list requires a column object, got name, ra')
     expect(() => parseTargets('', 'list')).toThrow('target list requires a column object, got nothing')
   })
+
+  it('keeps an expected type it does not know, and says so', () => {
+    const { targets, findings } = parseTargets('object,expected_type\nAlpha,ZZ top\nBeta,G2V\nGamma,DA\n', 'list.csv')
+    expect(targets.map((t) => t.expectedType)).toEqual(['ZZ top', 'G2V', 'DA'])
+    expect(findings.map((f) => f.code)).toEqual(['expected-type-unknown'])
+    expect(findings[0].text).toContain("list.csv, line 2, column 7: 'ZZ top'")
+  })
 })
