@@ -2,8 +2,9 @@ import type { Finding } from '../findings/types.ts'
 import { NO_TYPE } from '../night/nightTyping.ts'
 import { summariseNight } from '../night/summariseNight.ts'
 import type { NightSummary, Target, TargetSummary } from '../night/types.ts'
-import type { Outcome } from '../quality/types.ts'
+import type { Outcome, SpectrumOutcome } from '../quality/types.ts'
 import { CALIBRATION } from '../tables/calibration.ts'
+import { combineKinds } from '../typing/combineKinds.ts'
 import { combineTypes } from '../typing/combineTypes.ts'
 import { expectedSpectrum } from '../typing/expected.ts'
 import { expectedProbability } from '../typing/expectedProbability.ts'
@@ -38,7 +39,10 @@ export function nightOf(outcomes: readonly Outcome[], { inForce, targets, findin
       combine(spectra) {
         const inputs = spectra.flatMap(({ typing }) => typing ?? [])
         if (inputs.length === 0) return NO_TYPE
-        return spectra.length === 1 ? spectra[0].type : combineTypes(inputs, CALIBRATION)
+        if (spectra.length === 1) return spectra[0].type
+        const signal = ({ snr }: SpectrumOutcome): number => Math.max(snr.blue ?? 0, snr.visual ?? 0, snr.red ?? 0)
+        const bestFirst = [...spectra].sort((a, b) => signal(b) - signal(a)).map(({ type }) => type)
+        return combineKinds(combineTypes(inputs, CALIBRATION), bestFirst)
       },
       probability: expectedProbability,
     },
