@@ -26,7 +26,9 @@ describe('classicalRatios', () => {
   })
 
   it('gives no value, but the reason, where a line is missing or the denominator is not detected', () => {
-    expect(ratio('He I 4471 / He II 4542', [line('HeI4471', 1)])).toMatchObject({ reason: expect.stringContaining('was not measured') })
+    expect(ratio('He I 4471 / He II 4542', [line('HeI4471', 1)])).toMatchObject({
+      reason: expect.stringContaining('was not measured'),
+    })
     const weak = ratio('He I 4471 / He II 4542', [line('HeI4471', 1), line('HeII4542', 0.1)])
     expect(weak).toMatchObject({ reason: expect.stringContaining('is not detected') })
     expect(weak?.value).toBeUndefined()
