@@ -1,6 +1,6 @@
 import { refuse, wavelengthFault } from './axis.ts'
 import type { AxisAnswer } from './axis.ts'
-import { cardText } from './cards.ts'
+import { cardNumber, cardText } from './cards.ts'
 import type { Headers } from './cards.ts'
 import { coefficientPart, linearPart } from './linearPart.ts'
 import { plainAxis } from './plainAxis.ts'
@@ -38,6 +38,8 @@ export function headerAxis(headers: Headers, number: number, length: number): Ax
 
   const linear = linearPart(headers, number) ?? coefficientPart(headers)
   if (!linear) {
+    const odd = notANumber(headers, [`CRVAL${number}`, `CDELT${number}`, `CD${number}_${number}`, `CRPIX${number}`])
+    if (odd) return refuse('no-wavelength-axis', `${odd.keyword} requires a number, got ${odd.text}`, 6, odd.keyword)
     const rule = `axis ${number} requires CRVAL${number} with a step`
     return refuse('no-wavelength-axis', `${rule}, a wavelength column or a wavelength array, got none`, 1)
   }
@@ -51,6 +53,18 @@ export function headerAxis(headers: Headers, number: number, length: number): Ax
       : plainAxis(headers, { number, length, linear, type, wat })
   if ('refusal' in answer) return answer
   return wavelengthFault(answer.axis.wavelength, `axis ${number}`) ?? answer
+}
+
+/** The first of the keywords that stands in a header with a value that is no number. */
+function notANumber(
+  headers: Headers,
+  keywords: readonly string[],
+): { readonly keyword: string; readonly text: string } | undefined {
+  for (const keyword of keywords) {
+    const text = cardText(headers, keyword)
+    if (text !== undefined && cardNumber(headers, keyword) === undefined) return { keyword, text }
+  }
+  return undefined
 }
 
 /**
