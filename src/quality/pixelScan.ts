@@ -149,10 +149,26 @@ function addRow(bytes: Uint8Array, start: number, counts: Uint32Array, columns: 
   return sum
 }
 
-/** As `addRow`, without the columns. */
+/** As `addRow`, without the columns; four pixels a round, each with a sum of its own, so that none waits for another. */
 function countRow(bytes: Uint8Array, start: number, end: number, counts: Uint32Array): number {
-  let sum = 0
-  for (let at = start; at < end; at += 2) {
+  let [a, b, c, d] = [0, 0, 0, 0]
+  let at = start
+  for (; at + 8 <= end; at += 8) {
+    const p = ((bytes[at] << 8) | bytes[at + 1]) ^ 0x8000
+    const q = ((bytes[at + 2] << 8) | bytes[at + 3]) ^ 0x8000
+    const r = ((bytes[at + 4] << 8) | bytes[at + 5]) ^ 0x8000
+    const s = ((bytes[at + 6] << 8) | bytes[at + 7]) ^ 0x8000
+    counts[p]++
+    counts[q]++
+    counts[r]++
+    counts[s]++
+    a += p
+    b += q
+    c += r
+    d += s
+  }
+  let sum = a + b + c + d
+  for (; at < end; at += 2) {
     const bin = ((bytes[at] << 8) | bytes[at + 1]) ^ 0x8000
     counts[bin]++
     sum += bin
