@@ -69,7 +69,7 @@ function writeFiles(folder: string): void {
 function readFiles(folder: string): number {
   let total = 0
   for (let i = 0; i < FILES; i++) {
-    const source = inflateSource(memorySource(new Uint8Array(readFileSync(join(folder, `${i}.fits`)))))
+    const source = inflateSource(memorySource(readFileSync(join(folder, `${i}.fits`))))
     for (const hdu of openFits(source).hdus) {
       if (hdu.kind === 'image' && hdu.dataSize > 0) total += readImage(source, hdu)[0] as number
       for (const column of hdu.columns) {
