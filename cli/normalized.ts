@@ -5,6 +5,7 @@ import type { InForce } from '../src/pipeline/settingsInForce.ts'
 import type { Outcome } from '../src/quality/types.ts'
 import { normalisedFits, type NormalisedInput } from '../src/report/normalisedFits.ts'
 import type { Options } from './args.ts'
+import { settingsDigest } from './settingsFile.ts'
 import { writeWhole } from './write.ts'
 
 /** Where normalised spectra go, and what made them; plain data, it crosses into a worker thread. */
@@ -21,8 +22,10 @@ export function normalizedPlan(
   version: string,
 ): NormalizedPlan | undefined {
   if (!saveNormalized || out === undefined) return undefined
-  const settingsDigest = createHash('sha256').update(JSON.stringify(inForce)).digest('hex')
-  return { folder: join(out, 'normalized'), provenance: { version, settingsDigest, calibration: CALIBRATION_NAME } }
+  return {
+    folder: join(out, 'normalized'),
+    provenance: { version, settingsDigest: settingsDigest(inForce), calibration: CALIBRATION_NAME },
+  }
 }
 
 /** Writes the normalised spectra of an Outcome as FITS, one a file, and gives the Outcome back without them. */

@@ -1,4 +1,3 @@
-import { createHash } from 'node:crypto'
 import { basename, join, relative, resolve } from 'node:path'
 import type { NightSummary } from '../src/night/types.ts'
 import type { InForce } from '../src/pipeline/settingsInForce.ts'
@@ -16,6 +15,7 @@ import { fileNames } from './fileNames.ts'
 import { pageFonts } from './pageFonts.ts'
 import { printable } from './printable.ts'
 import { startProgress } from './progress.ts'
+import { settingsDigest } from './settingsFile.ts'
 import { writeWhole } from './write.ts'
 
 /** What the pages of a night need beside its outcomes. */
@@ -37,7 +37,7 @@ export async function drawPages(
   const { out, crew, inForce } = plan
   const provenance: Provenance = {
     version: plan.version,
-    settingsDigest: createHash('sha256').update(JSON.stringify(inForce)).digest('hex'),
+    settingsDigest: settingsDigest(inForce),
     calibration: CALIBRATION_NAME,
     date: dateOf(night),
   }

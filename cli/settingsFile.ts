@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto'
 import { readFileSync } from 'node:fs'
 import { UsageError } from '../src/errors.ts'
 import { SETTING_SPECS } from '../src/pipeline/settingsTable.ts'
@@ -45,4 +46,9 @@ export function readText(path: string, option: string): string {
   } catch (error) {
     throw new UsageError(`${option} requires a readable file, got ${reason(error)} for ${path}`, { cause: error })
   }
+}
+
+/** Hex SHA-256 of the settings in force: two outputs with one digest were made by the same limits. */
+export function settingsDigest(inForce: InForce): string {
+  return createHash('sha256').update(JSON.stringify(inForce)).digest('hex')
 }

@@ -3,6 +3,7 @@ import { bigEndianOf } from './bigEndian.ts'
 import { cellValues } from './cells.ts'
 import { ELEMENT_SIZE, sizeOfElements } from './columns.ts'
 import { integerValue, textValue } from './header.ts'
+import { joinedBytes } from './joinedBytes.ts'
 import { decodeRice } from './rice.ts'
 import type { PixelSize } from './rice.ts'
 import { readCells } from './rows.ts'
@@ -48,7 +49,7 @@ export function readCompressedColumn(source: ByteSource, hdu: Hdu, column: Colum
     if (column.descriptor) cells.push(...variableCells(reader, { tile, count, from, to }))
     else parts.push(fixedCells(reader, tile, count).subarray(from * column.width, to * column.width))
   }
-  return column.descriptor ? { kind: 'variable', cells } : cellValues(joined(parts), column, column.repeat)
+  return column.descriptor ? { kind: 'variable', cells } : cellValues(joinedBytes(parts), column, column.repeat)
 }
 
 interface TileReader {
@@ -136,14 +137,4 @@ function variableCells(reader: TileReader, { tile, count, from, to }: TileRows):
     cells.push(cellValues(data, column, elements))
   }
   return cells
-}
-
-function joined(parts: readonly Uint8Array[]): Uint8Array {
-  const out = new Uint8Array(parts.reduce((sum, part) => sum + part.length, 0))
-  let at = 0
-  for (const part of parts) {
-    out.set(part, at)
-    at += part.length
-  }
-  return out
 }

@@ -1,5 +1,6 @@
 import { BLOCK_SIZE, CARD_SIZE } from './card.ts'
 import { encodedChecksum, onesComplementSum } from './checksum.ts'
+import { joinedBytes } from './joinedBytes.ts'
 import { cardsOf } from './writeCard.ts'
 import type { FitsCardInput } from './writeCard.ts'
 import { imageBytes, imageCards } from './writeImage.ts'
@@ -26,7 +27,7 @@ const UNSET = '0'.repeat(16)
  */
 export function encodeFits(hdus: readonly FitsHduInput[]): Uint8Array {
   const all = hdus[0]?.kind === 'image' ? hdus : [NO_DATA, ...hdus]
-  return joined(all.flatMap((hdu, i) => encodeHdu(hdu, i === 0)))
+  return joinedBytes(all.flatMap((hdu, i) => encodeHdu(hdu, i === 0)))
 }
 
 function encodeHdu(hdu: FitsHduInput, primary: boolean): readonly Uint8Array[] {
@@ -60,14 +61,4 @@ function padded(bytes: Uint8Array, filler: number): Uint8Array {
   const out = new Uint8Array(Math.ceil(bytes.length / BLOCK_SIZE) * BLOCK_SIZE)
   out.set(bytes)
   return out.fill(filler, bytes.length)
-}
-
-function joined(parts: readonly Uint8Array[]): Uint8Array {
-  const out = new Uint8Array(parts.reduce((sum, part) => sum + part.length, 0))
-  let at = 0
-  for (const part of parts) {
-    out.set(part, at)
-    at += part.length
-  }
-  return out
 }

@@ -1,9 +1,10 @@
+import { firstNotBelow } from '../numeric/firstNotBelow.ts'
 import { QUALITY_RULES } from '../findings/quality.ts'
 import { finding } from '../findings/rules.ts'
 import type { Finding } from '../findings/types.ts'
 import { median, robustSigma } from '../numeric/median.ts'
 import { percent } from './figures.ts'
-import { firstNotBelow, isMolecular } from './samples.ts'
+import { isMolecular } from './samples.ts'
 import type { Limits, Samples, SpectrumInput } from './samples.ts'
 
 /** Å, air: [O I] of the night sky (Osterbrock & Martel 1992); 5577 stands alone, 6300 may blend with OH. */

@@ -81,15 +81,3 @@ function stepOf(wavelength: Float64Array): number {
   for (let i = 1; i < wavelength.length; i += stride) steps.push(wavelength[i] - wavelength[i - 1])
   return median(steps)
 }
-
-/** Index of the first of increasing `values` that is not below `value`. */
-export function firstNotBelow(values: Float64Array, value: number): number {
-  let low = 0
-  let high = values.length
-  while (low < high) {
-    const middle = (low + high) >> 1
-    if (values[middle] < value) low = middle + 1
-    else high = middle
-  }
-  return low
-}

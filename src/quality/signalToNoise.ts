@@ -1,3 +1,4 @@
+import { firstNotBelow } from '../numeric/firstNotBelow.ts'
 import type { Continuum } from '../continuum/types.ts'
 import { QUALITY_RULES } from '../findings/quality.ts'
 import { finding } from '../findings/rules.ts'
@@ -5,7 +6,6 @@ import type { Finding } from '../findings/types.ts'
 import { median } from '../numeric/median.ts'
 import type { Spectrum } from '../spectrum/types.ts'
 import { figure } from './figures.ts'
-import { firstNotBelow } from './samples.ts'
 import type { Limits } from './samples.ts'
 import type { SignalToNoise } from './types.ts'
 

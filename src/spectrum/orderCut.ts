@@ -1,3 +1,4 @@
+import { firstNotBelow } from '../numeric/firstNotBelow.ts'
 import { median } from '../numeric/median.ts'
 import type { Spectrum } from './types.ts'
 
@@ -38,7 +39,7 @@ export function cutWavelength(left: Spectrum, right: Spectrum): number {
 function signal(spectrum: Spectrum, [low, high]: readonly [number, number], isWeighed: boolean): number {
   const values: number[] = []
   const { wavelength, flux, sigma, usable } = spectrum
-  for (let i = firstAt(wavelength, low); i < wavelength.length && wavelength[i] <= high; i++)
+  for (let i = firstNotBelow(wavelength, low); i < wavelength.length && wavelength[i] <= high; i++)
     if (usable[i]) values.push(isWeighed && sigma ? flux[i] / sigma[i] : flux[i])
   const middle = median(values)
   return Number.isFinite(middle) ? middle : 0
@@ -50,16 +51,4 @@ export function levelRatio(left: Spectrum, right: Spectrum): number | undefined 
   const high = left.wavelength[left.wavelength.length - 1]
   const [a, b] = [left, right].map((spectrum) => signal(spectrum, [low, high], false))
   return a > 0 && b > 0 ? b / a : undefined
-}
-
-/** Index of the first wavelength at or above a value. */
-function firstAt(wavelength: Float64Array, value: number): number {
-  let low = 0
-  let high = wavelength.length
-  while (low < high) {
-    const middle = (low + high) >> 1
-    if (wavelength[middle] < value) low = middle + 1
-    else high = middle
-  }
-  return low
 }
